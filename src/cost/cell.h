@@ -1,0 +1,46 @@
+/* The facts of one cell: a codec at a level and a layout on a corpus. */
+#ifndef COST_CELL_H
+#define COST_CELL_H
+
+#include "base/status.h"
+#include "cost/costs.h"
+
+#define CELL_NAME_BYTES 32
+
+/* What to run. level and layout are text: "9", "9e"; "whole" or page bytes. */
+struct cell_key {
+	char codec[CELL_NAME_BYTES];
+	char level[CELL_NAME_BYTES];
+	char layout[CELL_NAME_BYTES];
+};
+
+struct cell_facts {
+	uint64_t bytes; /* compressed, container included: the headline */
+	uint64_t framing_bytes; /* of these: header, trailer, check, index,
+				   padding */
+	int framing_known;      /* 0 where nobody counts it (framing_bytes 0) */
+	int lossless;           /* decoded and equal, byte for byte */
+	uint64_t pages;         /* 1 for layout "whole" */
+	/*
+	 * Bits by resampling block, from a run flushed at the cuts (whole), or
+	 * page bits spread by overlap; block_q16 sums to flushed bytes x 8, not
+	 * to the headline. blocks is 0 where the codec cannot flush.
+	 */
+	struct costs flushed;
+	uint64_t flushed_bytes;
+	uint64_t encode_memory_bytes,
+		decode_memory_bytes; /* peak of allocator */
+};
+
+void cell_facts_release(struct cell_facts *facts);
+
+/* Times of one cell: medians over rounds, and the spread; not facts. */
+struct cell_timing {
+	unsigned rounds;
+	double encode_cpu_seconds, decode_cpu_seconds;
+	double encode_wall_seconds, decode_wall_seconds;
+	/* (largest - smallest) / median over the rounds, CPU time. */
+	double encode_spread, decode_spread;
+};
+
+#endif

@@ -1,0 +1,9 @@
+/* The rows of table 1, each defined at the end of its own file. */
+#ifndef ESTIMATE_ROWS_H
+#define ESTIMATE_ROWS_H
+
+#include "estimate/estimator.h"
+
+extern const struct estimator estimator_uniform;
+
+#endif

@@ -1,0 +1,19 @@
+#include "estimate/estimator.h"
+
+#include "estimate/rows.h"
+
+#include <string.h>
+
+const struct estimator *const estimators[] = {
+	&estimator_uniform,
+	NULL,
+};
+
+const struct estimator *estimator_find(const char *name)
+{
+	for (size_t i = 0; estimators[i]; i++) {
+		if (strcmp(estimators[i]->name, name) == 0)
+			return estimators[i];
+	}
+	return NULL;
+}
