@@ -1,0 +1,131 @@
+/* What follows from a survey's facts: floor, brackets, gaps and intervals. */
+#ifndef GAP_ANALYSIS_H
+#define GAP_ANALYSIS_H
+
+#include "base/status.h"
+#include "ledger/survey.h"
+
+#include <stdbool.h>
+#include <stddef.h>
+
+#define ANALYSIS_REASON_BYTES 200
+
+/* An interval for data of this kind, or the reason why there is none. */
+struct interval {
+	bool known;
+	double low, high;        /* bits per symbol */
+	double effective_blocks; /* blocks / automatic block length, after the
+				    AR(1) guard; also set on a refusal */
+	unsigned block_length; /* of the circular block bootstrap, in blocks */
+	char reason[ANALYSIS_REASON_BYTES]; /* "" where known */
+};
+
+/* One gram order. Bits per symbol unless said. */
+struct order_row {
+	unsigned order;
+	double H;           /* plug-in block entropy, bits per gram */
+	double h_plugin;    /* H_k - H_(k-1) */
+	double h_corrected; /* Grassberger 2003 */
+	double h_cwj;       /* Chao, Wang, Jost 2013 */
+	bool has_crossfit;
+	double h_crossfit;
+	double coverage; /* Chao-Jost sample coverage of the k-grams, 0 to 1 */
+	uint64_t distinct;
+	bool trusted; /* order <= trusted order */
+};
+
+/* One row of table 1 as shown. */
+struct estimate_row {
+	const struct method_fact *fact; /* borrowed */
+	bool known; /* false: fact->outcome and fact->reason say why */
+	double bits_per_symbol;
+	unsigned order; /* at which, where the row has orders */
+	struct interval interval;
+};
+
+struct floor_row {
+	bool known;
+	char held_by[3 * CELL_NAME_BYTES]; /* "mix", "xz 9e" */
+	bool by_codec; /* no estimator came as low: one misses a structure */
+	unsigned rows; /* code rows and cells it is the minimum of */
+	double bits_per_symbol;
+	struct interval interval;
+};
+
+struct bracket_row {
+	bool known;      /* else reason */
+	bool open_below; /* a code length is below the lower edge: refuted */
+	bool not_calibrated; /* the series drifts */
+	unsigned order;      /* k^ */
+	double low, high;
+	char upper_by[3 * CELL_NAME_BYTES];
+	char reason[ANALYSIS_REASON_BYTES];
+};
+
+/* achieved = floor + restart + family + effort + framing, signed. */
+struct gap_stack {
+	bool known;
+	double floor, restart, family, effort, framing;
+	char best_level[CELL_NAME_BYTES]; /* of this codec at this layout */
+};
+
+struct cell_row {
+	const struct cell_fact *fact; /* borrowed */
+	bool known;                   /* false: failed; fact->reason */
+	double bits_per_symbol, payload_bits_per_symbol;
+	struct interval interval;
+	double gap;                   /* achieved - floor, bits per symbol */
+	struct interval gap_interval; /* of the paired difference */
+	bool has_percent;
+	double gap_percent; /* 100 gap / floor; not below .001 bit of floor */
+	double efficiency;  /* floor / achieved, 0 to 1 */
+	double flush_cost;  /* flushed / headline - 1; 0 where not flushed */
+	unsigned effective_order; /* least trusted order with h <= payload;
+				     0: ">trusted order" */
+	bool has_record;
+	double bits_per_record;
+	struct gap_stack stack;
+	double encode_mb_per_s, decode_mb_per_s; /* 0: not timed; MB = 1e6 bytes
+						    of canonical input, CPU */
+};
+
+struct corpus_view {
+	const struct corpus_fact *fact; /* borrowed */
+	struct order_row *orders;       /* owned */
+	size_t order_count;
+	unsigned trusted_order;                  /* 0: none */
+	char trust_limit[ANALYSIS_REASON_BYTES]; /* which test fails next */
+	struct estimate_row *estimates;          /* owned, table order */
+	size_t estimate_count;
+	struct floor_row floor;
+	struct bracket_row bracket;
+	struct cell_row *cells; /* owned, same order as fact->cells */
+	size_t cell_count;
+};
+
+struct analysis {
+	const struct survey *survey; /* borrowed; must outlive this */
+	struct corpus_view *corpora; /* owned, same order as the survey's */
+	size_t corpus_count;
+};
+
+/* What is asked of the intervals. */
+struct analysis_rules {
+	unsigned draws;    /* bootstrap draws, at least 1999 */
+	double confidence; /* 0.95 */
+};
+
+/*
+ * Pure: the same survey and rules give the same analysis. A corpus or cell
+ * that failed gets a row with known false. STATUS_NO_MEMORY.
+ */
+MUST_USE enum status analysis_init(struct analysis *analysis,
+				   const struct survey *survey,
+				   const struct analysis_rules *rules,
+				   struct reason *why);
+void analysis_release(struct analysis *analysis);
+
+/* 1 when any cell, method or corpus failed or was not lossless, else 0. */
+int analysis_failed(const struct analysis *analysis);
+
+#endif
