@@ -20,7 +20,12 @@ struct figure figure_bits(bool known, double bits)
 
 	if (!known || !is_finite(bits))
 		return none();
-	(void)snprintf(figure.text, sizeof(figure.text), "%.4f", bits);
+	/* A header alone is hundreds of bits a symbol on a tiny file. */
+	(void)snprintf(figure.text, sizeof(figure.text), "%.*f",
+		       bits < 99.99995 ? 4
+		       : bits < 9999.5 ? 1
+				       : 0,
+		       bits);
 	return figure;
 }
 
@@ -51,6 +56,8 @@ struct figure figure_percent(bool known, double percent)
 
 	if (!known || !is_finite(percent))
 		return none();
+	if (percent >= 99999.95)
+		return (struct figure){">99999"};
 	(void)snprintf(figure.text, sizeof(figure.text), "%.1f", percent);
 	return figure;
 }

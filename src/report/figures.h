@@ -13,13 +13,13 @@ struct figure {
 	char text[48];
 };
 
-/* Bits per symbol, 4 decimals. */
+/* Bits per symbol, 4 decimals; fewer from 100 bits on. */
 struct figure figure_bits(bool known, double bits);
 /* The same with its sign: terms that can lie on either side. */
 struct figure figure_signed(bool known, double bits);
 /* "[1.2345,1.3456]" */
 struct figure figure_interval(double low, double high);
-/* One decimal. */
+/* One decimal, up to 99999.9. */
 struct figure figure_percent(bool known, double percent);
 /* "4,194,304" */
 struct figure figure_count(uint64_t count);

@@ -74,9 +74,9 @@ static enum status gap_table(const struct writer *writer,
 		"Bits and gap are per symbol (%s). This file: bits and gap are "
 		"exact. Data of this kind: the intervals, from resampled "
 		"blocks; that of the gap is of the paired difference to the "
-		"floor, so it is narrower than the two apart. Layout: one "
+		"floor, which mostly makes it the narrower one. Layout: one "
 		"stream (whole) or pages of so many bytes, each on its own. "
-		"Two codecs whose gap intervals overlap may still differ.",
+		"Two codecs whose intervals overlap may still differ.",
 		symbol_kind_name(view->fact->kind));
 	return STATUS_OK;
 }

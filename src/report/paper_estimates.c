@@ -120,8 +120,8 @@ enum status paper_orders(const struct writer *writer,
 		"per symbol given the k-1 before: straight from the counts "
 		"(plug-in, errs low), corrected for rare grams (Grassberger "
 		"2003; Chao, Wang and Jost 2013, which goes by coverage), and "
-		"cross-fitted (errs high). Coverage is the share of the "
-		"source's grams that this file has shown. None of these is a "
-		"floor.");
+		"cross-fitted (errs high). Coverage is estimated: how "
+		"likely the next gram is one that this file has shown. None of "
+		"these is a floor.");
 	return STATUS_OK;
 }

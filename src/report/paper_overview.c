@@ -47,7 +47,7 @@ static const struct cell_row *best_cell(const struct corpus_view *view)
 }
 
 static const struct column columns[] = {
-	{"corpus", 24, true},  {"symbols", 10, true},    {"floor", 7, false},
+	{"corpus", 20, true},  {"symbols", 10, true},    {"floor", 7, false},
 	{"held by", 14, true}, {"best codec", 14, true}, {"gap", 7, false},
 	{"gap %", 7, false},   {"failed", 6, false},
 };

@@ -71,14 +71,15 @@ static void bracket_edges(const struct writer *writer,
 				figure_bits(true, bracket->high).text,
 				bracket->upper_by);
 	else
-		write_paragraph(writer,
-				"Rate bracket: the entropy rate of the source "
-				"lies between %s and %s bits per symbol; the "
-				"lower edge comes from grams of order %u, the "
-				"upper from %s.",
-				figure_bits(true, bracket->low).text,
-				figure_bits(true, bracket->high).text,
-				bracket->order, bracket->upper_by);
+		write_paragraph(
+			writer,
+			"Rate bracket: between %s and %s bits per "
+			"symbol for the entropy rate of the source; the "
+			"lower edge comes from grams of order %u, the "
+			"upper from %s.",
+			figure_bits(true, bracket->low).text,
+			figure_bits(true, bracket->high).text, bracket->order,
+			bracket->upper_by);
 }
 
 static void bracket_words(const struct writer *writer,
