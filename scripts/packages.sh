@@ -46,9 +46,9 @@ need() {
 	fi
 	echo "installing: $missing" >&2
 	export DEBIAN_FRONTEND=noninteractive
+	talk=$(mktemp)
 	# The words are packages: they must split.
 	# shellcheck disable=SC2086
-	talk=$(mktemp)
 	if ! install_words "$as_root" $missing >"$talk" 2>&1; then
 		tail -n 20 "$talk" >&2
 		rm -f "$talk"
