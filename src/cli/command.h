@@ -56,8 +56,8 @@ extern const struct command *const commands[];
 
 /* Parses argv after the command's name. STATUS_BAD_USAGE with a reason. */
 MUST_USE enum status words_parse(const struct command *command, int argc,
-                                 char **argv, struct words *words,
-                                 struct reason *why);
+				 char **argv, struct words *words,
+				 struct reason *why);
 /* Last value given to an option; NULL where it was not given ("" for flags). */
 const char *words_get(const struct words *words, const char *option);
 /* The i-th value of an option that may be repeated; NULL past the last. */
@@ -67,8 +67,8 @@ const char *words_nth(const struct words *words, const char *option, size_t i);
  * it was not given. STATUS_BAD_USAGE names the option and the range.
  */
 MUST_USE enum status words_number(const struct words *words, const char *option,
-                                  uint64_t low, uint64_t high, uint64_t *value,
-                                  struct reason *why);
+				  uint64_t low, uint64_t high, uint64_t *value,
+				  struct reason *why);
 
 /* Prints help as text, or as a man page (roff), for one command or for all. */
 void help_command(const struct command *command, bool man);
@@ -79,6 +79,6 @@ enum exit_code complain(const struct words *words, const struct reason *why);
 
 /* Nearest name to a wrong one, or NULL when none is near. */
 const char *nearest_name(const char *wrong, const char *const *names,
-                         size_t count);
+			 size_t count);
 
 #endif

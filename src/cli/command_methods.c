@@ -23,16 +23,16 @@ static enum exit_code methods_run(const struct words *words)
 		const struct estimator *row = estimators[i];
 
 		(void)printf("  %-10s %s\n  %-10s %s%s; %s\n", row->name,
-		             row->summary, "", leaning_words(row),
-		             row->deep ? "; only by --estimator" : "",
-		             row->source);
+			     row->summary, "", leaning_words(row),
+			     row->deep ? "; only by --estimator" : "",
+			     row->source);
 	}
 	(void)printf("\ncodecs\n");
 	for (size_t i = 0; codecs[i]; i++) {
 		const struct codec *row = codecs[i];
 
 		(void)printf("  %-10s %s\n  %-10s levels %s", row->name,
-		             row->summary, "", row->levels);
+			     row->summary, "", row->levels);
 		if (row->version)
 			(void)printf("; library %s", row->version());
 		(void)printf("; %s\n", row->source);

@@ -12,12 +12,12 @@ static enum exit_code report_run(const struct words *words)
 
 	if (show_format(words, &format, &why) != STATUS_OK ||
 	    words_number(words, "survey", 1, INT64_MAX, &id, &why) !=
-	            STATUS_OK ||
+		    STATUS_OK ||
 	    ledger_open(words->operands[0], LEDGER_READ, &ledger, &why) !=
-	            STATUS_OK)
+		    STATUS_OK)
 		return complain(words, &why);
 	status = show_survey(ledger, (int64_t)id, format,
-	                     words_get(words, "out"), &failed, &why);
+			     words_get(words, "out"), &failed, &why);
 	ledger_close(ledger);
 	if (status != STATUS_OK)
 		return complain(words, &why);

@@ -40,43 +40,43 @@ struct request {
 };
 
 static MUST_USE enum status take_names(const struct words *words,
-                                       const char *option, struct names *names,
-                                       struct reason *why)
+				       const char *option, struct names *names,
+				       struct reason *why)
 {
 	const char *name;
 
 	while ((name = words_nth(words, option, names->count))) {
 		if (names->count == PLAN_NAMES_MAX)
 			return reason_give(why, STATUS_BAD_USAGE,
-			                   "--%s: at most %d times", option,
-			                   PLAN_NAMES_MAX);
+					   "--%s: at most %d times", option,
+					   PLAN_NAMES_MAX);
 		names->name[names->count++] = name;
 	}
 	return STATUS_OK;
 }
 
 static MUST_USE enum status take_part(const struct words *words,
-                                      struct request *request,
-                                      struct reason *why)
+				      struct request *request,
+				      struct reason *why)
 {
 	const char *text = words_get(words, "part");
 	unsigned part = 1, parts = 1;
 	char rest;
 
 	if (text && (sscanf(text, "%4u/%4u%c", &part, &parts, &rest) != 2 ||
-	             part < 1 || part > parts))
+		     part < 1 || part > parts))
 		return reason_give(why, STATUS_BAD_USAGE,
-		                   "--part '%s': I/N is wanted, 1/4 for "
-		                   "example, with I from 1 to N",
-		                   text);
+				   "--part '%s': I/N is wanted, 1/4 for "
+				   "example, with I from 1 to N",
+				   text);
 	request->selection.part = request->rules.part = part;
 	request->selection.parts = request->rules.parts = parts;
 	return STATUS_OK;
 }
 
 static MUST_USE enum status take_options(const struct words *words,
-                                         struct request *request,
-                                         struct reason *why)
+					 struct request *request,
+					 struct reason *why)
 {
 	uint64_t jobs = 1, seed = 1, orders = ORDERS_DEFAULT;
 	long processors = sysconf(_SC_NPROCESSORS_ONLN);
@@ -87,7 +87,8 @@ static MUST_USE enum status take_options(const struct words *words,
 	TRY(words_number(words, "seed", 0, UINT64_MAX, &seed, why));
 	TRY(words_number(words, "orders", 1, 32, &orders, why));
 	TRY(take_names(words, "corpus", &request->selection.corpora, why));
-	TRY(take_names(words, "estimator", &request->selection.estimators, why));
+	TRY(take_names(words, "estimator", &request->selection.estimators,
+		       why));
 	TRY(take_names(words, "codec", &request->selection.codecs, why));
 	TRY(take_names(words, "level", &request->selection.levels, why));
 	request->rules = (struct run_rules){
@@ -104,28 +105,25 @@ static MUST_USE enum status take_options(const struct words *words,
 }
 
 static MUST_USE enum status name_ledger(const struct words *words,
-                                        const struct set *set,
-                                        struct request *request,
-                                        struct reason *why)
+					const struct set *set,
+					struct request *request,
+					struct reason *why)
 {
 	const char *path = words_get(words, "ledger");
-	int length =
-		path ? snprintf(request->ledger, sizeof(request->ledger), "%s",
-	                        path)
-		     : snprintf(request->ledger, sizeof(request->ledger),
-	                        "%s.ledger", set->name);
+	int length = path ? snprintf(request->ledger, sizeof(request->ledger),
+				     "%s", path)
+			  : snprintf(request->ledger, sizeof(request->ledger),
+				     "%s.ledger", set->name);
 
 	if (length < 0 || (size_t)length >= sizeof(request->ledger))
 		return reason_give(why, STATUS_BAD_USAGE,
-		                   "--ledger: name too long");
+				   "--ledger: name too long");
 	return STATUS_OK;
 }
 
-static MUST_USE enum status measure(const struct set *set,
-                                    struct request *request,
-                                    struct ledger *ledger,
-                                    struct run_outcome *outcome,
-                                    struct reason *why)
+static MUST_USE enum status
+measure(const struct set *set, struct request *request, struct ledger *ledger,
+	struct run_outcome *outcome, struct reason *why)
 {
 	struct plan plan;
 	enum status status;
@@ -137,24 +135,23 @@ static MUST_USE enum status measure(const struct set *set,
 }
 
 static void tell_end(const struct request *request,
-                     const struct run_outcome *outcome, bool quiet)
+		     const struct run_outcome *outcome, bool quiet)
 {
 	if (outcome->stopped)
 		(void)fprintf(stderr,
-		              "ratefloor survey: stopped; what was measured "
-		              "is in %s: the same command with --resume goes "
-		              "on\n",
-		              request->ledger);
+			      "ratefloor survey: stopped; what was measured "
+			      "is in %s: the same command with --resume goes "
+			      "on\n",
+			      request->ledger);
 	else if (!quiet)
 		(void)fprintf(stderr, "survey %lld is in %s\n",
-		              (long long)outcome->survey, request->ledger);
+			      (long long)outcome->survey, request->ledger);
 }
 
 static MUST_USE enum status survey_set(const struct words *words,
-                                       const struct set *set,
-                                       struct request *request,
-                                       enum exit_code *code,
-                                       struct reason *why)
+				       const struct set *set,
+				       struct request *request,
+				       enum exit_code *code, struct reason *why)
 {
 	bool quiet = words_get(words, "quiet") != NULL;
 	struct meter meter;
@@ -173,7 +170,7 @@ static MUST_USE enum status survey_set(const struct words *words,
 	meter_clear(&meter);
 	if (status == STATUS_OK) {
 		status = show_survey(ledger, outcome.survey, request->format,
-		                     words_get(words, "out"), &failed, why);
+				     words_get(words, "out"), &failed, why);
 		tell_end(request, &outcome, quiet);
 	}
 	ledger_close(ledger);
@@ -191,7 +188,7 @@ static enum exit_code survey_run_command(const struct words *words)
 
 	if (take_options(words, &request, &why) != STATUS_OK ||
 	    set_read(words->operands[0], words_get(words, "outside") != NULL,
-	             &set, &why) != STATUS_OK)
+		     &set, &why) != STATUS_OK)
 		return complain(words, &why);
 	status = survey_set(words, &set, &request, &code, &why);
 	set_release(&set);
@@ -201,8 +198,9 @@ static enum exit_code survey_run_command(const struct words *words)
 }
 
 static const struct option_row options[] = {
-	{"ledger", "FILE", "keep the facts there; by default NAME.ledger, after "
-                           "the set's name"},
+	{"ledger", "FILE",
+	 "keep the facts there; by default NAME.ledger, after "
+	 "the set's name"},
 	{"corpus", "NAME", "only this corpus; may be given more than once"},
 	{"estimator", "NAME", "only this estimator; likewise"},
 	{"codec", "NAME", "only this codec of the set; likewise"},
@@ -227,19 +225,26 @@ const struct command command_survey = {
 	.operands_max = 1,
 	.summary = "measures a set: the main job; ends with the table",
 	.description =
-		"Every corpus of the set file goes through every estimator and\n"
-		"through every codec, level and layout that the set names. Each\n"
-		"stream is decoded again and compared. Facts go to the ledger,\n"
+		"Every corpus of the set file goes through every estimator "
+		"and\n"
+		"through every codec, level and layout that the set names. "
+		"Each\n"
+		"stream is decoded again and compared. Facts go to the "
+		"ledger,\n"
 		"one transaction a row, so that a kill loses at most the rows\n"
 		"in hand; the table is then made from the ledger.\n"
 		"\n"
-		"Sizes are measured on several threads and are the same for any\n"
-		"number of them. Speeds are measured afterwards, one codec at a\n"
+		"Sizes are measured on several threads and are the same for "
+		"any\n"
+		"number of them. Speeds are measured afterwards, one codec at "
+		"a\n"
 		"time with nothing else running, in three rounds.\n"
 		"\n"
-		"A corpus that is absent and could be fetched is skipped with a\n"
+		"A corpus that is absent and could be fetched is skipped with "
+		"a\n"
 		"line. One that is unreadable, empty, of the wrong digest or\n"
-		"malformed, and a codec that fails, is recorded and shown; the\n"
+		"malformed, and a codec that fails, is recorded and shown; "
+		"the\n"
 		"others go on and the exit code is 1.",
 	.examples =
 		"  ratefloor survey corpora/starter.set\n"

@@ -12,10 +12,13 @@ static const char *const what_it_does =
 	"resampled blocks.";
 
 static const char *const exit_words[] = {
-	"0", "done",
-	"1", "a cell, a method, a corpus or a gate failed; what it was is "
-	     "recorded and shown",
-	"2", "wrong usage, or input or output that cannot be used",
+	"0",
+	"done",
+	"1",
+	"a cell, a method, a corpus or a gate failed; what it was is "
+	"recorded and shown",
+	"2",
+	"wrong usage, or input or output that cannot be used",
 };
 
 static void text_option(const struct option_row *row)
@@ -34,8 +37,8 @@ static void text_option(const struct option_row *row)
 static void text_command(const struct command *command)
 {
 	(void)printf("usage: ratefloor %s%s%s [OPTION]...\n\n%s\n\n%s\n",
-	             command->name, command->operands[0] ? " " : "",
-	             command->operands, command->summary, command->description);
+		     command->name, command->operands[0] ? " " : "",
+		     command->operands, command->summary, command->description);
 	(void)printf("\noptions:\n");
 	for (size_t i = 0; command->options[i].name; i++)
 		text_option(&command->options[i]);
@@ -78,7 +81,7 @@ static void roff_head(const char *name, const char *summary)
 	for (const char *c = name; *c; c++)
 		(void)putchar(*c >= 'a' && *c <= 'z' ? *c - 'a' + 'A' : *c);
 	(void)printf("\" 1 \"\" \"ratefloor %s\" \"User Commands\"\n.SH NAME\n",
-	             RATEFLOOR_VERSION);
+		     RATEFLOOR_VERSION);
 	roff(name);
 	(void)printf("\\- ");
 	roff(summary);
@@ -87,7 +90,8 @@ static void roff_head(const char *name, const char *summary)
 static void roff_exit_status(void)
 {
 	(void)printf(".SH EXIT STATUS\n");
-	for (size_t i = 0; i < sizeof(exit_words) / sizeof(*exit_words); i += 2) {
+	for (size_t i = 0; i < sizeof(exit_words) / sizeof(*exit_words);
+	     i += 2) {
 		(void)printf(".TP\n%s\n", exit_words[i]);
 		roff(exit_words[i + 1]);
 	}
@@ -134,11 +138,12 @@ static void man_program(void)
 {
 	roff_head("ratefloor", "how far codecs are above the entropy rate");
 	(void)printf(".SH SYNOPSIS\n.B ratefloor\n\\fICOMMAND\\fR "
-	             "[\\fIARGUMENT\\fR]...\n.SH DESCRIPTION\n");
+		     "[\\fIARGUMENT\\fR]...\n.SH DESCRIPTION\n");
 	roff(what_it_does);
 	(void)printf(".SH COMMANDS\n");
 	for (size_t i = 0; commands[i]; i++) {
-		(void)printf(".TP\n.BR ratefloor\\-%s (1)\n", commands[i]->name);
+		(void)printf(".TP\n.BR ratefloor\\-%s (1)\n",
+			     commands[i]->name);
 		roff(commands[i]->summary);
 	}
 	roff_exit_status();
@@ -151,13 +156,13 @@ void help_program(bool man)
 		return;
 	}
 	(void)printf("usage: ratefloor COMMAND [ARGUMENT]...\n\n%s\n\n"
-	             "commands:\n",
-	             what_it_does);
+		     "commands:\n",
+		     what_it_does);
 	for (size_t i = 0; commands[i]; i++)
 		(void)printf("  %-10s %s\n", commands[i]->name,
-		             commands[i]->summary);
+			     commands[i]->summary);
 	(void)printf("\nratefloor COMMAND --help tells more; --version the "
-	             "version.\n\nexit codes:\n");
+		     "version.\n\nexit codes:\n");
 	for (size_t i = 0; i < sizeof(exit_words) / sizeof(*exit_words); i += 2)
 		(void)printf("  %s  %s\n", exit_words[i], exit_words[i + 1]);
 }

@@ -23,7 +23,7 @@ static enum exit_code unknown_command(const char *name)
 }
 
 static enum exit_code run_command(const struct command *command, int argc,
-                                  char **argv)
+				  char **argv)
 {
 	struct words words;
 	struct reason why = {""};
@@ -49,7 +49,7 @@ static enum exit_code finish_output(enum exit_code code)
 enum exit_code complain(const struct words *words, const struct reason *why)
 {
 	(void)fprintf(stderr, "ratefloor %s: %s\n", words->command->name,
-	              why->text);
+		      why->text);
 	return EXIT_USAGE;
 }
 
@@ -59,7 +59,8 @@ int main(int argc, char **argv)
 		help_program(false);
 		return EXIT_USAGE;
 	}
-	if (strcmp(argv[1], "--help") == 0 || strcmp(argv[1], "--help=man") == 0) {
+	if (strcmp(argv[1], "--help") == 0 ||
+	    strcmp(argv[1], "--help=man") == 0) {
 		help_program(argv[1][6] == '=');
 		return (int)finish_output(EXIT_DONE);
 	}
@@ -74,8 +75,8 @@ int main(int argc, char **argv)
 	}
 	for (size_t i = 0; commands[i]; i++) {
 		if (strcmp(argv[1], commands[i]->name) == 0)
-			return (int)finish_output(run_command(
-				commands[i], argc - 2, argv + 2));
+			return (int)finish_output(
+				run_command(commands[i], argc - 2, argv + 2));
 	}
 	return (int)unknown_command(argv[1]);
 }

@@ -9,7 +9,7 @@
 void meter_init(struct meter *meter, bool wanted)
 {
 	*meter = (struct meter){.on = wanted && isatty(STDERR_FILENO),
-	                        .shown = -1};
+				.shown = -1};
 }
 
 static void time_left(char text[32], double seconds)
@@ -20,7 +20,7 @@ static void time_left(char text[32], double seconds)
 		(void)snprintf(text, 32, "time left unknown");
 	else
 		(void)snprintf(text, 32, "about %u:%02u left", whole / 60,
-		               whole % 60);
+			       whole % 60);
 }
 
 void meter_watch(void *context, const struct run_progress *progress)
@@ -28,15 +28,15 @@ void meter_watch(void *context, const struct run_progress *progress)
 	struct meter *meter = context;
 	char left[32];
 
-	if (!meter->on || (meter->shown >= 0 &&
-	                   progress->seconds - meter->shown <
-	                           SECONDS_BETWEEN_LINES))
+	if (!meter->on ||
+	    (meter->shown >= 0 &&
+	     progress->seconds - meter->shown < SECONDS_BETWEEN_LINES))
 		return;
 	meter->shown = progress->seconds;
 	time_left(left, progress->seconds_left);
 	(void)fprintf(stderr, WIPE "%3.0f%%  %zu of %zu  %s  %.32s: %.32s",
-	              100 * progress->share, progress->done, progress->total,
-	              left, progress->corpus, progress->what);
+		      100 * progress->share, progress->done, progress->total,
+		      left, progress->corpus, progress->what);
 	(void)fflush(stderr);
 }
 

@@ -33,7 +33,7 @@ static size_t edits(const char *a, const char *b)
 }
 
 const char *nearest_name(const char *wrong, const char *const *names,
-                         size_t count)
+			 size_t count)
 {
 	const char *best = NULL;
 	size_t fewest = strlen(wrong) / 3 + 2;

@@ -7,7 +7,7 @@
 #include <unistd.h>
 
 enum status output_open(struct output *output, const char *path,
-                        struct reason *why)
+			struct reason *why)
 {
 	struct stat about;
 
@@ -18,19 +18,19 @@ enum status output_open(struct output *output, const char *path,
 	if (stat(path, &about) == 0 && !S_ISREG(about.st_mode)) {
 		output->file = fopen(path, "w");
 	} else {
-		int length = snprintf(output->temporary,
-		                      sizeof(output->temporary), "%s.%ld.part",
-		                      path, (long)getpid());
+		int length =
+			snprintf(output->temporary, sizeof(output->temporary),
+				 "%s.%ld.part", path, (long)getpid());
 
 		if (length < 0 || (size_t)length >= sizeof(output->temporary))
 			return reason_give(why, STATUS_IO, "%s: name too long",
-			                   path);
+					   path);
 		output->file = fopen(output->temporary, "w");
 	}
 	if (output->file)
 		return STATUS_OK;
 	return reason_give(why, STATUS_IO, "%s: cannot write: %s", path,
-	                   strerror(errno));
+			   strerror(errno));
 }
 
 enum status output_keep(struct output *output, struct reason *why)
@@ -41,8 +41,8 @@ enum status output_keep(struct output *output, struct reason *why)
 
 	if (!output->path)
 		return bad ? reason_give(why, STATUS_IO, "%s: cannot write: %s",
-		                         name, strerror(error))
-		           : STATUS_OK;
+					 name, strerror(error))
+			   : STATUS_OK;
 	if (!bad && output->temporary[0] && fsync(fileno(output->file)) != 0) {
 		bad = 1;
 		error = errno;
@@ -61,7 +61,7 @@ enum status output_keep(struct output *output, struct reason *why)
 		return STATUS_OK;
 	output_drop(output);
 	return reason_give(why, STATUS_IO, "%s: cannot write: %s", name,
-	                   strerror(error));
+			   strerror(error));
 }
 
 void output_drop(struct output *output)

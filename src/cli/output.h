@@ -17,7 +17,7 @@ struct output {
 };
 
 MUST_USE enum status output_open(struct output *output, const char *path,
-                                 struct reason *why);
+				 struct reason *why);
 /* Flushes, syncs and moves into place. STATUS_IO: nothing is left behind. */
 MUST_USE enum status output_keep(struct output *output, struct reason *why);
 void output_drop(struct output *output);

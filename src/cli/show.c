@@ -5,8 +5,8 @@
 static const struct analysis_rules rules = {.draws = 1999, .confidence = 0.95};
 
 static MUST_USE enum status write_report(const struct analysis *analysis,
-                                         const struct report_format *format,
-                                         const char *path, struct reason *why)
+					 const struct report_format *format,
+					 const char *path, struct reason *why)
 {
 	struct output output;
 	enum status status;
@@ -20,8 +20,8 @@ static MUST_USE enum status write_report(const struct analysis *analysis,
 }
 
 enum status show_survey(struct ledger *ledger, int64_t id,
-                        const struct report_format *format, const char *path,
-                        int *failed, struct reason *why)
+			const struct report_format *format, const char *path,
+			int *failed, struct reason *why)
 {
 	struct survey survey = {0};
 	struct analysis analysis;
@@ -40,7 +40,7 @@ enum status show_survey(struct ledger *ledger, int64_t id,
 }
 
 enum status show_format(const struct words *words,
-                        const struct report_format **format, struct reason *why)
+			const struct report_format **format, struct reason *why)
 {
 	const char *name = words_get(words, "as");
 	char all[128] = "";
@@ -51,8 +51,8 @@ enum status show_format(const struct words *words,
 		return STATUS_OK;
 	for (size_t i = 0; report_formats[i] && used < sizeof(all); i++)
 		used += (size_t)snprintf(all + used, sizeof(all) - used, " %s",
-		                         report_formats[i]->name);
+					 report_formats[i]->name);
 	return reason_give(why, STATUS_BAD_USAGE,
-	                   "--as %s: there is no such format; there are:%s",
-	                   name, all);
+			   "--as %s: there is no such format; there are:%s",
+			   name, all);
 }

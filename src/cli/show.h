@@ -13,13 +13,13 @@
  * a failure. Statuses: those of ledger_read and analysis_init; STATUS_IO.
  */
 MUST_USE enum status show_survey(struct ledger *ledger, int64_t id,
-                                 const struct report_format *format,
-                                 const char *path, int *failed,
-                                 struct reason *why);
+				 const struct report_format *format,
+				 const char *path, int *failed,
+				 struct reason *why);
 
 /* --as: the format named, or text; STATUS_BAD_USAGE lists them. */
 MUST_USE enum status show_format(const struct words *words,
-                                 const struct report_format **format,
-                                 struct reason *why);
+				 const struct report_format **format,
+				 struct reason *why);
 
 #endif

@@ -5,14 +5,14 @@
 #include <string.h>
 
 static const struct option_row *option_at(const struct command *command,
-                                          size_t i)
+					  size_t i)
 {
 	return command->options[i].name ? &command->options[i] : NULL;
 }
 
 static MUST_USE enum status unknown_option(const struct command *command,
-                                           const char *text, size_t length,
-                                           struct reason *why)
+					   const char *text, size_t length,
+					   struct reason *why)
 {
 	const char *names[WORDS_OPTIONS_MAX];
 	char wrong[64] = "";
@@ -25,17 +25,18 @@ static MUST_USE enum status unknown_option(const struct command *command,
 		memcpy(wrong, text, length);
 	near = nearest_name(wrong, names, count);
 	if (near)
-		return reason_give(why, STATUS_BAD_USAGE,
-		                   "there is no option --%.*s; did you mean --%s?",
-		                   (int)length, text, near);
+		return reason_give(
+			why, STATUS_BAD_USAGE,
+			"there is no option --%.*s; did you mean --%s?",
+			(int)length, text, near);
 	return reason_give(why, STATUS_BAD_USAGE,
-	                   "there is no option --%.*s; see ratefloor %s --help",
-	                   (int)length, text, command->name);
+			   "there is no option --%.*s; see ratefloor %s --help",
+			   (int)length, text, command->name);
 }
 
 static MUST_USE enum status add_option(struct words *words, const char *text,
-                                       const char *next, bool *took_next,
-                                       struct reason *why)
+				       const char *next, bool *took_next,
+				       struct reason *why)
 {
 	const char *equals = strchr(text, '=');
 	size_t length = equals ? (size_t)(equals - text) : strlen(text);
@@ -44,20 +45,21 @@ static MUST_USE enum status add_option(struct words *words, const char *text,
 
 	while ((row = option_at(words->command, i)) &&
 	       (strlen(row->name) != length ||
-	        strncmp(row->name, text, length) != 0))
+		strncmp(row->name, text, length) != 0))
 		i++;
 	if (!row)
 		return unknown_option(words->command, text, length, why);
 	if (!row->value && equals)
-		return reason_give(why, STATUS_BAD_USAGE,
-		                   "--%s takes no value", row->name);
+		return reason_give(why, STATUS_BAD_USAGE, "--%s takes no value",
+				   row->name);
 	*took_next = row->value && !equals;
 	if (*took_next && !next)
-		return reason_give(why, STATUS_BAD_USAGE, "--%s wants a value: %s",
-		                   row->name, row->value);
+		return reason_give(why, STATUS_BAD_USAGE,
+				   "--%s wants a value: %s", row->name,
+				   row->value);
 	if (words->given_count == WORDS_VALUES_MAX)
 		return reason_give(why, STATUS_BAD_USAGE,
-		                   "more than %d options", WORDS_VALUES_MAX);
+				   "more than %d options", WORDS_VALUES_MAX);
 	words->given[words->given_count].option = i;
 	words->given[words->given_count].value =
 		!row->value ? "" : (equals ? equals + 1 : next);
@@ -66,24 +68,25 @@ static MUST_USE enum status add_option(struct words *words, const char *text,
 }
 
 static MUST_USE enum status check_operands(const struct words *words,
-                                           struct reason *why)
+					   struct reason *why)
 {
 	const struct command *command = words->command;
 
 	if (words->operand_count < command->operands_min)
 		return reason_give(why, STATUS_BAD_USAGE,
-		                   "wants %s; see ratefloor %s --help",
-		                   command->operands, command->name);
+				   "wants %s; see ratefloor %s --help",
+				   command->operands, command->name);
 	if (words->operand_count > command->operands_max)
-		return reason_give(
-			why, STATUS_BAD_USAGE, "'%s' is one too many; it takes %s",
-			words->operands[command->operands_max],
-			command->operands[0] ? command->operands : "options only");
+		return reason_give(why, STATUS_BAD_USAGE,
+				   "'%s' is one too many; it takes %s",
+				   words->operands[command->operands_max],
+				   command->operands[0] ? command->operands
+							: "options only");
 	return STATUS_OK;
 }
 
 enum status words_parse(const struct command *command, int argc, char **argv,
-                        struct words *words, struct reason *why)
+			struct words *words, struct reason *why)
 {
 	bool options = true;
 
@@ -102,18 +105,18 @@ enum status words_parse(const struct command *command, int argc, char **argv,
 			return STATUS_OK;
 		} else if (options && strncmp(text, "--", 2) == 0) {
 			TRY(add_option(words, text + 2,
-			               i + 1 < argc ? argv[i + 1] : NULL,
-			               &took_next, why));
+				       i + 1 < argc ? argv[i + 1] : NULL,
+				       &took_next, why));
 			i += took_next;
 		} else if (options && text[0] == '-' && text[1]) {
 			return reason_give(why, STATUS_BAD_USAGE,
-			                   "'%s': options are long ones, like "
-			                   "--help",
-			                   text);
+					   "'%s': options are long ones, like "
+					   "--help",
+					   text);
 		} else if (words->operand_count == WORDS_VALUES_MAX) {
 			return reason_give(why, STATUS_BAD_USAGE,
-			                   "more than %d arguments",
-			                   WORDS_VALUES_MAX);
+					   "more than %d arguments",
+					   WORDS_VALUES_MAX);
 		} else {
 			words->operands[words->operand_count++] = text;
 		}
@@ -143,8 +146,8 @@ const char *words_get(const struct words *words, const char *option)
 }
 
 enum status words_number(const struct words *words, const char *option,
-                         uint64_t low, uint64_t high, uint64_t *value,
-                         struct reason *why)
+			 uint64_t low, uint64_t high, uint64_t *value,
+			 struct reason *why)
 {
 	const char *text = words_get(words, option);
 	unsigned long long number;
@@ -156,11 +159,12 @@ enum status words_number(const struct words *words, const char *option,
 	number = strtoull(text, &end, 10);
 	if (text[0] < '0' || text[0] > '9' || *end || errno || number < low ||
 	    number > high)
-		return reason_give(why, STATUS_BAD_USAGE,
-		                   "--%s '%s': a whole number from %llu to %llu "
-		                   "is wanted",
-		                   option, text, (unsigned long long)low,
-		                   (unsigned long long)high);
+		return reason_give(
+			why, STATUS_BAD_USAGE,
+			"--%s '%s': a whole number from %llu to %llu "
+			"is wanted",
+			option, text, (unsigned long long)low,
+			(unsigned long long)high);
 	*value = number;
 	return STATUS_OK;
 }

@@ -25,27 +25,27 @@ static enum outcome outcome_of(enum status status)
 }
 
 static void name_method(const struct estimator *row, size_t page_bytes,
-                        struct method_fact *fact)
+			struct method_fact *fact)
 {
 	*fact = (struct method_fact){.page_bytes = page_bytes};
 	(void)snprintf(fact->method, sizeof(fact->method), "%s", row->name);
 }
 
 static MUST_USE enum status try_row(const struct estimator *row,
-                                    const struct estimate_input *input,
-                                    struct findings *findings,
-                                    struct reason *why)
+				    const struct estimate_input *input,
+				    struct findings *findings,
+				    struct reason *why)
 {
 	if (input->sequence->kind == SYMBOL_WORD && !row->reads_words)
 		return reason_give(why, STATUS_TOO_SHORT,
-		                   "not defined for symbols = word; declare "
-		                   "another kind to run %s",
-		                   row->name);
+				   "not defined for symbols = word; declare "
+				   "another kind to run %s",
+				   row->name);
 	return row->measure(input, findings, why);
 }
 
 static void measure_row(const struct measure_rows *job, size_t i,
-                        const struct suffix *suffix)
+			const struct suffix *suffix)
 {
 	const struct plan_rows *rows = job->item->rows;
 	const struct estimator *row = rows->row[i];
@@ -73,7 +73,7 @@ static void measure_row(const struct measure_rows *job, size_t i,
 }
 
 static void decline_rows(const struct measure_rows *job, enum status status,
-                         const struct reason *why)
+			 const struct reason *why)
 {
 	const struct plan_rows *rows = job->item->rows;
 
@@ -110,19 +110,19 @@ void measure_rows(const struct measure_rows *job)
 }
 
 void measure_cell(const struct plan_cell *cell, const struct sequence *sequence,
-                  const struct cuts *cuts, struct cell_fact *fact)
+		  const struct cuts *cuts, struct cell_fact *fact)
 {
 	struct reason why = {""};
 	enum status status;
 
 	*fact = (struct cell_fact){.page_bytes = cell->page_bytes};
 	(void)snprintf(fact->key.codec, sizeof(fact->key.codec), "%s",
-	               cell->codec->name);
+		       cell->codec->name);
 	(void)snprintf(fact->key.level, sizeof(fact->key.level), "%s",
-	               cell->setting.text);
+		       cell->setting.text);
 	layout_format(cell->page_bytes, fact->key.layout);
 	status = cell_measure(cell->codec, &cell->setting, cell->page_bytes,
-	                      sequence, cuts, &fact->facts, &why);
+			      sequence, cuts, &fact->facts, &why);
 	fact->outcome = outcome_of(status);
 	if (status == STATUS_OK && !fact->facts.lossless)
 		fact->outcome = OUTCOME_FAILED;
@@ -138,7 +138,7 @@ MUST_USE enum status measure_libraries(struct survey *survey)
 	while (codecs[count])
 		count++;
 	TRY(memory_new_zeroed(count, sizeof(*survey->libraries),
-	                      &survey->libraries));
+			      &survey->libraries));
 	for (size_t i = 0; i < count; i++) {
 		struct library_fact *fact =
 			&survey->libraries[survey->library_count];
@@ -146,9 +146,9 @@ MUST_USE enum status measure_libraries(struct survey *survey)
 		if (!codecs[i]->version)
 			continue;
 		(void)snprintf(fact->name, sizeof(fact->name), "%s",
-		               codecs[i]->name);
+			       codecs[i]->name);
 		(void)snprintf(fact->version, sizeof(fact->version), "%s",
-		               codecs[i]->version());
+			       codecs[i]->version());
 		survey->library_count++;
 	}
 	return STATUS_OK;

@@ -13,7 +13,7 @@ struct measure_rows {
 	unsigned orders;
 	/* Takes each row's fact as it is found; the fact is borrowed. */
 	void (*put)(void *context, const struct plan_item *item, size_t place,
-	            const struct method_fact *method);
+		    const struct method_fact *method);
 	void *context;
 };
 
@@ -21,7 +21,7 @@ struct measure_rows {
 void measure_rows(const struct measure_rows *job);
 /* Likewise; the fact is released by the caller. */
 void measure_cell(const struct plan_cell *cell, const struct sequence *sequence,
-                  const struct cuts *cuts, struct cell_fact *fact);
+		  const struct cuts *cuts, struct cell_fact *fact);
 
 /* Fills the libraries that the codecs run on, with versions at run time. */
 MUST_USE enum status measure_libraries(struct survey *survey);

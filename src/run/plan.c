@@ -20,8 +20,8 @@ static bool chosen(const struct names *names, const char *name)
 }
 
 static MUST_USE enum status check_names(const struct set *set,
-                                        const struct selection *selection,
-                                        struct reason *why)
+					const struct selection *selection,
+					struct reason *why)
 {
 	for (size_t i = 0; i < selection->corpora.count; i++) {
 		const char *name = selection->corpora.name[i];
@@ -32,18 +32,18 @@ static MUST_USE enum status check_names(const struct set *set,
 			j++;
 		if (j == set->corpus_count)
 			return reason_give(why, STATUS_BAD_USAGE,
-			                   "--corpus %s: the set has no such "
-			                   "corpus; ratefloor corpora list "
-			                   "shows them",
-			                   name);
+					   "--corpus %s: the set has no such "
+					   "corpus; ratefloor corpora list "
+					   "shows them",
+					   name);
 	}
 	for (size_t i = 0; i < selection->estimators.count; i++) {
 		if (!estimator_find(selection->estimators.name[i]))
 			return reason_give(why, STATUS_BAD_USAGE,
-			                   "--estimator %s: there is no such "
-			                   "estimator; ratefloor methods "
-			                   "shows them",
-			                   selection->estimators.name[i]);
+					   "--estimator %s: there is no such "
+					   "estimator; ratefloor methods "
+					   "shows them",
+					   selection->estimators.name[i]);
 	}
 	for (size_t i = 0; i < selection->codecs.count; i++) {
 		const char *name = selection->codecs.name[i];
@@ -54,20 +54,20 @@ static MUST_USE enum status check_names(const struct set *set,
 			j++;
 		if (j == set->codec_count)
 			return reason_give(why, STATUS_BAD_USAGE,
-			                   "--codec %s: the set has no section "
-			                   "[codec %s]",
-			                   name, name);
+					   "--codec %s: the set has no section "
+					   "[codec %s]",
+					   name, name);
 	}
 	return STATUS_OK;
 }
 
 static MUST_USE enum status choose_corpora(struct plan *plan,
-                                           const struct selection *selection)
+					   const struct selection *selection)
 {
 	const struct set *set = plan->set;
 
 	TRY(memory_new(set->corpus_count, sizeof(*plan->corpora),
-	               &plan->corpora));
+		       &plan->corpora));
 	for (size_t i = 0; i < set->corpus_count; i++) {
 		if (chosen(&selection->corpora, set->corpora[i].name))
 			plan->corpora[plan->corpus_count++] = i;
@@ -76,23 +76,23 @@ static MUST_USE enum status choose_corpora(struct plan *plan,
 }
 
 static MUST_USE enum status find_codec(const struct set *set,
-                                       const struct set_codec *section,
-                                       const struct codec **codec,
-                                       struct reason *why)
+				       const struct set_codec *section,
+				       const struct codec **codec,
+				       struct reason *why)
 {
 	*codec = codec_find(section->name);
 	if (*codec)
 		return STATUS_OK;
 	return reason_give(why, STATUS_BAD_USAGE,
-	                   "%s: [codec %s]: there is no built-in codec of that "
-	                   "name; ratefloor methods shows them",
-	                   set->path, section->name);
+			   "%s: [codec %s]: there is no built-in codec of that "
+			   "name; ratefloor methods shows them",
+			   set->path, section->name);
 }
 
 static MUST_USE enum status add_levels(struct plan *plan,
-                                       const struct set_codec *section,
-                                       const struct selection *selection,
-                                       size_t *place, struct reason *why)
+				       const struct set_codec *section,
+				       const struct selection *selection,
+				       size_t *place, struct reason *why)
 {
 	const struct codec *codec;
 
@@ -103,15 +103,15 @@ static MUST_USE enum status add_levels(struct plan *plan,
 			enum status status;
 
 			*cell = (struct plan_cell){.codec = codec,
-			                           .place = (*place)++};
+						   .place = (*place)++};
 			status = codec->parse(section->levels[i],
-			                      &cell->setting, why);
+					      &cell->setting, why);
 			if (status == STATUS_OK)
 				status = layout_parse(section->layouts[j],
-				                      &cell->page_bytes, why);
+						      &cell->page_bytes, why);
 			if (status != STATUS_OK) {
 				reason_prefix(why, "%s: [codec %s]: ",
-				              plan->set->path, section->name);
+					      plan->set->path, section->name);
 				return status;
 			}
 			plan->cell_count +=
@@ -123,27 +123,27 @@ static MUST_USE enum status add_levels(struct plan *plan,
 }
 
 static MUST_USE enum status choose_cells(struct plan *plan,
-                                         const struct selection *selection,
-                                         struct reason *why)
+					 const struct selection *selection,
+					 struct reason *why)
 {
 	const struct set *set = plan->set;
 	size_t most = 1, place = 0;
 
 	for (size_t i = 0; i < set->codec_count; i++)
 		most += set->codecs[i].level_count *
-		        set->codecs[i].layout_count;
+			set->codecs[i].layout_count;
 	TRY(memory_new_zeroed(most, sizeof(*plan->cells), &plan->cells));
 	for (size_t i = 0; i < set->codec_count; i++)
 		TRY(add_levels(plan, &set->codecs[i], selection, &place, why));
 	if (selection->levels.count && !plan->cell_count)
 		return reason_give(why, STATUS_BAD_USAGE,
-		                   "--level: no chosen codec of the set has "
-		                   "such a level");
+				   "--level: no chosen codec of the set has "
+				   "such a level");
 	return STATUS_OK;
 }
 
 static bool row_wanted(const struct estimator *row,
-                       const struct selection *selection)
+		       const struct selection *selection)
 {
 	if (selection->estimators.count)
 		return chosen(&selection->estimators, row->name);
@@ -152,7 +152,7 @@ static bool row_wanted(const struct estimator *row,
 
 /* The page sizes of the cells, each once, in order of size. */
 static size_t page_sizes(const struct plan *plan,
-                         size_t pages[PLACES_A_ROW - 1])
+			 size_t pages[PLACES_A_ROW - 1])
 {
 	size_t count = 0, last = 0;
 
@@ -173,7 +173,7 @@ static size_t page_sizes(const struct plan *plan,
 }
 
 static void add_row(struct plan *plan, size_t group, size_t row,
-                    size_t page_index, size_t page_bytes)
+		    size_t page_index, size_t page_bytes)
 {
 	struct plan_rows *rows = &plan->rows[group];
 
@@ -183,7 +183,7 @@ static void add_row(struct plan *plan, size_t group, size_t row,
 }
 
 static MUST_USE enum status choose_rows(struct plan *plan,
-                                        const struct selection *selection)
+					const struct selection *selection)
 {
 	size_t pages[PLACES_A_ROW - 1];
 	size_t page_count = page_sizes(plan, pages), rows = 0;
@@ -192,7 +192,7 @@ static MUST_USE enum status choose_rows(struct plan *plan,
 		rows++;
 	/* Group 0: all that need the suffix order, so that it is made once. */
 	TRY(memory_new_zeroed(1 + rows * PLACES_A_ROW, sizeof(*plan->rows),
-	                      &plan->rows));
+			      &plan->rows));
 	plan->rows_count = 1;
 	for (size_t i = 0; i < rows; i++) {
 		const struct estimator *row = estimators[i];
@@ -271,7 +271,8 @@ static int largest_first(const void *left, const void *right)
  */
 static MUST_USE enum status lay_items(struct plan *plan)
 {
-	size_t most = plan->corpus_count * (plan->cell_count + plan->rows_count);
+	size_t most =
+		plan->corpus_count * (plan->cell_count + plan->rows_count);
 	struct sized *sized;
 
 	TRY(memory_new(plan->corpus_count, sizeof(*sized), &sized));
@@ -305,8 +306,8 @@ static void keep_part(struct plan *plan, const struct selection *selection)
 }
 
 static MUST_USE enum status plan_lay(struct plan *plan,
-                                     const struct selection *selection,
-                                     struct reason *why)
+				     const struct selection *selection,
+				     struct reason *why)
 {
 	TRY(check_names(plan->set, selection, why));
 	TRY(choose_corpora(plan, selection));
@@ -318,7 +319,7 @@ static MUST_USE enum status plan_lay(struct plan *plan,
 }
 
 enum status plan_init(struct plan *plan, const struct set *set,
-                      const struct selection *selection, struct reason *why)
+		      const struct selection *selection, struct reason *why)
 {
 	struct plan made = {.set = set};
 	enum status status = plan_lay(&made, selection, why);

@@ -46,7 +46,7 @@ struct plan_item {
 };
 
 struct plan {
-	const struct set *set; /* borrowed */
+	const struct set *set;   /* borrowed */
 	struct plan_cell *cells; /* owned; the same for every corpus */
 	size_t cell_count;
 	struct plan_rows *rows; /* owned */
@@ -63,8 +63,8 @@ struct plan {
  * which, where, and what would be right.
  */
 MUST_USE enum status plan_init(struct plan *plan, const struct set *set,
-                               const struct selection *selection,
-                               struct reason *why);
+			       const struct selection *selection,
+			       struct reason *why);
 void plan_release(struct plan *plan);
 
 #endif

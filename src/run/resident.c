@@ -4,7 +4,7 @@
 #include <string.h>
 
 enum status resident_init(struct resident *resident,
-                          const struct set_corpus *declared, size_t users)
+			  const struct set_corpus *declared, size_t users)
 {
 	*resident = (struct resident){.declared = declared, .users = users};
 	if (pthread_mutex_init(&resident->lock, NULL) != 0)
@@ -13,15 +13,15 @@ enum status resident_init(struct resident *resident,
 }
 
 static MUST_USE enum status open_bytes(struct resident *resident,
-                                       uint64_t bytes_allowed)
+				       uint64_t bytes_allowed)
 {
 	struct reason *why = &resident->why;
 	enum status status;
 
 	TRY(corpus_open(resident->declared, bytes_allowed, &resident->corpus,
-	                why));
+			why));
 	status = sequence_init(&resident->sequence, resident->corpus.bytes,
-	                       &resident->declared->rules, why);
+			       &resident->declared->rules, why);
 	if (status != STATUS_OK) {
 		corpus_close(&resident->corpus);
 		return status;
@@ -44,7 +44,7 @@ enum status resident_take(struct resident *resident, uint64_t bytes_allowed)
 		resident->status = open_bytes(resident, bytes_allowed);
 		if (resident->status != STATUS_OK && !resident->why.text[0])
 			(void)reason_give(&resident->why, resident->status,
-			                  "%s", status_words(resident->status));
+					  "%s", status_words(resident->status));
 	}
 	status = resident->status;
 	(void)pthread_mutex_unlock(&resident->lock);
@@ -98,15 +98,15 @@ static enum outcome outcome_of(const struct resident *resident)
 }
 
 static MUST_USE enum status fill_blocks(const struct cuts *cuts,
-                                        struct corpus_fact *fact)
+					struct corpus_fact *fact)
 {
 	fact->blocks = cuts->blocks;
 	if (!cuts->blocks)
 		return STATUS_OK;
 	TRY(memory_new(cuts->blocks, sizeof(*fact->block_symbols),
-	               &fact->block_symbols));
+		       &fact->block_symbols));
 	TRY(memory_new(cuts->blocks, sizeof(*fact->block_bytes),
-	               &fact->block_bytes));
+		       &fact->block_bytes));
 	for (size_t i = 0; i < cuts->blocks; i++) {
 		fact->block_symbols[i] = cuts->symbol[i + 1] - cuts->symbol[i];
 		fact->block_bytes[i] = cuts->byte[i + 1] - cuts->byte[i];
@@ -115,7 +115,7 @@ static MUST_USE enum status fill_blocks(const struct cuts *cuts,
 }
 
 static MUST_USE enum status fill(const struct resident *resident,
-                                 struct corpus_fact *fact)
+				 struct corpus_fact *fact)
 {
 	const struct sequence *sequence = &resident->sequence;
 
@@ -134,7 +134,7 @@ static MUST_USE enum status fill(const struct resident *resident,
 }
 
 enum status resident_fact(const struct resident *resident,
-                          struct corpus_fact *fact)
+			  struct corpus_fact *fact)
 {
 	const struct set_corpus *declared = resident->declared;
 	struct corpus_fact made = {
@@ -147,7 +147,7 @@ enum status resident_fact(const struct resident *resident,
 
 	(void)snprintf(made.name, sizeof(made.name), "%s", declared->name);
 	(void)snprintf(made.licence, sizeof(made.licence), "%s",
-	               declared->licence);
+		       declared->licence);
 	status = fill(resident, &made);
 	if (status != STATUS_OK) {
 		corpus_fact_release(&made);

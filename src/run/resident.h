@@ -12,8 +12,8 @@
 struct resident {
 	pthread_mutex_t lock;
 	const struct set_corpus *declared; /* borrowed */
-	size_t users; /* pieces of work still to come */
-	bool tried;   /* opening was tried; status and why say how it went */
+	size_t users;                      /* pieces of work still to come */
+	bool tried; /* opening was tried; status and why say how it went */
 	enum status status;
 	struct reason why;
 	struct corpus corpus;
@@ -22,15 +22,15 @@ struct resident {
 };
 
 MUST_USE enum status resident_init(struct resident *resident,
-                                   const struct set_corpus *declared,
-                                   size_t users);
+				   const struct set_corpus *declared,
+				   size_t users);
 /*
  * Opens the corpus unless that was done, and returns how it went: the statuses
  * of corpus_open and sequence_init. The caller calls resident_drop once for
  * every call, whatever it returned.
  */
 MUST_USE enum status resident_take(struct resident *resident,
-                                   uint64_t bytes_allowed);
+				   uint64_t bytes_allowed);
 /* After the last user the bytes are given back. */
 void resident_drop(struct resident *resident);
 void resident_release(struct resident *resident);
@@ -40,6 +40,6 @@ void resident_release(struct resident *resident);
  * resident_fact_release. STATUS_NO_MEMORY.
  */
 MUST_USE enum status resident_fact(const struct resident *resident,
-                                   struct corpus_fact *fact);
+				   struct corpus_fact *fact);
 
 #endif

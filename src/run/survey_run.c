@@ -1,9 +1,9 @@
 #include "run/survey_run.h"
 
-#include "base/digest.h"
 #include "base/pool.h"
 #include "run/measure.h"
 #include "run/resident.h"
+#include "run/resume.h"
 #include "run/stopwatch.h"
 #include "run/timing.h"
 
@@ -43,7 +43,7 @@ static bool must_stop(struct run *run)
 
 /* Under lock. */
 static void keep_status(struct run *run, enum status status,
-                        const struct reason *why)
+			const struct reason *why)
 {
 	if (status == STATUS_OK || run->status != STATUS_OK)
 		return;
@@ -66,7 +66,8 @@ static void write_corpus(struct run *run, size_t corpus)
 		keep_status(run, status, &why);
 		return;
 	}
-	status = ledger_put_corpus(run->ledger, run->survey, corpus, &fact, &why);
+	status = ledger_put_corpus(run->ledger, run->survey, corpus, &fact,
+				   &why);
 	keep_status(run, status, &why);
 	run->corpus_written[corpus] = true;
 	run->outcome.failed += fact.outcome == OUTCOME_FAILED;
@@ -76,9 +77,10 @@ static void write_corpus(struct run *run, size_t corpus)
 
 /* Under lock. */
 static void report_progress(struct run *run, const char *corpus,
-                            const char *what)
+			    const char *what)
 {
-	double share = run->work_total > 0 ? run->work_done / run->work_total : 1;
+	double share =
+		run->work_total > 0 ? run->work_done / run->work_total : 1;
 	struct run_progress progress = {
 		.done = run->done,
 		.total = run->plan->item_count,
@@ -96,7 +98,7 @@ static void report_progress(struct run *run, const char *corpus,
 }
 
 static void finish_item(struct run *run, const struct plan_item *item,
-                        const char *what)
+			const char *what)
 {
 	(void)pthread_mutex_lock(&run->lock);
 	run->done++;
@@ -106,7 +108,7 @@ static void finish_item(struct run *run, const struct plan_item *item,
 }
 
 static void put_cell(struct run *run, const struct plan_item *item,
-                     const struct cell_fact *cell)
+		     const struct cell_fact *cell)
 {
 	struct reason why = {""};
 	enum status status;
@@ -125,7 +127,7 @@ static void put_cell(struct run *run, const struct plan_item *item,
 }
 
 static void put_method(void *context, const struct plan_item *item,
-                       size_t place, const struct method_fact *method)
+		       size_t place, const struct method_fact *method)
 {
 	struct run *run = context;
 	struct reason why = {""};
@@ -145,7 +147,7 @@ static void put_method(void *context, const struct plan_item *item,
 }
 
 static void run_cell(struct run *run, const struct plan_item *item,
-                     const struct resident *resident)
+		     const struct resident *resident)
 {
 	struct cell_fact cell;
 	char what[2 * CELL_NAME_BYTES + 2];
@@ -153,13 +155,13 @@ static void run_cell(struct run *run, const struct plan_item *item,
 	measure_cell(item->cell, &resident->sequence, &resident->cuts, &cell);
 	put_cell(run, item, &cell);
 	(void)snprintf(what, sizeof(what), "%s %s", cell.key.codec,
-	               cell.key.level);
+		       cell.key.level);
 	cell_fact_release(&cell);
 	finish_item(run, item, what);
 }
 
 static void run_rows(struct run *run, const struct plan_item *item,
-                     const struct resident *resident)
+		     const struct resident *resident)
 {
 	const struct measure_rows job = {
 		.item = item,
@@ -202,143 +204,55 @@ static MUST_USE enum status init_residents(struct run *run)
 	const struct set *set = run->plan->set;
 
 	TRY(memory_new_zeroed(set->corpus_count, sizeof(*run->resident),
-	                      &run->resident));
+			      &run->resident));
 	TRY(memory_new_zeroed(set->corpus_count, sizeof(*run->corpus_written),
-	                      &run->corpus_written));
+			      &run->corpus_written));
 	TRY(memory_new_zeroed(run->plan->item_count, sizeof(*run->item_done),
-	                      &run->item_done));
+			      &run->item_done));
 	for (size_t i = 0; i < set->corpus_count; i++)
 		TRY(resident_init(&run->resident[i], &set->corpora[i], 0));
 	return STATUS_OK;
 }
 
-/* Same set, rules and program: the same plan; the part is told apart. */
-static MUST_USE enum status plan_digest(const struct run *run, char *text,
-                                        size_t room)
+static MUST_USE enum status take_up(struct run *run, const char *digest,
+				    struct reason *why)
 {
-	struct buffer all;
-	char line[256], digest[DIGEST_TEXT_BYTES];
-	enum status status = STATUS_OK;
+	struct survey held = {0};
 
-	buffer_init(&all, SIZE_MAX / 2);
-	(void)snprintf(line, sizeof(line), "%s\n%s\n%llu\n%u\n",
-	               run->rules->program, run->plan->set->digest,
-	               (unsigned long long)run->rules->seed, run->rules->orders);
-	status = buffer_add(&all, line, strlen(line));
-	for (size_t i = 0; status == STATUS_OK && i < run->plan->corpus_count;
-	     i++) {
-		const char *name =
-			run->plan->set->corpora[run->plan->corpora[i]].name;
-
-		status = buffer_add(&all, name, strlen(name) + 1);
-	}
-	for (size_t i = 0; status == STATUS_OK && i < run->plan->cell_count; i++)
-		status = buffer_add(&all, &run->plan->cells[i].place,
-		                    sizeof(run->plan->cells[i].place));
-	for (size_t i = 0; status == STATUS_OK && i < run->plan->rows_count; i++)
-		status = buffer_add(&all, run->plan->rows[i].place,
-		                    sizeof(run->plan->rows[i].place));
-	if (status == STATUS_OK) {
-		digest_sha256(all.bytes, all.length, digest);
-		(void)snprintf(text, room, "%.32s part %u/%u", digest,
-		               run->rules->part, run->rules->parts);
-	}
-	buffer_release(&all);
-	return status;
-}
-
-static const struct corpus_fact *corpus_of(const struct survey *survey,
-                                           const char *name)
-{
-	for (size_t i = 0; i < survey->corpus_count; i++) {
-		if (strcmp(survey->corpora[i].name, name) == 0)
-			return &survey->corpora[i];
-	}
-	return NULL;
-}
-
-static bool holds_cell(const struct corpus_fact *corpus,
-                       const struct plan_cell *cell)
-{
-	for (size_t i = 0; i < corpus->cell_count; i++) {
-		const struct cell_fact *fact = &corpus->cells[i];
-
-		if (strcmp(fact->key.codec, cell->codec->name) == 0 &&
-		    strcmp(fact->key.level, cell->setting.text) == 0 &&
-		    fact->page_bytes == cell->page_bytes)
-			return true;
-	}
-	return false;
-}
-
-static bool holds_rows(const struct corpus_fact *corpus,
-                       const struct plan_rows *rows)
-{
-	size_t found = 0;
-
-	for (size_t i = 0; i < rows->count; i++) {
-		for (size_t j = 0; j < corpus->method_count; j++)
-			found += strcmp(corpus->methods[j].method,
-			                rows->row[i]->name) == 0 &&
-			         corpus->methods[j].page_bytes ==
-			                 rows->page_bytes;
-	}
-	return found == rows->count;
-}
-
-/* Marks what an unfinished survey already holds. */
-static void mark_done(struct run *run, const struct survey *held)
-{
+	TRY(ledger_resume(run->ledger, digest, &run->survey, why));
+	TRY(ledger_read(run->ledger, run->survey, &held, why));
 	for (size_t i = 0; i < run->plan->item_count; i++) {
-		const struct plan_item *item = &run->plan->items[i];
-		const struct corpus_fact *corpus = corpus_of(
-			held, run->plan->set->corpora[item->corpus].name);
-
-		if (!corpus || corpus->outcome != OUTCOME_DONE)
-			continue;
-		run->item_done[i] = item->cell ? holds_cell(corpus, item->cell)
-		                               : holds_rows(corpus, item->rows);
+		run->item_done[i] =
+			resume_holds(&held, run->plan, &run->plan->items[i]);
 		run->done += run->item_done[i];
 	}
-	for (size_t i = 0; i < held->corpus_count; i++) {
-		for (size_t j = 0; j < held->corpora[i].cell_count; j++)
-			run->outcome.failed +=
-				held->corpora[i].cells[j].outcome ==
-				OUTCOME_FAILED;
-	}
+	run->outcome.failed += resume_failed(&held);
+	survey_release(&held);
+	return STATUS_OK;
 }
 
 static MUST_USE enum status begin_survey(struct run *run, struct reason *why)
 {
 	struct survey survey = {.seed = run->rules->seed,
-	                        .orders = run->rules->orders,
-	                        .gap_limit = run->plan->set->gap_limit};
-	char digest[96];
+				.orders = run->rules->orders,
+				.gap_limit = run->plan->set->gap_limit};
+	char digest[RESUME_DIGEST_BYTES];
+	enum status status;
 
-	TRY(plan_digest(run, digest, sizeof(digest)));
-	if (run->rules->resume) {
-		struct survey held = {0};
-
-		TRY(ledger_resume(run->ledger, digest, &run->survey, why));
-		TRY(ledger_read(run->ledger, run->survey, &held, why));
-		mark_done(run, &held);
-		survey_release(&held);
-		return STATUS_OK;
-	}
+	TRY(resume_digest(run->plan, run->rules, digest));
+	if (run->rules->resume)
+		return take_up(run, digest, why);
 	(void)snprintf(survey.set_name, sizeof(survey.set_name), "%s",
-	               run->plan->set->name);
+		       run->plan->set->name);
 	(void)snprintf(survey.program, sizeof(survey.program), "%s",
-	               run->rules->program);
+		       run->rules->program);
 	(void)snprintf(survey.yardstick, sizeof(survey.yardstick), "%s",
-	               run->plan->set->yardstick);
+		       run->plan->set->yardstick);
 	TRY(measure_libraries(&survey));
-	{
-		enum status status = ledger_begin(run->ledger, &survey, digest, why);
-
-		run->survey = survey.id;
-		survey_release(&survey);
-		return status;
-	}
+	status = ledger_begin(run->ledger, &survey, digest, why);
+	run->survey = survey.id;
+	survey_release(&survey);
+	return status;
 }
 
 static void count_work(struct run *run)
@@ -384,8 +298,8 @@ static MUST_USE enum status run_all(struct run *run, struct reason *why)
 }
 
 enum status survey_run(const struct plan *plan, struct ledger *ledger,
-                       const struct run_rules *rules,
-                       struct run_outcome *outcome, struct reason *why)
+		       const struct run_rules *rules,
+		       struct run_outcome *outcome, struct reason *why)
 {
 	struct run run = {.plan = plan, .rules = rules, .ledger = ledger};
 	enum status status;

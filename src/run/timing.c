@@ -17,10 +17,10 @@ struct timed {
 };
 
 static const struct cell_clock clock_of_thread = {thread_cpu_seconds,
-                                                  wall_seconds};
+						  wall_seconds};
 
 static const struct cell_fact *find_cell(const struct corpus_fact *corpus,
-                                         const struct plan_cell *cell)
+					 const struct plan_cell *cell)
 {
 	for (size_t i = 0; i < corpus->cell_count; i++) {
 		const struct cell_fact *fact = &corpus->cells[i];
@@ -35,7 +35,7 @@ static const struct cell_fact *find_cell(const struct corpus_fact *corpus,
 
 /* The cells of a corpus that are good and not timed yet. */
 static size_t choose(const struct timing_job *job, size_t corpus,
-                     const struct corpus_fact *held, struct timed *timed)
+		     const struct corpus_fact *held, struct timed *timed)
 {
 	size_t count = 0;
 
@@ -54,16 +54,16 @@ static size_t choose(const struct timing_job *job, size_t corpus,
 }
 
 static void time_round(const struct resident *resident, struct timed *timed,
-                       unsigned round)
+		       unsigned round)
 {
 	const struct plan_cell *cell = timed->item->cell;
 	const struct slice input = {resident->sequence.canonical,
-	                            resident->sequence.canonical_bytes};
+				    resident->sequence.canonical_bytes};
 	struct cell_round reading;
 	struct reason why;
 
 	if (cell_time(cell->codec, &cell->setting, cell->page_bytes, input,
-	              &clock_of_thread, &reading, &why) != STATUS_OK) {
+		      &clock_of_thread, &reading, &why) != STATUS_OK) {
 		timed->failed = true;
 		return;
 	}
@@ -80,15 +80,14 @@ static double median_of(double *values, unsigned count, double *spread)
 	sort_reals(values, count);
 	median = quantile_sorted(values, count, 0.5);
 	if (spread)
-		*spread = median > 0
-		                  ? (values[count - 1] - values[0]) / median
-		                  : 0;
+		*spread = median > 0 ? (values[count - 1] - values[0]) / median
+				     : 0;
 	return median;
 }
 
 static MUST_USE enum status keep_times(const struct timing_job *job,
-                                       struct timed *timed, unsigned rounds,
-                                       struct reason *why)
+				       struct timed *timed, unsigned rounds,
+				       struct reason *why)
 {
 	const struct plan_cell *cell = timed->item->cell;
 	struct cell_timing timing = {.rounds = rounds};
@@ -98,19 +97,21 @@ static MUST_USE enum status keep_times(const struct timing_job *job,
 		median_of(timed->encode_cpu, rounds, &timing.encode_spread);
 	timing.decode_cpu_seconds =
 		median_of(timed->decode_cpu, rounds, &timing.decode_spread);
-	timing.encode_wall_seconds = median_of(timed->encode_wall, rounds, NULL);
-	timing.decode_wall_seconds = median_of(timed->decode_wall, rounds, NULL);
+	timing.encode_wall_seconds =
+		median_of(timed->encode_wall, rounds, NULL);
+	timing.decode_wall_seconds =
+		median_of(timed->decode_wall, rounds, NULL);
 	(void)snprintf(key.codec, sizeof(key.codec), "%s", cell->codec->name);
 	(void)snprintf(key.level, sizeof(key.level), "%s", cell->setting.text);
 	layout_format(cell->page_bytes, key.layout);
 	return ledger_put_timing(
 		job->ledger, job->survey,
-		job->plan->set->corpora[timed->item->corpus].name, &key, &timing,
-		why);
+		job->plan->set->corpora[timed->item->corpus].name, &key,
+		&timing, why);
 }
 
 static void tell(const struct timing_job *job, const struct timed *timed,
-                 unsigned round)
+		 unsigned round)
 {
 	char what[2 * CELL_NAME_BYTES + 24];
 	struct run_progress progress = {
@@ -126,8 +127,8 @@ static void tell(const struct timing_job *job, const struct timed *timed,
 	if (!job->rules->watch)
 		return;
 	(void)snprintf(what, sizeof(what), "timing %s %s, round %u",
-	               timed->item->cell->codec->name,
-	               timed->item->cell->setting.text, round + 1);
+		       timed->item->cell->codec->name,
+		       timed->item->cell->setting.text, round + 1);
 	job->rules->watch(job->rules->context, &progress);
 }
 
@@ -137,9 +138,9 @@ static bool stopped(const struct timing_job *job)
 }
 
 static MUST_USE enum status time_cells(const struct timing_job *job,
-                                       const struct resident *resident,
-                                       struct timed *timed, size_t count,
-                                       struct reason *why)
+				       const struct resident *resident,
+				       struct timed *timed, size_t count,
+				       struct reason *why)
 {
 	unsigned rounds = job->rules->rounds;
 
@@ -161,7 +162,7 @@ static MUST_USE enum status time_cells(const struct timing_job *job,
 }
 
 static const struct corpus_fact *find_corpus(const struct survey *held,
-                                             const char *name)
+					     const char *name)
 {
 	for (size_t i = 0; i < held->corpus_count; i++) {
 		if (strcmp(held->corpora[i].name, name) == 0)
@@ -171,10 +172,9 @@ static const struct corpus_fact *find_corpus(const struct survey *held,
 }
 
 static MUST_USE enum status time_corpus(const struct timing_job *job,
-                                        size_t corpus,
-                                        const struct survey *held,
-                                        struct timed *timed,
-                                        struct reason *why)
+					size_t corpus,
+					const struct survey *held,
+					struct timed *timed, struct reason *why)
 {
 	const struct set_corpus *declared = &job->plan->set->corpora[corpus];
 	const struct corpus_fact *fact = find_corpus(held, declared->name);
@@ -211,7 +211,7 @@ enum status timing_run(const struct timing_job *job, struct reason *why)
 	for (size_t i = 0; status == STATUS_OK && i < job->plan->corpus_count;
 	     i++)
 		status = time_corpus(job, job->plan->corpora[i], &held, timed,
-		                     why);
+				     why);
 	memory_free(timed);
 	survey_release(&held);
 	return status;

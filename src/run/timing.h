@@ -20,6 +20,6 @@ struct timing_job {
  * survey_run.
  */
 MUST_USE enum status timing_run(const struct timing_job *job,
-                                struct reason *why);
+				struct reason *why);
 
 #endif
