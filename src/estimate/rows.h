@@ -5,5 +5,7 @@
 #include "estimate/estimator.h"
 
 extern const struct estimator estimator_uniform;
+extern const struct estimator estimator_ngram;
+extern const struct estimator estimator_match;
 
 #endif

@@ -6,6 +6,8 @@
 
 const struct estimator *const estimators[] = {
 	&estimator_uniform,
+	&estimator_ngram,
+	&estimator_match,
 	NULL,
 };
 

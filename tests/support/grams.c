@@ -1,0 +1,184 @@
+#define _GNU_SOURCE /* qsort_r */
+#include "support/grams.h"
+
+#include "base/random.h"
+#include "base/sum.h"
+#include "estimate/estimator.h"
+#include "suffix/suffix.h"
+#include "support/near.h"
+
+#include <math.h>
+#include <stdlib.h>
+#include <string.h>
+
+struct sequence grams_sequence(const uint8_t *codes, size_t n, unsigned width)
+{
+	uint64_t alphabet = UINT64_C(1) << 8 * width;
+
+	return (struct sequence){
+		.canonical = codes,
+		.canonical_bytes = n * width,
+		.n = n,
+		.codes = codes,
+		.code_width = width,
+		.code_count =
+			alphabet > UINT32_MAX ? UINT32_MAX : (uint32_t)alphabet,
+		.alphabet = alphabet,
+	};
+}
+
+struct cuts grams_cuts(size_t n, size_t blocks)
+{
+	struct cuts cuts = {.blocks = blocks};
+
+	cuts.symbol = malloc((blocks + 1) * sizeof(*cuts.symbol));
+	for (size_t i = 0; i <= blocks; i++)
+		cuts.symbol[i] = n * i / blocks;
+	return cuts;
+}
+
+struct order {
+	const struct sequence *sequence;
+	unsigned k;
+};
+
+static int compare(const void *left, const void *right, void *context)
+{
+	const struct order *order = context;
+	const struct sequence *sequence = order->sequence;
+	size_t a = *(const size_t *)left, b = *(const size_t *)right;
+
+	for (unsigned i = 0; i < order->k; i++) {
+		size_t width = sequence->code_width;
+		int sign = memcmp(
+			sequence->codes + (a + i) % sequence->n * width,
+			sequence->codes + (b + i) % sequence->n * width, width);
+
+		if (sign)
+			return sign;
+	}
+	return 0;
+}
+
+void grams_count(const struct sequence *sequence, unsigned k, size_t first,
+		 size_t last, uint64_t *count)
+{
+	struct order order = {sequence, k};
+	size_t n = sequence->n, end;
+	size_t *starts = malloc(n * sizeof(*starts));
+
+	for (size_t i = 0; i < n; i++)
+		starts[i] = i;
+	qsort_r(starts, n, sizeof(*starts), compare, &order);
+	for (size_t i = 0; i < n; i = end) {
+		uint64_t inside = 0;
+
+		for (end = i;
+		     end < n && compare(&starts[i], &starts[end], &order) == 0;
+		     end++)
+			inside += starts[end] >= first && starts[end] < last;
+		for (size_t j = i; j < end; j++)
+			count[starts[j]] = inside;
+	}
+	free(starts);
+}
+
+double grams_entropy(const struct sequence *sequence, unsigned k, size_t first,
+		     size_t last)
+{
+	uint64_t *count = malloc(sequence->n * sizeof(*count));
+	double positions = (double)(last - first);
+	struct sum sum = {0};
+
+	grams_count(sequence, k, first, last, count);
+	for (size_t s = first; s < last; s++)
+		sum_add(&sum, log2(positions / (double)count[s]));
+	free(count);
+	return sum_value(&sum) / positions;
+}
+
+struct findings grams_findings(const struct sequence *sequence, unsigned orders,
+			       const struct cuts *cuts)
+{
+	const struct cuts none = {0};
+	struct findings findings;
+	struct suffix suffix;
+	struct estimate_input input = {.sequence = sequence,
+				       .cuts = cuts ? cuts : &none,
+				       .suffix = &suffix,
+				       .orders = orders,
+				       .threads = 1};
+
+	assert_int_equal(suffix_init(&suffix, sequence, orders, NULL),
+			 STATUS_OK);
+	assert_int_equal(
+		estimator_find("ngram")->measure(&input, &findings, NULL),
+		STATUS_OK);
+	suffix_release(&suffix);
+	assert_int_equal(findings.order_count, orders);
+	assert_int_equal(findings.series_count, orders);
+	return findings;
+}
+
+void grams_pseudo_text(uint8_t *bytes, size_t n, uint64_t seed)
+{
+	struct random_stream random;
+	uint8_t words[512][8];
+
+	random_init(&random, seed, random_name("pseudo text"));
+	for (size_t w = 0; w < 512; w++) {
+		for (size_t i = 0; i < 8; i++)
+			words[w][i] =
+				(uint8_t)('a' + random_below(&random, 26));
+	}
+	for (size_t i = 0; i < n;) {
+		uint32_t limit = 2 + random_below(&random, 511);
+		uint32_t w = random_below(&random, limit);
+
+		for (size_t j = 0; j < 1 + w % 8 && i < n; j++)
+			bytes[i++] = words[w][j];
+		if (i < n)
+			bytes[i++] = random_below(&random, 12) ? ' ' : '\n';
+	}
+}
+
+void grams_fibonacci(uint8_t *bytes, size_t n)
+{
+	size_t length = 2, shorter = 1;
+
+	/* f_{j+1} = f_j f_{j-1}, from 01 and 0. */
+	bytes[0] = 0;
+	if (n > 1)
+		bytes[1] = 1;
+	while (length < n) {
+		size_t more = shorter < n - length ? shorter : n - length;
+
+		memcpy(bytes + length, bytes, more);
+		shorter = length;
+		length += more;
+	}
+}
+
+void grams_thue_morse(uint8_t *bytes, size_t n)
+{
+	for (size_t i = 0; i < n; i++)
+		bytes[i] = (uint8_t)(__builtin_popcountll(i) & 1);
+}
+
+/* Prefer one: append 1 unless that repeats a k-gram (Martin 1934). */
+void grams_de_bruijn(uint8_t *bytes, unsigned k)
+{
+	size_t count = (size_t)1 << k, gram = 0;
+	uint8_t *seen = calloc(count, 1);
+
+	/* The word starts after k zeros, and those end it cyclically. */
+	seen[0] = 1;
+	for (size_t i = 0; i < count; i++) {
+		size_t with_one = (gram << 1 | 1) & (count - 1);
+
+		bytes[i] = !seen[with_one];
+		gram = bytes[i] ? with_one : with_one & ~(size_t)1;
+		seen[gram] = 1;
+	}
+	free(seen);
+}
