@@ -10,7 +10,7 @@ enum status gram_tally_init(struct gram_tally *tally,
 
 	for (int set = 0; set < COUNT_SETS; set++) {
 		if (memory_new_zeroed(COUNT_LOGS_TABLED * made.stride,
-				      sizeof(int64_t),
+				      sizeof(uint32_t),
 				      &made.rare[set]) != STATUS_OK ||
 		    memory_new_zeroed(made.stride, sizeof(struct frequent),
 				      &made.frequent[set]) != STATUS_OK) {
@@ -61,7 +61,7 @@ void gram_tally_add(struct gram_tally *tally, enum count_set set,
 	struct frequent one;
 
 	if (count < COUNT_LOGS_TABLED) {
-		int64_t *row = tally->rare[set] + count * tally->stride;
+		uint32_t *row = tally->rare[set] + count * tally->stride;
 
 		row[above + 1]++;
 		row[deepest + 1]--;
@@ -76,10 +76,10 @@ void gram_tally_add(struct gram_tally *tally, enum count_set set,
 void gram_tally_add_once(struct gram_tally *tally, enum count_set set,
 			 uint64_t times, unsigned above)
 {
-	int64_t *row = tally->rare[set] + tally->stride;
+	uint32_t *row = tally->rare[set] + tally->stride;
 
-	row[above + 1] += (int64_t)times;
-	row[tally->orders + 1] -= (int64_t)times;
+	row[above + 1] += (uint32_t)times;
+	row[tally->orders + 1] -= (uint32_t)times;
 }
 
 static int64_t q16_from_q56(wide_int q56)
@@ -98,7 +98,7 @@ static void step_to_order(struct gram_tally *tally, enum count_set set,
 	struct frequent *frequent = tally->frequent[set];
 
 	for (size_t c = 1; c < COUNT_LOGS_TABLED; c++) {
-		int64_t *row = tally->rare[set] + c * tally->stride;
+		uint32_t *row = tally->rare[set] + c * tally->stride;
 
 		row[k] += row[k - 1];
 	}
@@ -125,14 +125,14 @@ static struct frequent total_at_order(const struct gram_tally *tally,
 static wide_int evaluate(struct gram_tally *tally, enum count_set set,
 			 unsigned k, struct gram_counts *counts)
 {
-	const int64_t *rare = tally->rare[set];
+	const uint32_t *rare = tally->rare[set];
 	struct frequent sums;
 
 	step_to_order(tally, set, k);
 	sums = total_at_order(tally, set, k);
 	counts->distinct = (uint64_t)sums.distinct;
-	counts->once = (uint64_t)rare[tally->stride + k];
-	counts->twice = (uint64_t)rare[2 * tally->stride + k];
+	counts->once = rare[tally->stride + k];
+	counts->twice = rare[2 * tally->stride + k];
 	counts->plugin_q16 = q16_from_q32(sums.plain_q32);
 	counts->psi_q16 = q16_from_q56(sums.psi_q56);
 	counts->grassberger_q16 = q16_from_q56(sums.grassberger_q56);

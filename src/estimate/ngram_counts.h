@@ -21,10 +21,11 @@ struct frequent {
  * p + 1 to d is added at p + 1 and taken off at d + 1.
  */
 struct gram_tally {
-	const struct count_logs *logs;         /* borrowed */
-	unsigned orders;                       /* K */
-	size_t stride;                         /* K + 2 */
-	int64_t *rare[COUNT_SETS];             /* owned; [count][order] */
+	const struct count_logs *logs; /* borrowed */
+	unsigned orders;               /* K */
+	size_t stride;                 /* K + 2 */
+	/* Owned; [count][order]. Differences wrap round, values do not. */
+	uint32_t *rare[COUNT_SETS];
 	struct frequent *frequent[COUNT_SETS]; /* owned; [order] */
 };
 

@@ -36,27 +36,33 @@ enum status count_logs_table(struct count_logs **table)
 	return STATUS_OK;
 }
 
-/* numerator / (divisor c^2) in Q60. */
-static wide_int over_square(int64_t numerator, int64_t divisor, uint64_t c)
+/* numerator / (divisor c^power) in Q60, a unit or two low; numerator < 8. */
+static int64_t over_power(int64_t numerator, int64_t divisor, int64_t c,
+			  unsigned power)
 {
-	wide_int square = (wide_int)c * (wide_int)c;
+	int64_t value = numerator * ONE_Q60 / divisor;
 
-	return ((wide_int)numerator * ONE_Q60 / divisor << 4) / square >> 4;
+	for (unsigned i = 0; i < power; i++)
+		value /= c;
+	return value;
 }
 
 /*
- * psi(c) = ln c - 1/(2c) - 1/(12 c^2), G(c) = ln c + 1/(6 c^2) for even c;
- * what follows, below 1/(8 c^4), is less than 2^-50 from c = 4096 on.
+ * psi(c) = ln c - 1/(2c) - 1/(12 c^2) + 1/(120 c^4) - …
+ * G(c) = ln c + 1/(6 c^2) - 7/(60 c^4) + … for even c.
+ * What follows, of order 1/(4 c^6), is less than 2^-55 from c = 512 on.
  */
 struct count_logs count_logs_large(uint64_t c)
 {
 	uint64_t even = c & ~UINT64_C(1);
-	wide_int below = ONE_Q60 / (int64_t)(2 * c) + over_square(1, 12, c);
+	int64_t any = (int64_t)c, two = (int64_t)even;
+	int64_t below = over_power(1, 2, any, 1) + over_power(1, 12, any, 2) -
+			over_power(1, 120, any, 4);
+	int64_t above = over_power(1, 6, two, 2) - over_power(7, 60, two, 4);
 	struct count_logs logs = {
 		.plain_q32 = (int64_t)log2_q32(c),
 		.psi_q56 = (int64_t)log2_q56(c) - bits_q56(below),
-		.grassberger_q56 = (int64_t)log2_q56(even) +
-				   bits_q56(over_square(1, 6, even)),
+		.grassberger_q56 = (int64_t)log2_q56(even) + bits_q56(above),
 	};
 
 	return logs;

@@ -13,8 +13,11 @@ struct count_logs {
 	int64_t plain_q32, psi_q56, grassberger_q56;
 };
 
-/* Counts below this are looked up and counted; it is a power of two. */
-#define COUNT_LOGS_TABLED 4096
+/*
+ * Counts below this are looked up and counted. Small, so that the tables of a
+ * short corpus stay small beside it; large enough that few grams are beyond.
+ */
+#define COUNT_LOGS_TABLED 512
 
 /* COUNT_LOGS_TABLED entries, that of 0 zero; the caller frees. */
 MUST_USE enum status count_logs_table(struct count_logs **table);
