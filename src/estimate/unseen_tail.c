@@ -43,20 +43,19 @@ static double direct(double first, double q)
 
 /*
  * sum over j >= 0 of f(j), f(x) = e^(-decay (x + 1)) / (r + x): Euler and
- * Maclaurin, integral + f/2 - f'/12 + f'''/720 - f^(5)/30240, where
+ * Maclaurin, integral + f/2 - f'/12 + f'''/720, where
  * (-1)^m f^(m) = D_m = decay^m f + m D_{m-1} / r.
  */
 static double by_integral(double r, double decay)
 {
-	double value = exp(-decay) / r, power = value, derivative[6] = {value};
+	double value = exp(-decay) / r, power = value, derivative[4] = {value};
 
-	for (int m = 1; m < 6; m++) {
+	for (int m = 1; m < 4; m++) {
 		power *= decay;
 		derivative[m] = power + m * derivative[m - 1] / r;
 	}
 	return exp(-decay) * scaled_exponential_integral(decay * r) +
-	       value / 2 + derivative[1] / 12 - derivative[3] / 720 +
-	       derivative[5] / 30240;
+	       value / 2 + derivative[1] / 12 - derivative[3] / 720;
 }
 
 double unseen_tail(double positions, double a)

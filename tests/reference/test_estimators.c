@@ -177,7 +177,7 @@ static void the_unseen_tail(void **state)
 	for (size_t i = 0; i < COUNT_OF(table); i++)
 		assert_near(unseen_tail(table[i].positions, table[i].a) /
 				    table[i].wanted,
-			    1, 1e-11);
+			    1, 1e-12);
 	assert_near(unseen_tail(6, 1), 0, 0);
 }
 
@@ -195,6 +195,31 @@ static void grassbergers_function(void **state)
 		assert_near((double)table[c].grassberger_q56 * 0x1p-56 * LN2,
 			    wanted[c - 1], 6e-11);
 	memory_free(table);
+}
+
+/* psi(c) = -gamma + 1 + 1/2 + … + 1/(c-1), and G(c) = -gamma - ln 2 +
+ * 2 (1 + 1/3 + … + 1/(c-1)) for even c; gamma: OEIS A001620, from memory. */
+static void series_meet_the_sums(void **state)
+{
+	struct sum psi = {-0.57721566490153286, 0};
+	struct sum grassberger = {-0.57721566490153286 - LN2, 0};
+
+	(void)state;
+	for (uint64_t c = 2; c < 3000; c += 2) {
+		struct count_logs logs;
+
+		if (c > 2)
+			sum_add(&psi, 1 / (double)(c - 2));
+		sum_add(&psi, 1 / (double)(c - 1));
+		sum_add(&grassberger, 2 / (double)(c - 1));
+		if (c < COUNT_LOGS_TABLED)
+			continue;
+		logs = count_logs_large(c);
+		assert_near((double)logs.psi_q56 * 0x1p-56 * LN2,
+			    sum_value(&psi), 1e-14);
+		assert_near((double)logs.grassberger_q56 * 0x1p-56 * LN2,
+			    sum_value(&grassberger), 1e-14);
+	}
 }
 
 /* The series for large counts continues the table: psi(c+1) = psi(c) + 1/c,
@@ -336,6 +361,7 @@ int main(void)
 		cmocka_unit_test(edges_of_the_unseen_part),
 		cmocka_unit_test(the_unseen_tail),
 		cmocka_unit_test(grassbergers_function),
+		cmocka_unit_test(series_meet_the_sums),
 		cmocka_unit_test(series_meet_the_recursions),
 		cmocka_unit_test(the_joint_table_of_cover_and_thomas),
 		cmocka_unit_test(poisson_entropies),

@@ -1,4 +1,7 @@
 /* Do the block bits of every order equal the losses symbol by symbol? */
+#include "estimate/estimator.h"
+
+#include "suffix/suffix.h"
 #include "support/grams.h"
 #include "support/near.h"
 
@@ -106,6 +109,39 @@ static void headlines_are_the_same_without_blocks(void **state)
 	free(codes);
 }
 
+/* The suffix order may know more than the orders asked for. */
+static void a_longer_suffix_order_changes_nothing(void **state)
+{
+	uint8_t codes[9000] = {0};
+	struct sequence sequence = grams_sequence(codes, sizeof(codes), 1);
+	struct cuts cuts = grams_cuts(sizeof(codes), 100);
+	struct suffix suffix;
+	struct estimate_input input = {.sequence = &sequence,
+				       .cuts = &cuts,
+				       .suffix = &suffix,
+				       .orders = 5,
+				       .threads = 1};
+	struct findings exact, longer;
+
+	(void)state;
+	grams_pseudo_text(codes, sizeof(codes), 43);
+	exact = grams_findings(&sequence, 5, &cuts);
+	assert_int_equal(suffix_init(&suffix, &sequence, 32, NULL), STATUS_OK);
+	assert_int_equal(
+		estimator_find("ngram")->measure(&input, &longer, NULL),
+		STATUS_OK);
+	assert_memory_equal(exact.orders, longer.orders,
+			    5 * sizeof(*exact.orders));
+	for (size_t i = 0; i < 5; i++)
+		assert_memory_equal(exact.series[i].costs.block_q16,
+				    longer.series[i].costs.block_q16,
+				    100 * sizeof(int64_t));
+	findings_release(&exact);
+	findings_release(&longer);
+	suffix_release(&suffix);
+	free(cuts.symbol);
+}
+
 static void relabelled_symbols_change_nothing(void **state)
 {
 	const size_t n = 20000;
@@ -164,6 +200,7 @@ int main(void)
 		cmocka_unit_test(block_bits_symbol_by_symbol),
 		cmocka_unit_test(block_bits_of_uneven_and_tiny_blocks),
 		cmocka_unit_test(headlines_are_the_same_without_blocks),
+		cmocka_unit_test(a_longer_suffix_order_changes_nothing),
 		cmocka_unit_test(relabelled_symbols_change_nothing),
 		cmocka_unit_test(conditional_entropy_never_rises),
 	};
