@@ -68,8 +68,7 @@ static void measure_row(const struct measure_rows *job, size_t i,
 	fact.outcome = outcome_of(status);
 	fact.reason = keep_words(&why);
 	job->put(job->context, job->item, rows->place[i], &fact);
-	findings_release(&fact.findings);
-	memory_free(fact.reason);
+	method_fact_release(&fact);
 }
 
 static void decline_rows(const struct measure_rows *job, enum status status,
@@ -84,7 +83,7 @@ static void decline_rows(const struct measure_rows *job, enum status status,
 		fact.outcome = outcome_of(status);
 		fact.reason = keep_words(why);
 		job->put(job->context, job->item, rows->place[i], &fact);
-		memory_free(fact.reason);
+		method_fact_release(&fact);
 	}
 }
 

@@ -5,11 +5,11 @@
 #include "ledger/survey.h"
 #include "run/survey_run.h"
 
-#define RESUME_DIGEST_BYTES 96
+#define RESUME_DIGEST_BYTES 65
 
 /*
- * "DIGEST part I/N": the same for the same set file, program, seed, orders and
- * selection; the part stands outside the digest.
+ * The same text for the same set file, program, seed, orders and selection,
+ * and for every part, so that parts can be merged.
  */
 MUST_USE enum status resume_digest(const struct plan *plan,
 				   const struct run_rules *rules,
