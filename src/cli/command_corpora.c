@@ -47,7 +47,7 @@ static enum exit_code verify_corpora(const struct set *set)
 		if (status == STATUS_OK) {
 			(void)printf("%-26s %-12s %12zu bytes  sha256 %s\n",
 				     set->corpora[i].name, state,
-				     corpus.bytes.length, corpus.sha256);
+				     corpus.length, corpus.sha256);
 			corpus_close(&corpus);
 			continue;
 		}
@@ -188,7 +188,7 @@ static enum exit_code corpora_run(const struct words *words)
 
 		if (strcmp(words->operands[0], actions[i].name) != 0)
 			continue;
-		if (set_read(words->operands[1],
+		if (set_load(words->operands[1],
 			     words_get(words, "outside") != NULL, &set,
 			     &why) != STATUS_OK)
 			return complain(words, &why);

@@ -187,7 +187,7 @@ static enum exit_code survey_run_command(const struct words *words)
 	enum status status;
 
 	if (take_options(words, &request, &why) != STATUS_OK ||
-	    set_read(words->operands[0], words_get(words, "outside") != NULL,
+	    set_load(words->operands[0], words_get(words, "outside") != NULL,
 		     &set, &why) != STATUS_OK)
 		return complain(words, &why);
 	status = survey_set(words, &set, &request, &code, &why);

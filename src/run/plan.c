@@ -97,17 +97,17 @@ static MUST_USE enum status add_levels(struct plan *plan,
 	const struct codec *codec;
 
 	TRY(find_codec(plan->set, section, &codec, why));
-	for (size_t i = 0; i < section->level_count; i++) {
-		for (size_t j = 0; j < section->layout_count; j++) {
+	for (size_t i = 0; i < section->levels.count; i++) {
+		for (size_t j = 0; j < section->layouts.count; j++) {
 			struct plan_cell *cell = &plan->cells[plan->cell_count];
 			enum status status;
 
 			*cell = (struct plan_cell){.codec = codec,
 						   .place = (*place)++};
-			status = codec->parse(section->levels[i],
+			status = codec->parse(section->levels.texts[i],
 					      &cell->setting, why);
 			if (status == STATUS_OK)
-				status = layout_parse(section->layouts[j],
+				status = layout_parse(section->layouts.texts[j],
 						      &cell->page_bytes, why);
 			if (status != STATUS_OK) {
 				reason_prefix(why, "%s: [codec %s]: ",
@@ -116,7 +116,7 @@ static MUST_USE enum status add_levels(struct plan *plan,
 			}
 			plan->cell_count +=
 				chosen(&selection->codecs, section->name) &&
-				chosen(&selection->levels, section->levels[i]);
+				chosen(&selection->levels, section->levels.texts[i]);
 		}
 	}
 	return STATUS_OK;
@@ -130,8 +130,8 @@ static MUST_USE enum status choose_cells(struct plan *plan,
 	size_t most = 1, place = 0;
 
 	for (size_t i = 0; i < set->codec_count; i++)
-		most += set->codecs[i].level_count *
-			set->codecs[i].layout_count;
+		most += set->codecs[i].levels.count *
+			set->codecs[i].layouts.count;
 	TRY(memory_new_zeroed(most, sizeof(*plan->cells), &plan->cells));
 	for (size_t i = 0; i < set->codec_count; i++)
 		TRY(add_levels(plan, &set->codecs[i], selection, &place, why));

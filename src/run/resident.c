@@ -20,7 +20,7 @@ static MUST_USE enum status open_bytes(struct resident *resident,
 
 	TRY(corpus_open(resident->declared, bytes_allowed, &resident->corpus,
 			why));
-	status = sequence_init(&resident->sequence, resident->corpus.bytes,
+	status = sequence_init(&resident->sequence, corpus_bytes(&resident->corpus),
 			       &resident->declared->rules, why);
 	if (status != STATUS_OK) {
 		corpus_close(&resident->corpus);
@@ -123,7 +123,7 @@ static MUST_USE enum status fill(const struct resident *resident,
 	TRY(copy_text(resident->declared->origin, &fact->origin));
 	if (fact->outcome != OUTCOME_DONE)
 		return STATUS_OK;
-	fact->file_bytes = resident->corpus.bytes.length;
+	fact->file_bytes = resident->corpus.length;
 	fact->canonical_bytes = sequence->canonical_bytes;
 	fact->n = sequence->n;
 	fact->distinct = sequence->distinct;
