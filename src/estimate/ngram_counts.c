@@ -54,21 +54,12 @@ static struct frequent weigh(const struct count_logs *logs, uint64_t count,
 	return sums;
 }
 
-void gram_tally_add(struct gram_tally *tally, enum count_set set,
-		    uint64_t count, unsigned above, unsigned deepest)
+void gram_tally_add_frequent(struct gram_tally *tally, enum count_set set,
+			     uint64_t count, unsigned above, unsigned deepest)
 {
-	struct count_logs logs;
-	struct frequent one;
+	struct count_logs logs = count_logs_large(count);
+	struct frequent one = weigh(&logs, count, 1);
 
-	if (count < COUNT_LOGS_TABLED) {
-		uint32_t *row = tally->rare[set] + count * tally->stride;
-
-		row[above + 1]++;
-		row[deepest + 1]--;
-		return;
-	}
-	logs = count_logs_large(count);
-	one = weigh(&logs, count, 1);
 	shift(&tally->frequent[set][above + 1], &one, 1);
 	shift(&tally->frequent[set][deepest + 1], &one, -1);
 }

@@ -34,9 +34,28 @@ MUST_USE enum status gram_tally_init(struct gram_tally *tally,
 				     unsigned orders);
 void gram_tally_release(struct gram_tally *tally);
 
-/* A gram seen count >= 1 times in a set, at every order above to deepest. */
-void gram_tally_add(struct gram_tally *tally, enum count_set set,
-		    uint64_t count, unsigned above, unsigned deepest);
+/* gram_tally_add for a count of COUNT_LOGS_TABLED or more. */
+void gram_tally_add_frequent(struct gram_tally *tally, enum count_set set,
+			     uint64_t count, unsigned above, unsigned deepest);
+
+/*
+ * A gram seen count >= 1 times in a set, at every order above to deepest. Here
+ * because it is called for every node of the walk.
+ */
+static inline void gram_tally_add(struct gram_tally *tally, enum count_set set,
+				  uint64_t count, unsigned above,
+				  unsigned deepest)
+{
+	uint32_t *row;
+
+	if (count >= COUNT_LOGS_TABLED) {
+		gram_tally_add_frequent(tally, set, count, above, deepest);
+		return;
+	}
+	row = tally->rare[set] + count * tally->stride;
+	row[above + 1]++;
+	row[deepest + 1]--;
+}
 
 /* times different grams, each seen once, at every order above. */
 void gram_tally_add_once(struct gram_tally *tally, enum count_set set,

@@ -38,20 +38,25 @@ static void leave(struct walk *walk, const struct open_interval *interval,
 		block_losses_add(walk->losses, interval->begin, end, depth);
 }
 
-/* Suffix end shares only depth symbols with the one before it. */
+/*
+ * Suffix end shares only depth symbols with the one before it. What was left
+ * last began where an interval of that depth begins, so its place is reused.
+ */
 static void leave_deeper(struct walk *walk, size_t end, unsigned depth)
 {
-	struct open_interval left;
+	struct open_interval *last = &walk->open[walk->deepest];
 
-	do {
-		unsigned above = walk->open[walk->deepest - 1].depth;
+	for (;; last--) {
+		unsigned above = last[-1].depth;
 
-		left = walk->open[walk->deepest--];
-		leave(walk, &left, end, above > depth ? above : depth);
-	} while (walk->open[walk->deepest].depth > depth);
-	if (walk->open[walk->deepest].depth < depth) {
-		left.depth = depth;
-		walk->open[++walk->deepest] = left;
+		leave(walk, last, end, above > depth ? above : depth);
+		if (above <= depth)
+			break;
+	}
+	walk->deepest = (unsigned)(last - walk->open) - 1;
+	if (last[-1].depth < depth) {
+		last->depth = depth;
+		walk->deepest++;
 	}
 }
 

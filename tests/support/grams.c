@@ -2,12 +2,10 @@
 #include "support/grams.h"
 
 #include "base/random.h"
-#include "base/sum.h"
 #include "estimate/estimator.h"
 #include "suffix/suffix.h"
 #include "support/near.h"
 
-#include <math.h>
 #include <stdlib.h>
 #include <string.h>
 
@@ -37,64 +35,55 @@ struct cuts grams_cuts(size_t n, size_t blocks)
 	return cuts;
 }
 
-struct order {
-	const struct sequence *sequence;
-	unsigned k;
+/* The circle unrolled as far as the grams reach. */
+struct unrolled {
+	uint8_t *bytes;
+	size_t width, gram_bytes;
 };
+
+static struct unrolled unroll(const struct sequence *sequence, unsigned k)
+{
+	size_t width = sequence->code_width, period = sequence->n * width;
+	struct unrolled unrolled = {malloc(period + k * width + 1), width,
+				    k * width};
+
+	for (size_t i = 0; i < period + k * width; i++)
+		unrolled.bytes[i] = sequence->codes[i % period];
+	return unrolled;
+}
 
 static int compare(const void *left, const void *right, void *context)
 {
-	const struct order *order = context;
-	const struct sequence *sequence = order->sequence;
+	const struct unrolled *unrolled = context;
 	size_t a = *(const size_t *)left, b = *(const size_t *)right;
 
-	for (unsigned i = 0; i < order->k; i++) {
-		size_t width = sequence->code_width;
-		int sign = memcmp(
-			sequence->codes + (a + i) % sequence->n * width,
-			sequence->codes + (b + i) % sequence->n * width, width);
-
-		if (sign)
-			return sign;
-	}
-	return 0;
+	return memcmp(unrolled->bytes + a * unrolled->width,
+		      unrolled->bytes + b * unrolled->width,
+		      unrolled->gram_bytes);
 }
 
 void grams_count(const struct sequence *sequence, unsigned k, size_t first,
 		 size_t last, uint64_t *count)
 {
-	struct order order = {sequence, k};
+	struct unrolled unrolled = unroll(sequence, k);
 	size_t n = sequence->n, end;
 	size_t *starts = malloc(n * sizeof(*starts));
 
 	for (size_t i = 0; i < n; i++)
 		starts[i] = i;
-	qsort_r(starts, n, sizeof(*starts), compare, &order);
+	qsort_r(starts, n, sizeof(*starts), compare, &unrolled);
 	for (size_t i = 0; i < n; i = end) {
 		uint64_t inside = 0;
 
-		for (end = i;
-		     end < n && compare(&starts[i], &starts[end], &order) == 0;
+		for (end = i; end < n &&
+			      compare(&starts[i], &starts[end], &unrolled) == 0;
 		     end++)
 			inside += starts[end] >= first && starts[end] < last;
 		for (size_t j = i; j < end; j++)
 			count[starts[j]] = inside;
 	}
 	free(starts);
-}
-
-double grams_entropy(const struct sequence *sequence, unsigned k, size_t first,
-		     size_t last)
-{
-	uint64_t *count = malloc(sequence->n * sizeof(*count));
-	double positions = (double)(last - first);
-	struct sum sum = {0};
-
-	grams_count(sequence, k, first, last, count);
-	for (size_t s = first; s < last; s++)
-		sum_add(&sum, log2(positions / (double)count[s]));
-	free(count);
-	return sum_value(&sum) / positions;
+	free(unrolled.bytes);
 }
 
 struct findings grams_findings(const struct sequence *sequence, unsigned orders,

@@ -18,10 +18,6 @@ struct cuts grams_cuts(size_t n, size_t blocks);
 void grams_count(const struct sequence *sequence, unsigned k, size_t first,
 		 size_t last, uint64_t *count);
 
-/* H_k in bits of the starts from first to last - 1. */
-double grams_entropy(const struct sequence *sequence, unsigned k, size_t first,
-		     size_t last);
-
 /* What the row ngram finds at orders 1 to K; cuts NULL: without blocks. */
 struct findings grams_findings(const struct sequence *sequence, unsigned orders,
 			       const struct cuts *cuts);
