@@ -181,3 +181,51 @@ const struct source source_chain = {
 	.rate = chain_rate,
 	.make = chain_make,
 };
+
+/*
+ * strand: A C G T in a ring; stays with 11/20, goes on by one, two or three
+ * with 5/20, 3/20, 1/20. All states are alike, so the rate is the entropy of
+ * the move.
+ */
+
+static const uint32_t strand_weights[] = {11, 5, 3, 1};
+static const struct weights strand_move = {strand_weights, 4};
+
+struct strand {
+	struct random_stream random;
+	size_t base;
+};
+
+static uint8_t next_base(void *state)
+{
+	struct strand *strand = state;
+
+	strand->base =
+		(strand->base + weights_draw(&strand_move, &strand->random)) %
+		4;
+	return (uint8_t) "ACGT"[strand->base];
+}
+
+static enum status strand_rate(double *bits_per_symbol)
+{
+	*bits_per_symbol = weights_entropy(&strand_move);
+	return STATUS_OK;
+}
+
+static enum status strand_make(uint64_t symbols, uint64_t seed,
+			       struct buffer *out, struct reason *why)
+{
+	struct strand strand = {.base = 0};
+
+	(void)why;
+	random_init(&strand.random, seed, random_name("strand"));
+	return make_bytes(symbols, out, next_base, &strand);
+}
+
+const struct source source_strand = {
+	.name = "strand",
+	.summary = "a chain over the letters A, C, G and T",
+	.symbols = SYMBOLS_DEFAULT,
+	.rate = strand_rate,
+	.make = strand_make,
+};
