@@ -137,6 +137,9 @@ static enum status parse_into(struct loader *loader)
 	int line;
 
 	TRY(path_folder(loader->path, &loader->set->folder));
+	TRY(value_text(loader->path, &loader->set->path));
+	digest_sha256(loader->text.bytes, loader->text.length,
+	              loader->set->digest);
 	/* A byte order mark is allowed and means nothing. */
 	if (loader->text.length >= 3 &&
 	    memcmp(loader->text.bytes, "\xEF\xBB\xBF", 3) == 0)
@@ -215,6 +218,7 @@ void set_release(struct set *set)
 		release_codec(&set->codecs[i]);
 	memory_free(set->corpora);
 	memory_free(set->codecs);
+	memory_free(set->path);
 	memory_free(set->folder);
 	*set = (struct set){0};
 }
