@@ -5,11 +5,17 @@
 #include <string.h>
 
 const struct source *const sources[] = {
-	&source_gauge_frames, &source_event_feed,
-	&source_duty_log,     &source_station_table,
-	&source_random,       &source_zeros,
-	&source_iid,          &source_chain,
-	&source_records,      NULL,
+	&source_gauge_frames,
+	&source_event_feed,
+	&source_duty_log,
+	&source_station_table,
+	&source_random,
+	&source_zeros,
+	&source_iid,
+	&source_chain,
+	&source_strand,
+	&source_records,
+	NULL,
 };
 
 const struct source *source_find(const char *name)
