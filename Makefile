@@ -80,8 +80,11 @@ $(B)/ratefloor: $(B)/src/cli/main.o $(B)/libratefloor.a
 $(B)/tests/%: $(B)/tests/%.o $(SUPPORT_OBJECTS) $(B)/libratefloor.a
 	$(CC) $(ALL_CFLAGS) $^ $(LDFLAGS) $(LIBS) -lcmocka -o $@
 
-# Every call to the heap goes through the fault injector of tests/support.
-$(B)/tests/faults/%: LDFLAGS += -Wl,--wrap=malloc,--wrap=calloc,--wrap=realloc,--wrap=aligned_alloc
+# Calls to the heap from our own objects go through the injector first.
+WRAP := -Wl,--wrap=malloc,--wrap=calloc,--wrap=realloc,--wrap=aligned_alloc
+$(B)/tests/faults/%: $(B)/tests/faults/%.o $(B)/tests/faults/inject.o $(SUPPORT_OBJECTS) \
+		$(B)/libratefloor.a
+	$(CC) $(ALL_CFLAGS) $^ $(LDFLAGS) $(WRAP) $(LIBS) -lcmocka -o $@
 
 -include $(shell find $(B) -name '*.d' 2>/dev/null)
 

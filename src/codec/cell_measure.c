@@ -79,13 +79,17 @@ static MUST_USE enum status count_stream(struct cell_work *work,
 {
 	const struct slice stream = {work->packed.bytes, work->packed.length};
 	uint64_t framing = 0;
+	enum status status;
 
 	work->facts->bytes += stream.length;
 	if (!work->codec->framing) {
 		work->facts->framing_known = 0;
 		return STATUS_OK;
 	}
-	if (work->codec->framing(stream, &framing) != STATUS_OK)
+	status = work->codec->framing(stream, &framing);
+	if (status == STATUS_NO_MEMORY)
+		return out_of_memory(why);
+	if (status != STATUS_OK)
 		return reason_give(why, STATUS_CODEC,
 				   "%s: its own stream cannot be read",
 				   work->codec->name);

@@ -64,7 +64,8 @@ struct codec {
 			      struct reason *why);
 	/*
 	 * Container bytes in one whole encoded stream: header, trailer, check,
-	 * index, padding. STATUS_BAD_INPUT: not such a stream. NULL: unknown.
+	 * index, padding. STATUS_BAD_INPUT: not such a stream, or NO_MEMORY.
+	 * NULL: unknown.
 	 */
 	enum status (*framing)(struct slice stream, uint64_t *bytes);
 };

@@ -22,6 +22,13 @@ MUST_USE enum status level_number(const char *text, int low, int high,
 void *counted_new(struct codec_memory *memory, size_t bytes);
 void counted_free(struct codec_memory *memory, void *block);
 
+/*
+ * Why a decoder's output could not grow: STATUS_CODEC when it is at its limit
+ * (more came out than went in), otherwise STATUS_NO_MEMORY.
+ */
+MUST_USE enum status output_full(const struct buffer *out, const char *library,
+				 struct reason *why);
+
 /* End of piece i of a job: its cut, or the whole input without cuts. */
 size_t job_piece_end(const struct codec_job *job, size_t i);
 size_t job_pieces(const struct codec_job *job);

@@ -59,3 +59,13 @@ size_t job_piece_end(const struct codec_job *job, size_t i)
 {
 	return job->cuts ? job->cuts[i] : job->input.length;
 }
+
+enum status output_full(const struct buffer *out, const char *library,
+			struct reason *why)
+{
+	if (out->length == out->limit)
+		return reason_give(why, STATUS_CODEC,
+				   "%s: more bytes come out than went in",
+				   library);
+	return reason_give(why, STATUS_NO_MEMORY, "out of memory");
+}

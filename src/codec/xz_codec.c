@@ -173,8 +173,7 @@ static MUST_USE enum status xz_decode(const struct codec_job *job,
 	stream.avail_in = job->input.length;
 	status = pump(&stream, LZMA_FINISH, out, &code);
 	if (status != STATUS_OK)
-		status = reason_give(why, STATUS_CODEC,
-				     "liblzma: more bytes than the input had");
+		status = output_full(out, "liblzma", why);
 	else if (code != LZMA_STREAM_END)
 		status = failure(code, why);
 	else if (stream.avail_in)
@@ -183,6 +182,11 @@ static MUST_USE enum status xz_decode(const struct codec_job *job,
 				     stream.avail_in);
 	lzma_end(&stream);
 	return status;
+}
+
+static enum status unreadable(lzma_ret code)
+{
+	return code == LZMA_MEM_ERROR ? STATUS_NO_MEMORY : STATUS_BAD_INPUT;
 }
 
 /*
@@ -196,6 +200,7 @@ static MUST_USE enum status payload_of(const lzma_index *index,
 {
 	lzma_index_iter at;
 	lzma_stream_flags flags;
+	lzma_ret code;
 
 	if (lzma_stream_header_decode(&flags, stream.bytes) != LZMA_OK)
 		return STATUS_BAD_INPUT;
@@ -208,9 +213,9 @@ static MUST_USE enum status payload_of(const lzma_index *index,
 		lzma_block block = {.check = flags.check, .filters = filters};
 
 		block.header_size = lzma_block_header_size_decode(bytes[0]);
-		if (lzma_block_header_decode(&block, allocator, bytes) !=
-		    LZMA_OK)
-			return STATUS_BAD_INPUT;
+		code = lzma_block_header_decode(&block, allocator, bytes);
+		if (code != LZMA_OK)
+			return unreadable(code);
 		lzma_filters_free(filters, allocator);
 		*payload += at.block.unpadded_size - block.header_size -
 			    lzma_check_size(flags.check);
@@ -226,6 +231,7 @@ static enum status xz_framing(struct slice stream, uint64_t *bytes)
 	lzma_index *index = NULL;
 	uint64_t limit = UINT64_MAX, payload;
 	size_t position = 0, end = stream.length;
+	lzma_ret code;
 	enum status status;
 
 	if (end < 2 * LZMA_STREAM_HEADER_SIZE ||
@@ -236,9 +242,10 @@ static enum status xz_framing(struct slice stream, uint64_t *bytes)
 		return STATUS_BAD_INPUT;
 	end -= LZMA_STREAM_HEADER_SIZE;
 	position = end - footer.backward_size;
-	if (lzma_index_buffer_decode(&index, &limit, &allocator, stream.bytes,
-				     &position, end) != LZMA_OK)
-		return STATUS_BAD_INPUT;
+	code = lzma_index_buffer_decode(&index, &limit, &allocator,
+					stream.bytes, &position, end);
+	if (code != LZMA_OK)
+		return unreadable(code);
 	status = lzma_index_file_size(index) == stream.length
 			 ? payload_of(index, stream, &allocator, &payload)
 			 : STATUS_BAD_INPUT;

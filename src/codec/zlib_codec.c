@@ -109,8 +109,8 @@ static MUST_USE enum status encode_pieces(z_stream *stream,
 					    end - start};
 
 		TRY(encode_piece(stream, piece,
-				 i + 1 == pieces ? Z_FINISH : Z_PARTIAL_FLUSH, out,
-				 why));
+				 i + 1 == pieces ? Z_FINISH : Z_PARTIAL_FLUSH,
+				 out, why));
 		if (job->piece_bytes)
 			job->piece_bytes[i] = out->length - before;
 		start = end;
@@ -153,9 +153,7 @@ static MUST_USE enum status decode_all(z_stream *stream, struct slice input,
 		stream->avail_in = (uInt)step;
 		status = pump(stream, out, inflate, Z_NO_FLUSH, &code);
 		if (status != STATUS_OK)
-			return reason_give(
-				why, STATUS_CODEC,
-				"zlib: more bytes than the input had");
+			return output_full(out, "zlib", why);
 		done += step - stream->avail_in;
 		if (code == Z_BUF_ERROR)
 			code = Z_OK;
