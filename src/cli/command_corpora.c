@@ -46,8 +46,8 @@ static enum exit_code verify_corpora(const struct set *set)
 
 		if (status == STATUS_OK) {
 			(void)printf("%-26s %-12s %12zu bytes  sha256 %s\n",
-				     set->corpora[i].name, state,
-				     corpus.length, corpus.sha256);
+				     set->corpora[i].name, state, corpus.length,
+				     corpus.sha256);
 			corpus_close(&corpus);
 			continue;
 		}

@@ -4,16 +4,18 @@
 
 #include <stdio.h>
 
+static void show_rate(FILE *out, const struct source *source)
+{
+	(void)fprintf(out, "%-14s %s %.9f bits per %s", source->name,
+		      source->rate_exact ? "exactly" : "at most",
+		      source->bits_per_symbol(), source->symbols);
+}
+
 static enum exit_code list_sources(void)
 {
 	for (size_t i = 0; sources[i]; i++) {
-		double rate = 0;
-
-		if (sources[i]->rate(&rate) != STATUS_OK)
-			continue;
-		(void)printf("%-14s %.6f bits per %s  %s\n", sources[i]->name,
-			     rate, symbol_kind_name(sources[i]->kind),
-			     sources[i]->summary);
+		show_rate(stdout, sources[i]);
+		(void)printf("  %s\n", sources[i]->summary);
 	}
 	return EXIT_DONE;
 }
@@ -39,9 +41,8 @@ static enum exit_code synth_run(const struct words *words)
 	    made_write(words->operands[0], symbols, seed, path, &rate, &why) !=
 		    STATUS_OK)
 		return complain(words, &why);
-	(void)fprintf(stderr, "%s: entropy rate %.9f bits per %s\n",
-		      words->operands[0], rate,
-		      symbol_kind_name(source_find(words->operands[0])->kind));
+	show_rate(stderr, source_find(words->operands[0]));
+	(void)fprintf(stderr, "\n");
 	return EXIT_DONE;
 }
 

@@ -1,6 +1,5 @@
 #include "cli/made.h"
 
-#include "base/memory.h"
 #include "cli/output.h"
 #include "source/source.h"
 
@@ -19,38 +18,36 @@ static MUST_USE enum status no_such_source(const char *name, struct reason *why)
 			   "there is no source '%s'; there are:%s", name, all);
 }
 
-static MUST_USE enum status write_all(const struct buffer *bytes,
-				      const char *path, struct reason *why)
+/* A sink that writes to a file; what goes wrong is seen on closing. */
+static enum status take(void *state, const uint8_t *bytes, size_t length)
 {
-	struct output output;
+	struct output *output = state;
 
-	TRY(output_open(&output, path, why));
-	(void)fwrite(bytes->bytes, 1, bytes->length, output.file);
-	return output_keep(&output, why);
+	if (fwrite(bytes, 1, length, output->file) != length)
+		return STATUS_IO;
+	return STATUS_OK;
 }
 
 enum status made_write(const char *name, uint64_t symbols, uint64_t seed,
 		       const char *path, double *rate, struct reason *why)
 {
 	const struct source *source = source_find(name);
-	struct buffer bytes;
-	enum status status;
+	struct output output;
+	struct source_sink sink = {take, &output};
+	enum status status, kept;
 
 	if (!source)
 		return no_such_source(name, why);
-	if (!symbols)
-		symbols = source->symbols;
-	TRY(source->rate(rate));
-	buffer_init(&bytes, SIZE_MAX / 2);
-	status = source->make(symbols, seed, &bytes, why);
-	if (status == STATUS_NO_MEMORY)
-		(void)reason_give(why, status,
-				  "out of memory: %" PRIu64 " symbols of %s",
-				  symbols, name);
-	if (status == STATUS_OK)
-		status = write_all(&bytes, path, why);
-	buffer_release(&bytes);
-	return status;
+	TRY(output_open(&output, path, why));
+	status = source_write(source,
+			      symbols ? symbols : source->default_symbols, seed,
+			      &sink);
+	/* Closing says why a write failed, and leaves no part behind. */
+	kept = output_keep(&output, why);
+	if (status != STATUS_OK || kept != STATUS_OK)
+		return STATUS_IO;
+	*rate = source->bits_per_symbol();
+	return STATUS_OK;
 }
 
 enum status made_origin(const char *origin, char name[64], uint64_t *symbols,

@@ -9,7 +9,7 @@
 
 /*
  * Writes symbols of a source to path (NULL: standard output); *rate is its
- * exact entropy rate in bits per symbol. symbols 0: the source's own default.
+ * entropy rate in bits per symbol. symbols 0: the source's own default.
  * STATUS_NOT_FOUND: no such source, and why lists them; STATUS_IO.
  */
 MUST_USE enum status made_write(const char *source, uint64_t symbols,

@@ -4,7 +4,6 @@
 #include "codec/codec.h"
 #include "corpus/corpus.h"
 #include "estimate/estimator.h"
-#include "source/source.h"
 #include "suffix/suffix.h"
 
 #include "support/bytes.h"
@@ -167,29 +166,6 @@ static void every_codec(void **state)
 	close_fixture(&fixture);
 }
 
-static enum status make_source(void *context)
-{
-	const struct source *const *source = context;
-	struct buffer out;
-	struct reason why;
-	enum status status;
-
-	buffer_init(&out, 1 << 20);
-	status = (*source)->make(3000, 1, &out, &why);
-	buffer_release(&out);
-	return status;
-}
-
-static void every_source(void **state)
-{
-	(void)state;
-	for (size_t i = 0; sources[i]; i++) {
-		const struct source *source = sources[i];
-
-		inject_each(make_source, &source, MOST);
-	}
-}
-
 static enum status read_set(void *context)
 {
 	static const char text[] =
@@ -221,7 +197,6 @@ int main(void)
 		cmocka_unit_test(the_suffix_order),
 		cmocka_unit_test(every_estimator),
 		cmocka_unit_test(every_codec),
-		cmocka_unit_test(every_source),
 		cmocka_unit_test(a_set_file),
 	};
 
