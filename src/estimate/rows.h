@@ -5,5 +5,7 @@
 #include "estimate/estimator.h"
 
 extern const struct estimator estimator_uniform;
+extern const struct estimator estimator_mix;
+extern const struct estimator estimator_mix_deep;
 
 #endif

@@ -6,6 +6,8 @@
 
 const struct estimator *const estimators[] = {
 	&estimator_uniform,
+	&estimator_mix,
+	&estimator_mix_deep,
 	NULL,
 };
 
