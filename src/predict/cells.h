@@ -11,17 +11,17 @@
  * moves by 1 / (count + 3/2) of the error, the count ending at a limit below
  * RATE_ROOM.
  */
-static inline uint32_t cell_half(void)
+ALWAYS_INLINE uint32_t cell_half(void)
 {
 	return UINT32_C(1) << 31;
 }
 
-static inline unsigned cell_p16(uint32_t cell)
+ALWAYS_INLINE unsigned cell_p16(uint32_t cell)
 {
 	return cell >> 16;
 }
 
-static inline uint32_t cell_update(const struct predict_tables *tables,
+ALWAYS_INLINE uint32_t cell_update(const struct predict_tables *tables,
 				   uint32_t cell, unsigned bit, unsigned limit)
 {
 	unsigned count = cell & 1023;
@@ -36,7 +36,7 @@ static inline uint32_t cell_update(const struct predict_tables *tables,
  * What a bit history is followed by: a probability of a one out of
  * 2^TREND_BITS that moves by a fixed share of the error.
  */
-static inline int32_t trend_target(unsigned bit)
+ALWAYS_INLINE int32_t trend_target(unsigned bit)
 {
 	return (int32_t)(bit << TREND_BITS) - (int32_t)bit;
 }
@@ -52,7 +52,7 @@ static inline int32_t trend_target(unsigned bit)
 #define SLOT_CELLS 15
 
 /* Tag of the second nibble's slot; differs from the first one's. */
-static inline uint8_t slot_second_tag(uint8_t tag, unsigned nibble)
+ALWAYS_INLINE uint8_t slot_second_tag(uint8_t tag, unsigned nibble)
 {
 	uint8_t second = (uint8_t)(tag * 5U + (16 + nibble) * 0x3bU);
 
@@ -63,7 +63,7 @@ static inline uint8_t slot_second_tag(uint8_t tag, unsigned nibble)
  * The slot with this tag, made empty in the place of the least used one where
  * the line has none. Node n of 1..15 is at the returned address plus n.
  */
-static inline uint8_t *slot_find(uint8_t *line, uint8_t tag)
+ALWAYS_INLINE uint8_t *slot_find(uint8_t *line, uint8_t tag)
 {
 	uint32_t tags, differ, zero, least, other;
 	uint8_t *cells = line + LINE_SLOTS;
@@ -73,8 +73,7 @@ static inline uint8_t *slot_find(uint8_t *line, uint8_t tag)
 	tags = line[0] | (uint32_t)line[1] << 8 | (uint32_t)line[2] << 16 |
 	       (uint32_t)line[3] << 24;
 	differ = tags ^ tag * UINT32_C(0x01010101);
-	zero = (differ - UINT32_C(0x01010101)) & ~differ &
-	       UINT32_C(0x80808080);
+	zero = (differ - UINT32_C(0x01010101)) & ~differ & UINT32_C(0x80808080);
 	if (zero) {
 		slot = (unsigned)__builtin_ctz(zero) >> 3;
 		return cells - 1 + SLOT_CELLS * slot;

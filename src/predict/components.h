@@ -6,38 +6,35 @@
 
 /* A trend moves by 1/128 of its error; larger and smaller cost .1%. */
 #define TREND_SHIFT 7
+/* An empty history's trend begins every byte here: it says next to nothing. */
+#define TREND_HALF (1U << (TREND_BITS - 1))
 #define MATCH_LIMIT 1020
 #define LANE_LIMIT 1020
 
 /*
- * The two inputs of a bit history: what follows it, in the logistic domain and
- * as it is. An empty history's trend stays at a half, so that it says nothing.
+ * The two inputs of a bit history: the probability of what follows it in the
+ * logistic domain, and as it is.
  */
-static inline void history_inputs(const struct predict_tables *tables,
-				  const int32_t *trends, unsigned history,
-				  int16_t *inputs)
+ALWAYS_INLINE int16_t trend_logit(const struct predict_tables *tables,
+				  uint32_t trend)
 {
-	int32_t trend = trends[history];
-
-	inputs[0] = tables->stretch[trend >> (TREND_BITS - 12)];
-	inputs[1] = (int16_t)((trend - (1 << (TREND_BITS - 1))) >>
-			      (TREND_BITS - 11));
+	return tables->stretch[trend >> (TREND_BITS - 12)];
 }
 
-static inline void history_update(const struct predict_tables *tables,
-				  int32_t *trends, uint8_t *history,
-				  unsigned bit)
+ALWAYS_INLINE int16_t trend_share(uint32_t trend)
 {
-	unsigned old = *history;
-	int32_t known = -(int32_t)(old != 0), trend = trends[old];
+	return (int16_t)((int32_t)(trend >> (TREND_BITS - 11)) - 1024);
+}
 
-	trends[old] = trend + (((trend_target(bit) - trend) >> TREND_SHIFT) &
-			       known);
-	*history = tables->next[old][bit];
+ALWAYS_INLINE uint32_t trend_moved(uint32_t trend, unsigned bit)
+{
+	int32_t error = trend_target(bit) - (int32_t)trend;
+
+	return trend + (uint32_t)(error >> TREND_SHIFT);
 }
 
 /* The slot of a context at the beginning of a byte, and in its middle. */
-static inline void place_begin(struct place *place, uint8_t *lines,
+ALWAYS_INLINE void place_begin(struct place *place, uint8_t *lines,
 			       unsigned lines_log2, uint32_t hash)
 {
 	place->line = lines + (size_t)(hash >> (32 - lines_log2)) * LINE_BYTES;
@@ -45,14 +42,14 @@ static inline void place_begin(struct place *place, uint8_t *lines,
 	place->slot = slot_find(place->line, place->tag);
 }
 
-static inline void place_middle(struct place *place, unsigned nibble)
+ALWAYS_INLINE void place_middle(struct place *place, unsigned nibble)
 {
-	place->slot = slot_find(place->line,
-				slot_second_tag(place->tag, nibble));
+	place->slot =
+		slot_find(place->line, slot_second_tag(place->tag, nibble));
 }
 
 /* A 16-bit probability that moves by a fixed share. */
-static inline void direct_update(uint16_t *p, unsigned bit, unsigned shift)
+ALWAYS_INLINE void direct_update(uint16_t *p, unsigned bit, unsigned shift)
 {
 	int32_t target = bit ? 65535 : 0;
 
@@ -60,7 +57,7 @@ static inline void direct_update(uint16_t *p, unsigned bit, unsigned shift)
 }
 
 /* The match's inputs: its bit, by how often such a match was right. */
-static inline void match_inputs(const struct predict_tables *tables,
+ALWAYS_INLINE void match_inputs(const struct predict_tables *tables,
 				uint32_t cell, unsigned step, unsigned expected,
 				int16_t *inputs)
 {
@@ -73,7 +70,7 @@ static inline void match_inputs(const struct predict_tables *tables,
 }
 
 /* The step of match i while the bits so far are its byte's, else 0. */
-static inline unsigned match_holds(const struct view *view, unsigned i,
+ALWAYS_INLINE unsigned match_holds(const struct view *view, unsigned i,
 				   unsigned partial, unsigned bit,
 				   bool lane_failed)
 {

@@ -7,12 +7,12 @@
 /* Fills hash and select for the family of the plan. */
 void contexts_look(const struct past *past, struct view *view);
 
-void contexts_prose(const struct past *past, struct view *view);
-void contexts_lines(const struct past *past, struct view *view);
-void contexts_binary(const struct past *past, struct view *view);
-void contexts_records(const struct past *past, struct view *view);
-void contexts_image(const struct past *past, struct view *view);
-void contexts_sound(const struct past *past, struct view *view);
+/* Each fills hash from 0 on and returns how many. */
+unsigned contexts_prose(const struct past *past, struct view *view);
+unsigned contexts_lines(const struct past *past, struct view *view);
+unsigned contexts_binary(const struct past *past, struct view *view);
+unsigned contexts_records(const struct past *past, struct view *view);
+unsigned contexts_image(const struct past *past, struct view *view);
 
 /* Spreads a context's value; contexts with different ids do not meet. */
 static inline uint32_t context_hash(unsigned id, uint64_t value)

@@ -6,7 +6,7 @@ static void add(struct view *view, unsigned *n, uint64_t value)
 	(*n)++;
 }
 
-void contexts_binary(const struct past *past, struct view *view)
+unsigned contexts_binary(const struct past *past, struct view *view)
 {
 	uint64_t last = past->last8;
 	unsigned n = 0, phase = (unsigned)past->at & 3;
@@ -23,6 +23,7 @@ void contexts_binary(const struct past *past, struct view *view)
 	add(view, &n, (last & UINT64_C(0xf8f8f8f8ff)) << 8 | phase);
 	add(view, &n, past->word);
 	view->select[2] = (uint16_t)(last & 255);
+	return n;
 }
 
 /* The byte that stands n records before the next one. */
@@ -31,10 +32,10 @@ static unsigned above(const struct past *past, unsigned n)
 	return byte_before(past, (size_t)n * past->plan.stride);
 }
 
-void contexts_records(const struct past *past, struct view *view)
+unsigned contexts_records(const struct past *past, struct view *view)
 {
 	unsigned stride = past->plan.stride;
-	uint64_t phase = (past->at + stride - past->plan.phase) % stride;
+	uint64_t phase = past->at % stride;
 	uint64_t last = past->last8, last1 = last & 255;
 	uint64_t up = above(past, 1), up2 = above(past, 2);
 	uint64_t up_left = byte_before(past, (size_t)stride + 1);
@@ -53,9 +54,10 @@ void contexts_records(const struct past *past, struct view *view)
 	add(view, &n, phase << 8 | last1);
 	add(view, &n, phase << 16 | (last & 0xffff));
 	view->select[2] = (uint16_t)(phase & 255);
+	return n;
 }
 
-void contexts_image(const struct past *past, struct view *view)
+unsigned contexts_image(const struct past *past, struct view *view)
 {
 	int w = (int)byte_before(past, 1), n = (int)above(past, 1);
 	int nw = (int)byte_before(past, (size_t)past->plan.stride + 1);
@@ -80,39 +82,37 @@ void contexts_image(const struct past *past, struct view *view)
 	add(view, &k,
 	    (uint64_t)((w >> 3) << 20 | (n >> 3) << 15 | (nw >> 3) << 10 |
 		       (ww >> 3) << 5 | nn >> 3));
-	add(view, &k, (uint64_t)((w + n + nw + ne) >> 2) << 8 |
-			      (uint64_t)(w - nw + n - ne) >> 2);
+	add(view, &k,
+	    (uint64_t)((w + n + nw + ne) >> 2) << 8 |
+		    (uint64_t)(w - nw + n - ne) >> 2);
 	add(view, &k, (uint64_t)(2 * w - ww + 512));
 	add(view, &k, (uint64_t)(2 * n - nn + 512) << 8 | (uint64_t)w >> 2);
 	view->select[2] = (uint16_t)((slope >> 3) << 3 | (w > n) << 2 |
 				     (n > nw) << 1 | (w > nw));
-}
-
-void contexts_sound(const struct past *past, struct view *view)
-{
-	contexts_records(past, view);
+	return k;
 }
 
 void contexts_look(const struct past *past, struct view *view)
 {
+	unsigned n, all = past_contexts(&past->plan);
+
 	switch (past->plan.family) {
 	case FAMILY_PROSE:
-		contexts_prose(past, view);
+		n = contexts_prose(past, view);
 		break;
 	case FAMILY_LINES:
-		contexts_lines(past, view);
+		n = contexts_lines(past, view);
 		break;
 	case FAMILY_RECORDS:
-		contexts_records(past, view);
+		n = contexts_records(past, view);
 		break;
 	case FAMILY_IMAGE:
-		contexts_image(past, view);
-		break;
-	case FAMILY_SOUND:
-		contexts_sound(past, view);
+		n = contexts_image(past, view);
 		break;
 	default:
-		contexts_binary(past, view);
+		n = contexts_binary(past, view);
 		break;
 	}
+	while (n < all)
+		view->hash[n++] = 0;
 }

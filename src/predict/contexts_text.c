@@ -23,7 +23,7 @@ static unsigned look_orders(const struct past *past, struct view *view)
 	return n;
 }
 
-void contexts_prose(const struct past *past, struct view *view)
+unsigned contexts_prose(const struct past *past, struct view *view)
 {
 	unsigned n = look_orders(past, view);
 	unsigned c1 = past->last8 & 255;
@@ -33,13 +33,13 @@ void contexts_prose(const struct past *past, struct view *view)
 	add(view, &n, pair(pair(past->word, past->word1), past->word2) + c1);
 	add(view, &n, pair(past->word, past->word2) + c1);
 	add(view, &n, last_bytes(past, 4) >> 8);
-	if (past->plan.strength == STRENGTH_DEEP)
-		add(view, &n, last_bytes(past, 4) & 0xff00ffff);
 	view->select[2] = (uint16_t)c1;
 	if (past->plan.strength == STRENGTH_NIGHTLY)
-		return;
+		return n;
+	add(view, &n, last_bytes(past, 4) & 0xff00ffff);
 	add(view, &n, last_bytes(past, 7));
 	add(view, &n, pair(past->last8, past->before8 & 0xffffffff));
+	return n;
 }
 
 /* The byte of the same field in the line before, if it is that long. */
@@ -64,11 +64,11 @@ static unsigned column_above(const struct past *past)
 	return from < past->line ? past->bytes[from] : 256;
 }
 
-void contexts_lines(const struct past *past, struct view *view)
+unsigned contexts_lines(const struct past *past, struct view *view)
 {
 	unsigned n = look_orders(past, view);
 	unsigned c1 = past->last8 & 255;
-	unsigned field = past->fields[0], above = field_above(past);
+	unsigned field = past->fields[0], above = field_above(past), kind;
 	uint64_t in_field = pair(past->field_hash, field);
 
 	add(view, &n, pair(past->word, c1));
@@ -77,9 +77,11 @@ void contexts_lines(const struct past *past, struct view *view)
 	add(view, &n, in_field);
 	add(view, &n, pair(in_field, past->field_hash1));
 	add(view, &n, pair(field * 512 + above, c1));
-	view->select[2] = (uint16_t)(field * 8 + (c1 >= '0' && c1 <= '9') +
-				     2 * (above == c1)) & 255;
+	kind = c1 >= '0' && c1 <= '9' ? 1 : 0;
+	kind += above == c1 ? 2 : 0;
+	view->select[2] = (uint16_t)((field * 8 + kind) % SET_ROWS);
 	if (past->plan.strength == STRENGTH_NIGHTLY)
-		return;
+		return n;
 	add(view, &n, pair(past->first, past->line_hash));
+	return n;
 }

@@ -23,16 +23,15 @@ static const uint8_t larger_max[] = {60, 30, 16, 10, 8, 6};
 /* What is left of a count when the opposite bit comes. */
 static uint8_t discounted(uint8_t count)
 {
-	static const uint8_t kept[] = {0, 1, 2, 2, 3, 3, 3, 4, 4, 4,
-				       4, 4, 4, 5, 5, 5, 5, 5};
+	static const uint8_t kept[] = {0, 1, 2, 2, 3, 3, 3, 4, 4,
+				       4, 4, 4, 4, 5, 5, 5, 5, 5};
 
 	return count < sizeof(kept) ? kept[count] : 6;
 }
 
 static bool same(const struct history *a, const struct history *b)
 {
-	return a->zeros == b->zeros && a->ones == b->ones &&
-	       a->tail == b->tail;
+	return a->zeros == b->zeros && a->ones == b->ones && a->tail == b->tail;
 }
 
 /* Number of a history in the list, which holds count; count if absent. */
@@ -71,7 +70,7 @@ static struct history after(struct history h, unsigned bit)
 }
 
 /* Initial probability of a one, with half a count more for the last bit. */
-static int32_t first_guess(const struct history *h)
+static uint32_t first_guess(const struct history *h)
 {
 	unsigned total = h->zeros + (unsigned)h->ones;
 	uint64_t ones = 10U * h->ones + 4, all = 10U * total + 8;
@@ -80,7 +79,7 @@ static int32_t first_guess(const struct history *h)
 		ones += (h->tail & 1) ? 5 : 0;
 		all += 5;
 	}
-	return (int32_t)((ones << TREND_BITS) / all);
+	return (uint32_t)((ones << TREND_BITS) / all);
 }
 
 void history_build(struct predict_tables *tables)
@@ -96,8 +95,7 @@ void history_build(struct predict_tables *tables)
 
 			if (at == count && count <= HISTORIES)
 				list[count++] = h;
-			tables->next[i][bit] =
-				(uint8_t)(at < count ? at : i);
+			tables->next[i][bit] = (uint8_t)(at < count ? at : i);
 		}
 		tables->start[i] = first_guess(&list[i]);
 	}

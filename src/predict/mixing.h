@@ -7,7 +7,15 @@
 
 #include "predict/components.h"
 
-static inline int32_t logit_clip(int32_t x)
+/*
+ * Steps of the weights, in 2^-10 of error times input: four times as large at
+ * first, as far as the decisions seen are few.
+ */
+#define RATE_LAST 40
+#define RATE_MORE 120
+#define LEARNING_END (1U << 20)
+
+ALWAYS_INLINE int32_t logit_clip(int32_t x)
 {
 	if (x > LOGIT_MAX)
 		return LOGIT_MAX;
@@ -15,12 +23,12 @@ static inline int32_t logit_clip(int32_t x)
 }
 
 /* Error of a 16-bit probability, in -65535..65535. */
-static inline int32_t error_of(unsigned p, unsigned bit)
+ALWAYS_INLINE int32_t error_of(unsigned p, unsigned bit)
 {
 	return (int32_t)(bit << 16) - (int32_t)p;
 }
 
-static inline void stage_predict(struct mixer *mixer, struct mixing *mixing,
+ALWAYS_INLINE void stage_predict(struct mixer *mixer, struct mixing *mixing,
 				 unsigned i, unsigned row, unsigned *p)
 {
 	unsigned at = (unsigned)(mixing->x + STAGE_STEP * (STAGE_ROOM / 2));
@@ -34,8 +42,7 @@ static inline void stage_predict(struct mixer *mixer, struct mixing *mixing,
 	*p = (unsigned)(sum / STAGE_STEP >> 16);
 }
 
-static inline void stage_update(struct mixing *mixing, unsigned i,
-				unsigned bit)
+ALWAYS_INLINE void stage_update(struct mixing *mixing, unsigned i, unsigned bit)
 {
 	uint32_t *entry = mixing->stage[i] + mixing->nearer[i];
 
@@ -45,69 +52,67 @@ static inline void stage_update(struct mixing *mixing, unsigned i,
 		*entry -= *entry >> 6;
 }
 
-static inline void select_weights(struct mixer *mixer,
-				  const struct selection *at,
-				  struct mixing *mixing)
+/* Set i with the weights of a row of it. */
+ALWAYS_INLINE int64_t set_predict(struct mixer *mixer, struct mixing *mixing,
+				  unsigned i, size_t row, unsigned inputs)
 {
-	size_t inputs = mixer->inputs;
-	size_t row1 = SET_ROWS + at->step * 8 + at->bit;
-	size_t row2 = 2 * SET_ROWS + at->view->select[2];
+	int16_t *weights =
+		mixer->weights + (i * (size_t)SET_ROWS + row) * inputs;
+	int32_t dot = lanes_dot(mixing->inputs, weights, inputs) >> 14;
 
-	mixing->weights[0] = mixer->weights + at->partial * inputs;
-	mixing->weights[1] = mixer->weights + row1 * inputs;
-	mixing->weights[2] = mixer->weights + row2 * inputs;
-	mixing->final = mixer->final[at->step * 8 + at->bit];
+	dot = logit_clip(dot);
+	mixing->weights[i] = weights;
+	mixing->dot[i] = dot;
+	mixing->p[i] = mixer->tables.squash[dot + LOGIT_MAX];
+	return (int64_t)dot * mixing->final[i];
 }
 
-static inline unsigned mix_predict(struct mixer *mixer,
+ALWAYS_INLINE void set_update(struct mixer *mixer, struct mixing *mixing,
+			      unsigned i, unsigned bit, unsigned inputs)
+{
+	int32_t step = (error_of(mixing->p[i], bit) * mixer->rate) >> 10;
+	int32_t error = error_of(mixing->p_final, bit) >> 3;
+
+	mixing->final[i] += (mixing->dot[i] * error) >> 13;
+	lanes_train(mixing->inputs, mixing->weights[i], inputs, (int16_t)step);
+}
+
+ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
 				   const struct selection *at,
 				   struct mixing *mixing, unsigned inputs)
 {
-	const struct predict_tables *tables = &mixer->tables;
+	unsigned match = at->step * 8 + at->bit;
 	unsigned row = (at->view->last * 3U + at->partial * 5U) % STAGE_ROWS;
-	int64_t sum = 0;
+	int64_t sum;
 	unsigned p0, p1, p;
 
-	select_weights(mixer, at, mixing);
-	for (unsigned i = 0; i < SETS; i++) {
-		mixing->dot[i] = logit_clip(
-			lanes_dot(mixing->inputs, mixing->weights[i], inputs) >>
-			14);
-		mixing->p[i] = tables->squash[mixing->dot[i] + LOGIT_MAX];
-		sum += (int64_t)mixing->dot[i] * mixing->final[i];
-	}
+	mixing->final = mixer->final[match];
+	sum = set_predict(mixer, mixing, 0, at->partial, inputs);
+	sum += set_predict(mixer, mixing, 1, match, inputs);
+	sum += set_predict(mixer, mixing, 2, at->view->select[2], inputs);
 	mixing->x = logit_clip((int32_t)(sum >> 16));
-	mixing->p_final = tables->squash[mixing->x + LOGIT_MAX];
+	mixing->p_final = mixer->tables.squash[mixing->x + LOGIT_MAX];
 	stage_predict(mixer, mixing, 0, at->partial, &p0);
 	stage_predict(mixer, mixing, 1, row, &p1);
 	p = (2 * mixing->p_final + p0 + p1 + 2) >> 2;
-	p = p < 1 ? 1 : p > 65535 ? 65535 : p;
-	mixing->p_out = p;
-	return p;
+	return p < 1 ? 1 : p > 65535 ? 65535 : p;
 }
 
-static inline void mix_update(struct mixer *mixer, struct mixing *mixing,
+ALWAYS_INLINE void mix_update(struct mixer *mixer, struct mixing *mixing,
 			      unsigned bit, unsigned inputs)
 {
-	/* Large steps at first: 4 times, falling to 1. */
-	int32_t rate = 40 + (int32_t)(120 * 2048 / (2048 + mixer->seen));
-	int32_t error = error_of(mixing->p_final, bit);
-
-	if (mixer->seen < 1 << 20)
-		mixer->seen++;
-	for (unsigned i = 0; i < SETS; i++) {
-		int32_t step = (error_of(mixing->p[i], bit) * rate) >> 10;
-
-		mixing->final[i] += (mixing->dot[i] * (error >> 3)) >> 13;
-		lanes_train(mixing->inputs, mixing->weights[i], inputs,
-			    (int16_t)step);
-	}
+	set_update(mixer, mixing, 0, bit, inputs);
+	set_update(mixer, mixing, 1, bit, inputs);
+	set_update(mixer, mixing, 2, bit, inputs);
 	stage_update(mixing, 0, bit);
 	stage_update(mixing, 1, bit);
+	if (mixer->seen < LEARNING_END && mixer->seen++ % 64 == 0)
+		mixer->rate = RATE_LAST + (int32_t)(RATE_MORE * 2048 /
+						    (2048 + mixer->seen));
 }
 
 /* All eight bits of a byte, given the inputs of each. */
-static inline void mix_byte(struct mixer *mixer, const struct view *view,
+ALWAYS_INLINE void mix_byte(struct mixer *mixer, const struct view *view,
 			    unsigned byte, bool lane_failed,
 			    const int16_t *inputs, struct tally *tally,
 			    unsigned width)
@@ -118,8 +123,7 @@ static inline void mix_byte(struct mixer *mixer, const struct view *view,
 	for (at.bit = 0; at.bit < 8; at.bit++) {
 		unsigned bit = byte >> (7 - at.bit) & 1, p;
 
-		at.step = match_holds(view, 0, at.partial, at.bit,
-				      lane_failed);
+		at.step = match_holds(view, 0, at.partial, at.bit, lane_failed);
 		mixing.inputs = inputs + (size_t)at.bit * width;
 		p = mix_predict(mixer, &at, &mixing, width);
 		tally_add(tally, bit ? p : 65536 - p);

@@ -1,7 +1,7 @@
 #include "predict/parts.h"
 
 /* Sums wrap; every order of addition gives the same. */
-static inline int32_t lanes_dot(const int16_t *a, const int16_t *b,
+ALWAYS_INLINE int32_t lanes_dot(const int16_t *a, const int16_t *b,
 				unsigned count)
 {
 	uint32_t sum = 0;
@@ -11,12 +11,11 @@ static inline int32_t lanes_dot(const int16_t *a, const int16_t *b,
 	return (int32_t)sum;
 }
 
-static inline void lanes_train(const int16_t *inputs, int16_t *weights,
+ALWAYS_INLINE void lanes_train(const int16_t *inputs, int16_t *weights,
 			       unsigned count, int16_t step)
 {
 	for (unsigned i = 0; i < count; i++) {
-		int32_t w = weights[i] +
-			    ((inputs[i] * step + (1 << 14)) >> 15);
+		int32_t w = weights[i] + ((inputs[i] * step + (1 << 14)) >> 15);
 
 		w = w > INT16_MAX ? INT16_MAX : w < INT16_MIN ? INT16_MIN : w;
 		weights[i] = (int16_t)w;

@@ -12,9 +12,7 @@
 #define INPUTS_MAX INPUTS_DEEP
 #define COMMON 6 /* order 0, order 1, match (2), second match, constant */
 
-/* Weight sets: by partial byte, by match and bit, by the family. */
 #define SETS 3
-#define SET_ROWS 256
 
 /* Final stages: interpolated tables over the logistic domain. */
 #define STAGE_STEP 128
@@ -22,7 +20,7 @@
 #define STAGE_ROWS 1024
 
 /* Bytes between which the passes of predictor_measure_q32 alternate. */
-#define CHUNK 64
+#define CHUNK 16
 
 /* One decision's way through the mixer, from prediction to update. */
 struct mixing {
@@ -31,7 +29,7 @@ struct mixing {
 	int32_t *final;
 	int32_t dot[SETS];
 	int32_t x; /* of the final mixer */
-	unsigned p[SETS], p_final, p_out;
+	unsigned p[SETS], p_final;
 	uint32_t *stage[2]; /* lower of the two entries used */
 	unsigned nearer[2]; /* which of them is nearer */
 };
@@ -39,8 +37,8 @@ struct mixing {
 /* What selects weights and stages for a decision. */
 struct selection {
 	unsigned partial;  /* bits of the byte so far after a leading 1 */
-	unsigned bit;	   /* 0..7 */
-	unsigned step;	   /* of the first match while it holds, else 0 */
+	unsigned bit;      /* 0..7 */
+	unsigned step;     /* of the first match while it holds, else 0 */
 	unsigned expected; /* its bit */
 	const struct view *view;
 };
@@ -53,6 +51,7 @@ struct mixer {
 	int32_t final[SET_ROWS][SETS];
 	uint32_t stage[2][STAGE_ROWS * STAGE_ROOM];
 	uint32_t seen; /* decisions, up to the end of fast learning */
+	int32_t rate;  /* of learning, by seen */
 };
 
 /* Decisions whose product of probabilities has yet to be turned into bits. */
@@ -92,7 +91,7 @@ struct predictor {
 	unsigned contexts;
 	uint8_t *lines; /* owned; contexts x lines_each lines */
 	unsigned lines_log2;
-	int32_t trend[CONTEXTS_MAX][256]; /* by bit history */
+	uint32_t trend[CONTEXTS_MAX][256]; /* by bit history */
 	uint16_t order0[256];
 	uint16_t *order1; /* owned; 65536 */
 	uint32_t match_cell[2][MATCH_STEPS];
@@ -101,7 +100,7 @@ struct predictor {
 	struct view view;
 	struct place place[CONTEXTS_MAX];
 	struct mixing mixing;
-	bool begun; /* view and place are those of the byte being coded */
+	bool begun;   /* view and place are those of the byte being coded */
 	bool pending; /* a byte is complete but not yet pushed */
 	bool lane_failed, in_lane;
 	unsigned partial, bit;

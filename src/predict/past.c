@@ -34,8 +34,7 @@ enum status past_init(struct past *past, const struct predict_plan *plan)
 	TRY(match_init(&past->match[0], plan->bytes, text ? 6 : 5));
 	if (plan->strength == STRENGTH_NIGHTLY)
 		return STATUS_OK;
-	if (match_init(&past->match[1], plan->bytes, text ? 16 : 12) ==
-	    STATUS_OK)
+	if (match_init(&past->match[1], plan->bytes, 8) == STATUS_OK)
 		return STATUS_OK;
 	past_release(past);
 	return STATUS_NO_MEMORY;
@@ -69,16 +68,14 @@ void past_restart(struct past *past, const uint8_t *bytes)
 	*past = fresh;
 }
 
-/* Hash of the least bytes that end before position at. */
-static uint32_t match_hash(const struct match *match, const uint8_t *bytes,
-			   size_t at)
+/* Where a context of the last bytes (latest lowest) is looked up. */
+static size_t match_entry(const struct match *match, uint64_t last8)
 {
-	uint64_t hash = 0;
+	uint64_t context = last8 << (64 - 8 * match->least);
 
-	for (unsigned i = 0; i < match->least; i++)
-		hash = (hash + bytes[at - 1 - i] + 1) *
-		       UINT64_C(0x2f0b4c47d6e8feb9);
-	return (uint32_t)(hash >> 32) >> match->shift;
+	context ^= context >> 29;
+	return (size_t)(context * UINT64_C(0xd6e8feb86659fd93) >>
+			(32 + match->shift));
 }
 
 /* How many bytes before a and before b agree; b is the later one. */
@@ -93,7 +90,8 @@ static uint32_t agreement(const uint8_t *bytes, size_t a, size_t b)
 }
 
 /* Follows the match over the byte just taken in, or finds another. */
-static void match_push(struct match *match, const uint8_t *bytes, size_t at)
+static void match_push(struct match *match, const uint8_t *bytes, size_t at,
+		       uint64_t last8)
 {
 	uint32_t *entry;
 
@@ -110,7 +108,7 @@ static void match_push(struct match *match, const uint8_t *bytes, size_t at)
 	}
 	if (at < match->least)
 		return;
-	entry = &match->table[match_hash(match, bytes, at)];
+	entry = &match->table[match_entry(match, last8)];
 	if ((!match->at || match->length < FIRM_LENGTH) && *entry) {
 		uint32_t length = agreement(bytes, *entry, at);
 
@@ -206,9 +204,9 @@ void past_push(struct past *past)
 		push_word(past, c);
 	if (past->plan.family == FAMILY_LINES)
 		push_line(past, c);
-	match_push(&past->match[0], past->bytes, past->at);
+	match_push(&past->match[0], past->bytes, past->at, past->last8);
 	if (past->match[1].table)
-		match_push(&past->match[1], past->bytes, past->at);
+		match_push(&past->match[1], past->bytes, past->at, past->last8);
 }
 
 void past_look(const struct past *past, struct view *view)
@@ -227,10 +225,13 @@ void past_look(const struct past *past, struct view *view)
 void past_warm(const struct past *past, const uint8_t *bytes, size_t position)
 {
 	const struct match *match = past->match;
+	uint64_t last8 = 0;
 
-	if (position >= match->least)
-		__builtin_prefetch(
-			&match->table[match_hash(match, bytes, position)], 1);
+	if (position < 8)
+		return;
+	for (unsigned i = 0; i < 8; i++)
+		last8 = last8 << 8 | bytes[position - 8 + i];
+	__builtin_prefetch(&match->table[match_entry(match, last8)], 1);
 }
 
 unsigned past_contexts(const struct predict_plan *plan)

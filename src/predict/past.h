@@ -10,6 +10,9 @@
 #define CONTEXTS_MAX 30
 #define FIELDS_MAX 32
 #define SELECTORS 3
+/* Weight sets by partial byte, by match and bit, by the family: so many each.
+ */
+#define SET_ROWS 256
 
 /* How a match stands: 0 none; up to MATCH_LANE - 1 by length. */
 #define MATCH_STEPS 32
@@ -19,7 +22,7 @@ struct view {
 	uint32_t hash[CONTEXTS_MAX];
 	uint8_t expected[2];   /* the bytes that two matches go on with */
 	uint8_t match_step[2]; /* 0: there is no match */
-	uint8_t last;	       /* the byte before */
+	uint8_t last;          /* the byte before */
 	bool lane; /* code whether expected[0] comes, before its bits */
 	uint16_t select[SELECTORS]; /* weight sets, each below 256 */
 };
@@ -27,9 +30,9 @@ struct view {
 /* The longest earlier context that agrees with the last bytes. */
 struct match {
 	uint32_t *table; /* owned; position after a hashed context */
-	unsigned shift;	 /* 32 - log2 of its entries */
-	unsigned least;	 /* bytes of the hashed context */
-	size_t at;	 /* position expected to repeat; 0: none */
+	unsigned shift;  /* 32 - log2 of its entries */
+	unsigned least;  /* bytes of the hashed context */
+	size_t at;       /* position expected to repeat; 0: none */
 	uint32_t length; /* bytes that agreed */
 	uint32_t misses; /* since the match was found */
 };
@@ -41,15 +44,13 @@ struct past {
 	uint64_t last8; /* the last eight bytes, latest lowest */
 	uint64_t before8;
 	uint32_t word, word1, word2; /* hash of this word and those before */
-	size_t line, line_before; /* where this line and that before begin */
+	size_t line, line_before;    /* where this line and that before begin */
 	uint32_t line_hash;
 	uint32_t first; /* first byte that is no blank, and indent */
 	size_t field_start[2][FIELDS_MAX + 1];
-	unsigned fields[2];  /* begun in this line, and in that before */
+	unsigned fields[2]; /* begun in this line, and in that before */
 	uint32_t field_hash, field_hash1;
 	struct match match[2];
-	int32_t weight[16]; /* of the linear predictor of samples */
-	int32_t guess; /* next sample */
 };
 
 MUST_USE enum status past_init(struct past *past,

@@ -25,8 +25,8 @@ static MUST_USE enum status predictor_allocate(struct predictor *made)
 	TRY(past_init(&made->past, &made->plan));
 	TRY(memory_new_lines((size_t)made->contexts << made->lines_log2,
 			     LINE_BYTES, &made->lines));
-	TRY(memory_new_lines((size_t)SETS * SET_ROWS * inputs,
-			     sizeof(int16_t), &made->mixer.weights));
+	TRY(memory_new_lines((size_t)SETS * SET_ROWS * inputs, sizeof(int16_t),
+			     &made->mixer.weights));
 	TRY(memory_new_lines(65536, sizeof(uint16_t), &made->order1));
 	TRY(memory_new(2 * CHUNK, sizeof(*made->views), &made->views));
 	return memory_new_lines(CHUNK * 8 * inputs, sizeof(int16_t),
@@ -43,8 +43,8 @@ enum status predictor_new(const struct predict_plan *plan,
 	made->plan = *plan;
 	made->contexts = past_contexts(plan);
 	made->lines_log2 = lines_log2_for(plan);
-	made->mixer.inputs = plan->strength == STRENGTH_DEEP ? INPUTS_DEEP
-							     : INPUTS_NIGHTLY;
+	made->mixer.inputs =
+		plan->strength == STRENGTH_DEEP ? INPUTS_DEEP : INPUTS_NIGHTLY;
 	assert(2 * made->contexts + COMMON <= made->mixer.inputs);
 	tables_build(&made->mixer.tables);
 	predictor_set_lanes(made, LANES_BEST);
@@ -107,6 +107,7 @@ static void mixer_restart(struct mixer *mixer, unsigned contexts)
 		}
 	}
 	mixer->seen = 0;
+	mixer->rate = 160;
 }
 
 void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
@@ -162,15 +163,19 @@ static void gather(struct predictor *p)
 
 	for (unsigned i = 0; i < p->contexts; i++) {
 		struct place *place = &p->place[i];
+		uint32_t trend;
 
+		if (p->bit == 0)
+			p->trend[i][0] = TREND_HALF;
 		if (p->bit == 0)
 			place_begin(place, context_lines(p, i), p->lines_log2,
 				    p->view.hash[i]);
 		if (p->bit == 4)
 			place_middle(place, p->partial & 15);
-		history_inputs(tables, p->trend[i],
-			       place->slot[nibble_node(p->partial, p->bit)],
-			       p->inputs + 2 * i);
+		trend = p->trend[i]
+				[place->slot[nibble_node(p->partial, p->bit)]];
+		p->inputs[2 * i] = trend_logit(tables, trend);
+		p->inputs[2 * i + 1] = trend_share(trend);
 	}
 	common_inputs(p, &p->view, p->partial, p->bit, p->lane_failed, common);
 }
@@ -220,10 +225,17 @@ static bool update_lane(struct predictor *p, unsigned decision, uint8_t *byte)
 	return false;
 }
 
+static void learn_history(struct predictor *p, unsigned i, unsigned bit)
+{
+	uint8_t *history = &p->place[i].slot[nibble_node(p->partial, p->bit)];
+	uint32_t *trend = &p->trend[i][*history];
+
+	*trend = trend_moved(*trend, bit);
+	*history = p->mixer.tables.next[*history][bit];
+}
+
 bool predictor_update(struct predictor *p, unsigned decision, uint8_t *byte)
 {
-	const struct predict_tables *tables = &p->mixer.tables;
-
 	if (p->plan.family == FAMILY_FLAT) {
 		p->partial = p->partial * 2 + decision;
 		if (++p->bit < 8)
@@ -234,10 +246,7 @@ bool predictor_update(struct predictor *p, unsigned decision, uint8_t *byte)
 		return update_lane(p, decision, byte);
 	p->lanes->update(&p->mixer, &p->mixing, decision);
 	for (unsigned i = 0; i < p->contexts; i++)
-		history_update(
-			tables, p->trend[i],
-			&p->place[i].slot[nibble_node(p->partial, p->bit)],
-			decision);
+		learn_history(p, i, decision);
 	common_update(p, &p->view, p->partial, p->bit, p->lane_failed,
 		      decision);
 	p->partial = p->partial * 2 + decision;

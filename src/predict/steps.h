@@ -5,19 +5,19 @@
 #include "predict/components.h"
 
 /* Node of a slot, 1..15, for the bits of a byte so far. */
-static inline unsigned nibble_node(unsigned partial, unsigned bit)
+ALWAYS_INLINE unsigned nibble_node(unsigned partial, unsigned bit)
 {
 	unsigned within = bit & 3;
 
 	return (1U << within) | (partial & ((1U << within) - 1));
 }
 
-static inline uint8_t *context_lines(struct predictor *p, unsigned i)
+ALWAYS_INLINE uint8_t *context_lines(struct predictor *p, unsigned i)
 {
 	return p->lines + ((size_t)i << p->lines_log2) * LINE_BYTES;
 }
 
-static inline unsigned lane_p16(const struct predictor *p,
+ALWAYS_INLINE unsigned lane_p16(const struct predictor *p,
 				const struct view *view)
 {
 	unsigned step = view->match_step[0];
@@ -26,17 +26,16 @@ static inline unsigned lane_p16(const struct predictor *p,
 	return p16 < 1 ? 1 : p16;
 }
 
-static inline void lane_update(struct predictor *p, const struct view *view,
+ALWAYS_INLINE void lane_update(struct predictor *p, const struct view *view,
 			       unsigned hit)
 {
-	uint32_t *cell =
-		&p->lane_cell[view->match_step[0]][view->expected[0]];
+	uint32_t *cell = &p->lane_cell[view->match_step[0]][view->expected[0]];
 
 	*cell = cell_update(&p->mixer.tables, *cell, hit, LANE_LIMIT);
 }
 
 /* The inputs that are no bit histories: COMMON of them. */
-static inline void common_inputs(struct predictor *p, const struct view *view,
+ALWAYS_INLINE void common_inputs(struct predictor *p, const struct view *view,
 				 unsigned partial, unsigned bit,
 				 bool lane_failed, int16_t *inputs)
 {
@@ -44,11 +43,9 @@ static inline void common_inputs(struct predictor *p, const struct view *view,
 	int16_t second[2];
 
 	inputs[0] = tables->stretch[p->order0[partial] >> 4];
-	inputs[1] =
-		tables->stretch[p->order1[view->last << 8 | partial] >> 4];
+	inputs[1] = tables->stretch[p->order1[view->last << 8 | partial] >> 4];
 	for (unsigned i = 0; i < 2; i++) {
-		unsigned step =
-			match_holds(view, i, partial, bit, lane_failed);
+		unsigned step = match_holds(view, i, partial, bit, lane_failed);
 		unsigned expected = view->expected[i] >> (7 - bit) & 1;
 
 		match_inputs(tables, p->match_cell[i][step], step, expected,
@@ -58,7 +55,7 @@ static inline void common_inputs(struct predictor *p, const struct view *view,
 	inputs[5] = 256;
 }
 
-static inline void common_update(struct predictor *p, const struct view *view,
+ALWAYS_INLINE void common_update(struct predictor *p, const struct view *view,
 				 unsigned partial, unsigned bit,
 				 bool lane_failed, unsigned value)
 {
@@ -67,8 +64,7 @@ static inline void common_update(struct predictor *p, const struct view *view,
 	direct_update(&p->order0[partial], value, 5);
 	direct_update(&p->order1[view->last << 8 | partial], value, 5);
 	for (unsigned i = 0; i < 2; i++) {
-		unsigned step =
-			match_holds(view, i, partial, bit, lane_failed);
+		unsigned step = match_holds(view, i, partial, bit, lane_failed);
 		unsigned expected = view->expected[i] >> (7 - bit) & 1;
 		uint32_t *cell = &p->match_cell[i][step];
 

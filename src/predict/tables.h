@@ -6,6 +6,10 @@
 
 #include <stdint.h>
 
+/* For the inmost loops, whose constant arguments must reach them. */
+#define ALWAYS_INLINE static inline __attribute__((always_inline))
+#define NEVER_INLINE __attribute__((noinline))
+
 /*
  * The logistic domain: x stands for ln(p / (1 - p)) in steps of 1/256, from
  * -LOGIT_MAX to LOGIT_MAX (12 nats: past what 16 bits of probability hold).
@@ -29,7 +33,7 @@ struct predict_tables {
 	/* the bit history that follows on a 0 and on a 1; 0 is empty */
 	uint8_t next[256][2];
 	/* probability of a one (cells.h) that a history starts with */
-	int32_t start[256];
+	uint32_t start[256];
 };
 
 /* Fills all tables; the same on every machine. */
