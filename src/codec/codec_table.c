@@ -1,6 +1,6 @@
 #include "codec/codec.h"
 
-#include "codec/rows.h"
+#include "codec/codec_rows.h"
 
 #include <string.h>
 

@@ -1,4 +1,4 @@
-#include "codec/rows.h"
+#include "codec/codec_rows.h"
 
 static MUST_USE enum status
 store_parse(const char *text, struct codec_setting *setting, struct reason *why)

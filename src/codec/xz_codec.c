@@ -1,4 +1,4 @@
-#include "codec/rows.h"
+#include "codec/codec_rows.h"
 
 #include <lzma.h>
 #include <stdio.h>

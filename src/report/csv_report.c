@@ -280,7 +280,7 @@ static enum status csv_write(FILE *out, const struct analysis *analysis,
 	emit(out, &header);
 	for (size_t i = 0; i < analysis->corpus_count; i++)
 		corpus_lines(out, &analysis->corpora[i]);
-	return stream_finish(out, STATUS_OK, why);
+	return report_finish(out, STATUS_OK, why);
 }
 
 const struct report_format report_csv = {

@@ -3,7 +3,7 @@
 #define RUN_MEASURE_H
 
 #include "ledger/survey.h"
-#include "run/plan.h"
+#include "run/work_plan.h"
 
 /* What a group of rows needs; all borrowed. */
 struct measure_rows {

@@ -4,7 +4,7 @@
 
 #include "base/status.h"
 #include "ledger/ledger.h"
-#include "run/plan.h"
+#include "run/work_plan.h"
 
 #include <signal.h>
 

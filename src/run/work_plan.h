@@ -1,6 +1,6 @@
 /* The work of a survey: every row and cell to measure, in a fixed order. */
-#ifndef RUN_PLAN_H
-#define RUN_PLAN_H
+#ifndef RUN_WORK_PLAN_H
+#define RUN_WORK_PLAN_H
 
 #include "base/status.h"
 #include "codec/codec.h"

@@ -1,4 +1,4 @@
-#include "run/plan.h"
+#include "run/work_plan.h"
 
 #include "corpus/corpus.h"
 

@@ -1,6 +1,6 @@
 /* The rows of table 2, each defined at the end of its own file. */
-#ifndef CODEC_ROWS_H
-#define CODEC_ROWS_H
+#ifndef CODEC_CODEC_ROWS_H
+#define CODEC_CODEC_ROWS_H
 
 #include "codec/codec.h"
 
