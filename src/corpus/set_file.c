@@ -171,10 +171,15 @@ enum status set_parse(struct slice text, const char *path, bool outside,
 		.text = text,
 		.why = why ? why : &spare,
 	};
-	enum status status = parse_into(&loader);
+	enum status status;
 
+	loader.why->text[0] = '\0';
+	status = parse_into(&loader);
 	if (status != STATUS_OK) {
 		set_release(&made);
+		if (!loader.why->text[0])
+			(void)reason_give(why, status, "%s: %s", path,
+					  status_words(status));
 		return status;
 	}
 	*set = made;
