@@ -6,6 +6,7 @@
 #include <limits.h>
 #include <stdlib.h>
 #include <string.h>
+#include <sys/stat.h>
 
 /* Is path, with every link followed, below the folder? */
 static bool is_within(const char *path, const char *folder)
@@ -71,6 +72,15 @@ enum status corpus_open(const struct set_corpus *entry, uint64_t memory_limit,
 	}
 	*corpus = made;
 	return STATUS_OK;
+}
+
+uint64_t corpus_file_bytes(const struct set_corpus *entry)
+{
+	struct stat about;
+
+	if (stat(entry->file, &about) != 0 || about.st_size < 0)
+		return 0;
+	return (uint64_t)about.st_size;
 }
 
 void corpus_close(struct corpus *corpus)

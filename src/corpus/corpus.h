@@ -32,6 +32,9 @@ MUST_USE enum status corpus_open(const struct set_corpus *entry,
 /* Accepts an initialised-empty corpus. */
 void corpus_close(struct corpus *corpus);
 
+/* Length of the file as it lies there; 0 where there is none. */
+uint64_t corpus_file_bytes(const struct set_corpus *entry);
+
 /* The bytes, for sequence_init; valid until corpus_close. */
 struct slice corpus_bytes(const struct corpus *corpus);
 

@@ -137,6 +137,9 @@ static enum status parse_into(struct loader *loader)
 	int line;
 
 	TRY(path_folder(loader->path, &loader->set->folder));
+	TRY(value_text(loader->path, &loader->set->path));
+	digest_sha256(loader->text.bytes, loader->text.length,
+	              loader->set->digest);
 	/* A byte order mark is allowed and means nothing. */
 	if (loader->text.length >= 3 &&
 	    memcmp(loader->text.bytes, "\xEF\xBB\xBF", 3) == 0)
@@ -168,10 +171,15 @@ enum status set_parse(struct slice text, const char *path, bool outside,
 		.text = text,
 		.why = why ? why : &spare,
 	};
-	enum status status = parse_into(&loader);
+	enum status status;
 
+	loader.why->text[0] = '\0';
+	status = parse_into(&loader);
 	if (status != STATUS_OK) {
 		set_release(&made);
+		if (!loader.why->text[0])
+			(void)reason_give(why, status, "%s: %s", path,
+					  status_words(status));
 		return status;
 	}
 	*set = made;
@@ -215,6 +223,7 @@ void set_release(struct set *set)
 		release_codec(&set->codecs[i]);
 	memory_free(set->corpora);
 	memory_free(set->codecs);
+	memory_free(set->path);
 	memory_free(set->folder);
 	*set = (struct set){0};
 }

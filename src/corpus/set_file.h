@@ -2,6 +2,7 @@
 #ifndef CORPUS_SET_FILE_H
 #define CORPUS_SET_FILE_H
 
+#include "base/digest.h"
 #include "base/memory.h"
 #include "base/status.h"
 #include "symbols/sequence.h"
@@ -62,7 +63,9 @@ struct set {
 	size_t corpus_count;            /* at least 1 */
 	struct set_codec *codecs;       /* owned */
 	size_t codec_count;
+	char *path;   /* owned; of the set file, for messages */
 	char *folder; /* owned; where the set file lies */
+	char digest[DIGEST_TEXT_BYTES]; /* of the set file's text */
 };
 
 /*

@@ -8,6 +8,8 @@ const struct estimator *const estimators[] = {
 	&estimator_uniform,
 	&estimator_ngram,
 	&estimator_match,
+	&estimator_mix,
+	&estimator_mix_deep,
 	NULL,
 };
 

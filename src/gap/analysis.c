@@ -2,7 +2,7 @@
 
 #include "base/memory.h"
 #include "gap/bracket.h"
-#include "gap/cells.h"
+#include "gap/cell_view.h"
 #include "gap/gram_orders.h"
 #include "gap/headline.h"
 

@@ -1,4 +1,4 @@
-#include "gap/cells.h"
+#include "gap/cell_view.h"
 
 #include <string.h>
 

@@ -98,12 +98,10 @@ void query_text_new(struct query *query, char **text)
 
 	if (!found)
 		return;
-	query->status = memory_new(length + 1, 1, &copy);
-	if (query->status != STATUS_OK) {
-		(void)reason_give(query->why, STATUS_NO_MEMORY,
-				  "%s: out of memory", query->ledger->path);
+	query->status = ledger_memory(
+		query->ledger, memory_new(length + 1, 1, &copy), query->why);
+	if (query->status != STATUS_OK)
 		return;
-	}
 	memcpy(copy, found, length + 1);
 	*text = copy;
 }
@@ -134,11 +132,14 @@ void query_blocks(struct query *query, size_t wanted, void *words,
 		query_damaged(query, "wrong number of blocks");
 		return;
 	}
-	*count = length / 8;
-	if (!length)
+	if (length)
+		query->status =
+			ledger_memory(query->ledger,
+				      memory_new(length, 1, &made), query->why);
+	if (query->status != STATUS_OK)
 		return;
-	query->status = memory_new(*count, 8, &made);
-	for (size_t i = 0; made && i < *count; i++)
+	for (size_t i = 0; i < length / 8; i++)
 		made[i] = word_at(bytes + 8 * i);
 	memcpy(words, &made, sizeof(made));
+	*count = length / 8;
 }

@@ -187,7 +187,7 @@ static enum status check_writable(struct ledger *ledger, struct reason *why)
 	char *folder = NULL;
 	enum status status = STATUS_OK;
 
-	TRY(memory_new(length + 1, 1, &folder));
+	TRY(ledger_memory(ledger, memory_new(length + 1, 1, &folder), why));
 	memcpy(folder, ledger->path, length);
 	folder[length] = '\0';
 	if (access(folder, W_OK) != 0)

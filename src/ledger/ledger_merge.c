@@ -289,8 +289,9 @@ enum status ledger_merge(struct ledger *ledger, const char *const *parts,
 		return reason_give(why, STATUS_BAD_USAGE,
 				   "no parts to merge: name at least one "
 				   "ledger");
-	TRY(memory_new_zeroed(part_count, sizeof(*read), &read));
-	status = STATUS_OK;
+	status = ledger_memory(
+		ledger, memory_new_zeroed(part_count, sizeof(*read), &read),
+		why);
 	while (done < part_count && status == STATUS_OK) {
 		status = part_init(&read[done], parts[done], why);
 		done++;

@@ -225,7 +225,7 @@ enum status ledger_read(struct ledger *ledger, int64_t id,
 	ledger_undo(ledger, "ROLLBACK");
 	if (status != STATUS_OK) {
 		survey_release(&made);
-		return status;
+		return ledger_memory(ledger, status, why);
 	}
 	*survey = made;
 	return STATUS_OK;
@@ -250,7 +250,7 @@ enum status ledger_list(struct ledger *ledger, int64_t **ids, size_t *count,
 		query.status = memory_new(0, sizeof(*made), &made);
 	if (query.status != STATUS_OK) {
 		memory_free(made);
-		return query.status;
+		return ledger_memory(ledger, query.status, why);
 	}
 	*ids = made;
 	*count = found;

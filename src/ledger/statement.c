@@ -4,6 +4,14 @@
 
 #include "base/memory.h"
 
+enum status ledger_memory(const struct ledger *ledger, enum status status,
+			  struct reason *why)
+{
+	if (status != STATUS_NO_MEMORY)
+		return status;
+	return reason_give(why, status, "%s: out of memory", ledger->path);
+}
+
 static enum status fail_reading(struct ledger *ledger, int code,
 				struct reason *why)
 {
@@ -37,8 +45,7 @@ enum status ledger_fail(struct ledger *ledger, int code, struct reason *why)
 
 	switch (code & 0xff) {
 	case SQLITE_NOMEM:
-		return reason_give(why, STATUS_NO_MEMORY, "%s: out of memory",
-				   ledger->path);
+		return ledger_memory(ledger, STATUS_NO_MEMORY, why);
 	case SQLITE_FULL:
 		return reason_give(why, STATUS_IO,
 				   "%s: disk full: rows written before are "
@@ -176,12 +183,10 @@ void query_bind_blocks(struct query *query, const void *words, size_t count)
 
 	if (query->status != STATUS_OK)
 		return;
-	query->status = memory_new(count, 8, &bytes);
-	if (query->status != STATUS_OK) {
-		(void)reason_give(query->why, STATUS_NO_MEMORY,
-				  "%s: out of memory", query->ledger->path);
+	query->status = ledger_memory(query->ledger,
+				      memory_new(count, 8, &bytes), query->why);
+	if (query->status != STATUS_OK)
 		return;
-	}
 	for (size_t i = 0; i < count; i++) {
 		for (unsigned b = 0; b < 8; b++)
 			bytes[8 * i + b] = (uint8_t)(word[i] >> 8 * b);

@@ -33,6 +33,9 @@ struct query {
 	struct reason *why;
 };
 
+/* Gives "PATH: out of memory" its status; any other status passes through. */
+enum status ledger_memory(const struct ledger *ledger, enum status status,
+			  struct reason *why);
 /* Turns SQLite's code into a status and words; code may be extended. */
 enum status ledger_fail(struct ledger *ledger, int code, struct reason *why);
 /* Runs SQL without parameters or rows. */

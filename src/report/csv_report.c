@@ -16,7 +16,8 @@
 	X(row)                                                                 \
 	X(corpus)                                                              \
 	X(symbols)                                                             \
-	X(n) X(name) X(level) X(layout) X(order) X(status) X(reason) X(        \
+	X(n)                                                                   \
+	X(name) X(level) X(layout) X(order) X(status) X(reason) X(             \
 		bits_per_symbol) X(low) X(high) X(interval_reason) X(leans)    \
 		X(is_code) X(gap) X(gap_low) X(gap_high) X(gap_percent) X(     \
 			restart) X(family) X(effort) X(framing) X(bytes)       \
@@ -77,7 +78,7 @@ static void set_interval(struct csv_row *row, bool known,
 {
 	set_real(row, CSV_low, known && interval->known, interval->low);
 	set_real(row, CSV_high, known && interval->known, interval->high);
-	if (known && !interval->known)
+	if (!interval->known)
 		set_text(row, CSV_interval_reason, interval->reason);
 }
 
@@ -280,7 +281,7 @@ static enum status csv_write(FILE *out, const struct analysis *analysis,
 	emit(out, &header);
 	for (size_t i = 0; i < analysis->corpus_count; i++)
 		corpus_lines(out, &analysis->corpora[i]);
-	return stream_finish(out, STATUS_OK, why);
+	return report_finish(out, STATUS_OK, why);
 }
 
 const struct report_format report_csv = {

@@ -60,8 +60,6 @@ static void put_costs(struct json_maker *made, const struct cell_row *row)
 /* The interval that says why it is not there, if one does. */
 static const char *interval_reason(const struct cell_row *row)
 {
-	if (!row->known)
-		return "";
 	return row->interval.known ? row->gap_interval.reason
 				   : row->interval.reason;
 }

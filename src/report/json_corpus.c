@@ -40,8 +40,7 @@ static json_t *estimate_object(const struct estimate_row *row)
 	json_put_count(&made, "page_bytes", row->fact->page_bytes);
 	json_put_text(&made, "status", outcome_name(row->fact->outcome));
 	json_put_reason(&made, "reason", row->fact->reason);
-	json_put_reason(&made, "interval_reason",
-			row->known ? interval->reason : "");
+	json_put_reason(&made, "interval_reason", interval->reason);
 	return json_done(&made);
 }
 

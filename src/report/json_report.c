@@ -56,14 +56,14 @@ static enum status json_write(FILE *out, const struct analysis *analysis,
 	json_t *root = root_object(analysis);
 
 	if (!root)
-		return stream_finish(out, STATUS_NO_MEMORY, why);
+		return report_finish(out, STATUS_NO_MEMORY, why);
 	/* Refused bytes leave their mark on the stream, which is asked below.
 	 */
 	(void)json_dumpf(root, out,
 			 JSON_INDENT(2) | JSON_REAL_PRECISION(JSON_DIGITS));
 	(void)fputc('\n', out);
 	json_decref(root);
-	return stream_finish(out, STATUS_OK, why);
+	return report_finish(out, STATUS_OK, why);
 }
 
 const struct report_format report_json = {

@@ -84,7 +84,7 @@ static enum status text_write(FILE *out, const struct analysis *analysis,
 {
 	const struct writer writer = {.out = out};
 
-	return stream_finish(out, write_paper(&writer, analysis), why);
+	return report_finish(out, write_paper(&writer, analysis), why);
 }
 
 static enum status markdown_write(FILE *out, const struct analysis *analysis,
@@ -92,7 +92,7 @@ static enum status markdown_write(FILE *out, const struct analysis *analysis,
 {
 	const struct writer writer = {.out = out, .markdown = true};
 
-	return stream_finish(out, write_paper(&writer, analysis), why);
+	return report_finish(out, write_paper(&writer, analysis), why);
 }
 
 const struct report_format report_text = {

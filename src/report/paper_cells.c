@@ -12,8 +12,10 @@ static const struct column gap_columns[] = {
 };
 
 static void status_cell(struct grid *grid, struct notes *notes,
-			const struct cell_fact *cell)
+			const struct cell_row *row)
 {
+	const struct cell_fact *cell = row->fact;
+
 	if (cell_failed(cell))
 		grid_add(grid, "FAILED %s",
 			 notes_mark(notes, cell->reason && cell->reason[0]
@@ -21,10 +23,14 @@ static void status_cell(struct grid *grid, struct notes *notes,
 						   : "the decoded bytes differ "
 						     "from the input")
 				 .text);
-	else if (cell->outcome == OUTCOME_DONE)
+	else if (row->known)
 		grid_add(grid, "ok");
 	else
-		grid_add(grid, "none %s", notes_mark(notes, cell->reason).text);
+		grid_add(grid, "none %s",
+			 notes_mark(notes, cell->outcome == OUTCOME_DONE
+						   ? row->interval.reason
+						   : cell->reason)
+				 .text);
 }
 
 static void interval_cell(struct grid *grid, struct notes *notes, bool known,
@@ -66,7 +72,7 @@ static enum status gap_table(const struct writer *writer,
 			 figure_percent(row->known && row->has_percent,
 					row->gap_percent)
 				 .text);
-		status_cell(&grid, notes, row->fact);
+		status_cell(&grid, notes, row);
 	}
 	TRY(grid_finish(&grid, writer));
 	write_paragraph(

@@ -11,19 +11,26 @@ static const struct column estimate_columns[] = {
 };
 
 static void estimate_status(struct grid *grid, struct notes *notes,
-			    const struct method_fact *fact)
+			    const struct estimate_row *row)
 {
 	static const char *const words[] = {
-		[OUTCOME_DONE] = "ok",
+		[OUTCOME_DONE] = "none ",
 		[OUTCOME_FAILED] = "FAILED ",
 		[OUTCOME_DECLINED] = "declined ",
 		[OUTCOME_SKIPPED] = "skipped ",
 	};
+	enum outcome outcome = row->fact->outcome;
 
-	grid_add(grid, "%s%s", words[fact->outcome],
-		 fact->outcome == OUTCOME_DONE
-			 ? ""
-			 : notes_mark(notes, fact->reason).text);
+	if (row->known)
+		grid_add(grid, "ok");
+	else
+		/* Measured, but nothing could be made of it: why is told where
+		 * the interval would be. */
+		grid_add(grid, "%s%s", words[outcome],
+			 notes_mark(notes, outcome == OUTCOME_DONE
+						   ? row->interval.reason
+						   : row->fact->reason)
+				 .text);
 }
 
 static void interval_cell(struct grid *grid, struct notes *notes,
@@ -54,7 +61,7 @@ static void estimate_line(struct grid *grid, struct notes *notes,
 		grid_add(grid, "%u", row->order);
 	else
 		grid_add(grid, "-");
-	estimate_status(grid, notes, row->fact);
+	estimate_status(grid, notes, row);
 }
 
 enum status paper_estimates(const struct writer *writer,

@@ -51,7 +51,7 @@ static void floor_words(const struct writer *writer,
 		floor->rows,
 		interval->known
 			? figure_interval(interval->low, interval->high).text
-			: "no interval, because ",
+			: "no interval: ",
 		interval->known ? "" : interval->reason);
 	if (floor->by_codec)
 		write_paragraph(writer,
@@ -75,8 +75,8 @@ static void bracket_edges(const struct writer *writer,
 			writer,
 			"Rate bracket: between %s and %s bits per "
 			"symbol for the entropy rate of the source; the "
-			"lower edge comes from grams of order %u, the "
-			"upper from %s.",
+			"lower edge comes from corrected grams, which "
+			"are steady up to order %u, the upper from %s.",
 			figure_bits(true, bracket->low).text,
 			figure_bits(true, bracket->high).text, bracket->order,
 			bracket->upper_by);
@@ -86,7 +86,7 @@ static void bracket_words(const struct writer *writer,
 			  const struct bracket_row *bracket)
 {
 	if (!bracket->known) {
-		write_paragraph(writer, "Rate bracket: none, because %s.",
+		write_paragraph(writer, "No rate bracket: %s.",
 				bracket->reason[0] ? bracket->reason
 						   : "no reason was recorded");
 		return;
@@ -115,6 +115,9 @@ static void bracket_words(const struct writer *writer,
 static void trust_words(const struct writer *writer,
 			const struct corpus_view *view)
 {
+	if (view->order_count == 0 && view->trust_limit[0])
+		write_paragraph(writer, "No trusted order: %s.",
+				view->trust_limit);
 	if (view->order_count == 0)
 		return;
 	if (view->trusted_order)

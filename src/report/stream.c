@@ -3,7 +3,7 @@
 #include <errno.h>
 #include <string.h>
 
-enum status stream_finish(FILE *out, enum status status, struct reason *why)
+enum status report_finish(FILE *out, enum status status, struct reason *why)
 {
 	if (status == STATUS_NO_MEMORY)
 		return reason_give(why, status, "report: out of memory");

@@ -10,7 +10,7 @@
  * Flushes. STATUS_IO: the stream refused bytes, now or before; status unless
  * it is STATUS_OK.
  */
-MUST_USE enum status stream_finish(FILE *out, enum status status,
+MUST_USE enum status report_finish(FILE *out, enum status status,
 				   struct reason *why);
 
 #endif

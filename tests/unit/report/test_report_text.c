@@ -107,12 +107,20 @@ static void what_is_unknown_says_why(void **state)
 	sample_analysis_init(&sample);
 	sample.views[0].bracket.known = false;
 	strcpy(sample.views[0].bracket.reason, "no order is steady");
-	says(&sample, "Rate bracket: none, because no order is steady.");
+	says(&sample, "No rate bracket: no order is steady.");
 	sample.views[0].trusted_order = 0;
 	says(&sample, "Trusted order: none. Why not even order 1: at order 2");
 	sample.views[0].floor.interval = sample.cells[1].interval;
-	says(&sample, "no interval, because only 5.2 effective blocks where 8 "
-		      "are needed.");
+	says(&sample, "no interval: only 5.2 effective blocks where 8 are "
+		      "needed.");
+	/* Counted, but no order could be trusted. */
+	sample.estimates[0].known = false;
+	strcpy(sample.estimates[0].interval.reason, "no order passes");
+	says(&sample, "no order passes");
+	sample.cells[0].known = false;
+	sample.cells[0].interval = sample.cells[1].interval;
+	strcpy(sample.cells[0].interval.reason, "no symbols to divide by");
+	says(&sample, "no symbols to divide by");
 	sample.views[0].floor.known = false;
 	says(&sample, "Floor: none.");
 	sample.survey.finished = false;
@@ -135,6 +143,7 @@ static void bare_corpora_are_reported(void **state)
 	says_not(&sample, "How far each codec");
 	view->order_count = 0;
 	says_not(&sample, "Trusted order");
+	says(&sample, "No trusted order: at order 2");
 	view->estimate_count = 0;
 	says_not(&sample, "Estimates");
 	view->cell_count = 3;

@@ -15,7 +15,7 @@ static uint8_t *text_new(size_t length)
 	assert_int_equal(memory_new(length, 1, &text), STATUS_OK);
 	for (size_t i = 0; i < length; i++) {
 		random = random * 1664525 + 1013904223;
-		text[i] = (uint8_t)"tide  ebb\nflood"[(random >> 16) % 15];
+		text[i] = (uint8_t) "tide  ebb\nflood"[(random >> 16) % 15];
 		if (i && (random >> 28) == 0 && i + 1 < length) {
 			text[i - 1] = 0xC3;
 			text[i] = 0xA9;

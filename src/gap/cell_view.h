@@ -1,6 +1,6 @@
 /* Gaps: what each codec, level and layout leaves above the floor. */
-#ifndef GAP_CELLS_H
-#define GAP_CELLS_H
+#ifndef GAP_CELL_VIEW_H
+#define GAP_CELL_VIEW_H
 
 #include "gap/lengths.h"
 
