@@ -20,7 +20,8 @@ static MUST_USE enum status open_bytes(struct resident *resident,
 
 	TRY(corpus_open(resident->declared, bytes_allowed, &resident->corpus,
 			why));
-	status = sequence_init(&resident->sequence, corpus_bytes(&resident->corpus),
+	status = sequence_init(&resident->sequence,
+			       corpus_bytes(&resident->corpus),
 			       &resident->declared->rules, why);
 	if (status != STATUS_OK) {
 		corpus_close(&resident->corpus);

@@ -116,7 +116,8 @@ static MUST_USE enum status add_levels(struct plan *plan,
 			}
 			plan->cell_count +=
 				chosen(&selection->codecs, section->name) &&
-				chosen(&selection->levels, section->levels.texts[i]);
+				chosen(&selection->levels,
+				       section->levels.texts[i]);
 		}
 	}
 	return STATUS_OK;
