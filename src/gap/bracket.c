@@ -8,6 +8,8 @@
 
 /* How far an order may move between half of the data and all of it. */
 #define STABLE_SHARE 0.02
+/* Chao-Jost coverage below which grams of an order tell nothing. */
+#define COVERAGE_LEAST 0.5
 
 /* What the edges are made of while they are found. */
 struct edges {
@@ -72,15 +74,29 @@ static void find_fitted(struct edges *edges)
 	}
 }
 
+/*
+ * What one more symbol of context would still take off h_k^. Where most grams
+ * were never seen both corrections fall short, so the higher is taken; where
+ * not even half of the probability was, neither says anything, and the order
+ * below it (two at least) has to do.
+ */
+static double next_order(const struct edges *edges)
+{
+	const struct order_row *next = &edges->view->orders[edges->stable];
+
+	if (next->coverage < COVERAGE_LEAST && edges->stable >= 2)
+		return corrected(edges, edges->stable);
+	return fmax(next->h_corrected, next->h_cwj);
+}
+
 static double lower_edge(const struct edges *edges, double w)
 {
 	double stable =
 		corrected(edges, edges->stable) - growth(edges, edges->stable);
 	double fitted =
 		corrected(edges, edges->fitted) - growth(edges, edges->fitted);
-	double next = corrected(edges, edges->stable + 1);
 
-	return fmax(0, fmin(fmin(stable, fitted), next) - w);
+	return fmax(0, fmin(fmin(stable, fitted), next_order(edges)) - w);
 }
 
 /* Lowers the upper edge to the contribution plus its own w, if it can. */

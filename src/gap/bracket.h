@@ -13,10 +13,13 @@
  * highest counted, up to which GR_k and its half-sample mean agree to 2%; kX:
  * the order of least XF. Then
  *
- *   lower = min(GR_k^ - D_k^, GR_kX - D_kX, GR_(k^+1)) - w
+ *   lower = min(GR_k^ - D_k^, GR_kX - D_kX, N) - w
  *   upper = min over orders k and codes j of (XF_k + w_k, L_j / n + w_j)
  *
- * and lower is at least 0. Open below: a code, or upper, is below lower.
+ * where N is the higher of the Grassberger and Chao-Wang-Jost h_(k^+1); left
+ * out where k^ >= 2 and the coverage of the grams of order k^+1 is under half:
+ * they are then fiction on either correction, and would widen the bracket with
+ * more data. lower is at least 0. Open below: a code, or upper, is below lower.
  * Needs the orders of view. Without a bracket: STATUS_OK, known false and the
  * reason. STATUS_NO_MEMORY.
  */

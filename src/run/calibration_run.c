@@ -4,6 +4,7 @@
 #include "base/pool.h"
 #include "run/sample.h"
 #include "run/stopwatch.h"
+#include "source/frozen.h"
 
 #include <pthread.h>
 #include <stdio.h>
@@ -69,67 +70,117 @@ static void measure_one(void *context, size_t i)
 	finish_one(batch, status, &why);
 }
 
-static enum status describe(const struct calibration_source *row,
-			    uint64_t symbols, const struct source **source,
+static const char *family_of(const struct frozen_source *row)
+{
+	static const char *const by_order[] = {"i.i.d.", "chain", "order-2"};
+
+	if (row->family == FROZEN_HIDDEN)
+		return "hidden";
+	if (row->family == FROZEN_SWITCHING)
+		return "switching";
+	/* Largest entropy under a constraint: no long-run variance at all. */
+	if (strncmp(row->name, "runs-", 5) == 0 ||
+	    strcmp(row->name, "golden-mean") == 0)
+		return "constrained";
+	return row->order < 3 ? by_order[row->order] : "order-3";
+}
+
+/*
+ * Grams that suit the source: one symbol more than its memory. Where the
+ * memory has no end, an order with at most 256 grams: too high for the
+ * bias, on purpose, as a user would meet it.
+ */
+static unsigned order_of(const struct frozen_source *row)
+{
+	unsigned order = 1, grams = row->alphabet;
+
+	if (row->family == FROZEN_FINITE)
+		return row->order + 1;
+	while (grams * row->alphabet <= 256) {
+		grams *= row->alphabet;
+		order++;
+	}
+	return order;
+}
+
+static enum status describe(const struct frozen_source *row, uint64_t symbols,
+			    const struct source_model *model,
 			    struct calibration_subject *subject,
 			    struct reason *why)
 {
-	*source = source_find(row->source);
-	if (!*source)
-		return reason_give(why, STATUS_NOT_FOUND,
-				   "the program has no source %s", row->source);
+	struct known_rate rate;
+
+	TRY(source_model_rate(model, &rate, why));
 	*subject = (struct calibration_subject){
-		.finite_memory = row->finite_memory,
-		.hidden = row->hidden,
-		.drifting = row->drifting,
-		.order = row->order,
+		.finite_memory = row->family == FROZEN_FINITE,
+		.hidden = row->family == FROZEN_HIDDEN,
+		.drifting = row->family == FROZEN_SWITCHING,
+		.order = order_of(row),
 		.symbols = symbols,
-		.known_rate = (*source)->bits_per_symbol(),
+		.known_rate = rate.bits_per_symbol,
 	};
 	(void)snprintf(subject->source, sizeof(subject->source), "%s",
-		       row->source);
+		       row->name);
 	(void)snprintf(subject->family, sizeof(subject->family), "%s",
-		       row->family);
+		       family_of(row));
 	return STATUS_OK;
 }
 
-static enum status run_case(struct batch *batch, size_t length,
-			    const struct calibration_source *row,
-			    struct calibration_case *made)
+static enum status run_samples(struct batch *batch, size_t runs,
+			       const struct calibration_subject *subject,
+			       struct calibration_case *made)
 {
-	const struct calibration_rules *rules = batch->rules;
-	struct calibration_subject subject;
 	enum status status;
 
-	TRY(describe(row, rules->symbols[length], &batch->sample.source,
-		     &subject, batch->why));
-	batch->sample.symbols = rules->symbols[length];
-	batch->sample.order = row->order;
-	batch->sample.orders = rules->orders;
-	TRY(memory_new_zeroed(rules->runs[length], sizeof(*batch->trials),
-			      &batch->trials));
-	status = pool_run(rules->runs[length], rules->jobs, measure_one, batch);
+	TRY(memory_new_zeroed(runs, sizeof(*batch->trials), &batch->trials));
+	status = pool_run(runs, batch->rules->jobs, measure_one, batch);
 	if (status == STATUS_OK)
 		status = batch->status;
 	if (status == STATUS_OK)
-		status = calibration_judge(&subject, batch->trials,
-					   rules->runs[length], made);
+		status = calibration_judge(subject, batch->trials, runs, made);
 	memory_free(batch->trials);
 	return status;
 }
 
-static bool is_wanted(const struct calibration_rules *rules,
-		      const struct calibration_source *row)
+static enum status run_case(struct batch *batch, size_t length,
+			    const struct frozen_source *row,
+			    struct calibration_case *made)
 {
-	return !rules->source || strcmp(rules->source, row->source) == 0;
+	const struct calibration_rules *rules = batch->rules;
+	struct calibration_subject subject;
+	struct source_model model;
+	enum status status;
+
+	TRY(row->init(&model, batch->why));
+	status = describe(row, rules->symbols[length], &model, &subject,
+			  batch->why);
+	batch->sample = (struct sample_rules){
+		.name = row->name,
+		.model = &model,
+		.symbols = rules->symbols[length],
+		.order = subject.order,
+		.orders = rules->orders,
+	};
+	if (status == STATUS_OK)
+		status =
+			run_samples(batch, rules->runs[length], &subject, made);
+	source_model_release(&model);
+	return status;
+}
+
+static bool is_wanted(const struct calibration_rules *rules,
+		      const struct frozen_source *row)
+{
+	return !rules->source || strcmp(rules->source, row->name) == 0;
 }
 
 static size_t count_wanted(const struct calibration_rules *rules)
 {
+	const struct frozen_source *row;
 	size_t count = 0;
 
-	for (size_t i = 0; i < calibration_source_count; i++)
-		count += is_wanted(rules, &calibration_sources[i]);
+	for (size_t i = 0; (row = frozen_at(i)); i++)
+		count += is_wanted(rules, row);
 	return count;
 }
 
@@ -148,9 +199,9 @@ static enum status run_cases(struct batch *batch,
 	const struct calibration_rules *rules = batch->rules;
 
 	for (size_t length = 0; length < rules->length_count; length++) {
-		for (size_t i = 0; i < calibration_source_count; i++) {
-			const struct calibration_source *row =
-				&calibration_sources[i];
+		const struct frozen_source *row;
+
+		for (size_t i = 0; (row = frozen_at(i)); i++) {
 			struct calibration_case *made =
 				&calibration->cases[calibration->case_count];
 
@@ -192,7 +243,8 @@ enum status calibration_run(const struct calibration_rules *rules,
 
 	if (!wanted)
 		return reason_give(why, STATUS_BAD_USAGE,
-				   "no source %s on the list of calibration",
+				   "no source %s on the frozen list; leave "
+				   "--source out to see them all",
 				   rules->source);
 	TRY(memory_new_zeroed(wanted * rules->length_count, sizeof(*made.cases),
 			      &made.cases));

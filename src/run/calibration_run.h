@@ -3,7 +3,6 @@
 #define RUN_CALIBRATION_RUN_H
 
 #include "verdict/calibration.h"
-#include "verdict/calibration_list.h"
 
 #include <signal.h>
 
@@ -14,7 +13,7 @@ struct calibration_rules {
 	uint64_t symbols[CALIBRATION_LENGTHS_MAX];
 	size_t runs[CALIBRATION_LENGTHS_MAX]; /* at least 2 */
 	size_t length_count;
-	const char *source; /* only this one; NULL: all of the list */
+	const char *source; /* only this one; NULL: all frozen ones */
 	unsigned orders;    /* K */
 	uint64_t seed;
 	unsigned jobs;
@@ -33,8 +32,8 @@ struct calibration {
 
 /*
  * The same for any number of jobs, but for seconds. STATUS_BAD_USAGE: no such
- * source in the list; STATUS_CANCELLED; STATUS_NO_MEMORY; a row that fails on
- * a sample ends it all with that row's status.
+ * frozen source (source/frozen.h); STATUS_CANCELLED; STATUS_NO_MEMORY; a row
+ * that fails on a sample ends it all with that row's status.
  */
 MUST_USE enum status calibration_run(const struct calibration_rules *rules,
 				     struct calibration *calibration,

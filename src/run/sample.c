@@ -12,8 +12,8 @@
 static const struct analysis_rules interval_rules = {1999, 0.95};
 
 /* Rows that are run, where the program has them. */
-static const char *const row_names[] = {"ngram", "crossfit", "dirichlet", "ctw",
-					"mix"};
+static const char *const row_names[] = {"ngram", "crossfit", "dirichlet",
+					"ctw"};
 #define ROW_COUNT (sizeof(row_names) / sizeof(row_names[0]))
 
 /* Everything made of one sample; released whole. */
@@ -37,12 +37,12 @@ static void sample_release(struct sample *sample)
 static enum status draw(const struct sample_rules *rules, struct sample *sample,
 			struct reason *why)
 {
-	struct symbol_rules kind = {0};
+	const struct symbol_rules kind = {.kind = SYMBOL_BYTE};
 	struct slice bytes;
 
-	TRY(symbol_kind_parse(rules->source->symbols, &kind.kind, why));
 	TRY(memory_new(rules->symbols, 1, &sample->bytes));
-	source_fill(rules->source, rules->symbols, rules->seed, sample->bytes);
+	source_model_make(rules->model, rules->symbols, rules->seed,
+			  sample->bytes);
 	bytes = (struct slice){sample->bytes, rules->symbols};
 	TRY(sequence_init(&sample->sequence, bytes, &kind, why));
 	TRY(cuts_init(&sample->cuts, &sample->sequence));
@@ -57,8 +57,7 @@ static enum status describe(const struct sample_rules *rules,
 	const struct cuts *cuts = &sample->cuts;
 	struct corpus_fact *fact = &sample->fact;
 
-	(void)snprintf(fact->name, sizeof(fact->name), "%s",
-		       rules->source->name);
+	(void)snprintf(fact->name, sizeof(fact->name), "%s", rules->name);
 	fact->kind = sequence->kind;
 	fact->file_bytes = rules->symbols;
 	fact->canonical_bytes = sequence->canonical_bytes;

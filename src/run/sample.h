@@ -3,10 +3,11 @@
 #define RUN_SAMPLE_H
 
 #include "gap/trial.h"
-#include "source/source.h"
+#include "source/model.h"
 
 struct sample_rules {
-	const struct source *source; /* borrowed */
+	const char *name;                 /* of the source; borrowed */
+	const struct source_model *model; /* borrowed; of bytes */
 	uint64_t symbols;
 	uint64_t seed;
 	unsigned orders; /* K counted */
