@@ -175,7 +175,7 @@ static void bounds_enclose_the_rate_and_close_in(void **state)
 
 	(void)state;
 	for (size_t i = 0; i < sizeof(names) / sizeof(*names); i++) {
-		double lower = 0, upper = INFINITY;
+		double lower = 0, upper = HUGE_VAL;
 		struct source_model model;
 		struct known_rate rate;
 
