@@ -101,7 +101,7 @@ static MUST_USE enum status take_options(const struct words *words,
 		.stop = &stop_asked,
 	};
 	TRY(take_part(words, request, why));
-	return show_format(words, &request->format, why);
+	return show_format(words, "table", &request->format, why);
 }
 
 static MUST_USE enum status name_ledger(const struct words *words,
@@ -212,7 +212,9 @@ static const struct option_row options[] = {
 	{"seed", "S", "of the resampling; 1 by default"},
 	{"orders", "K", "highest n-gram order, 1 to 32; 16 by default"},
 	{"outside", NULL, "corpora may lie outside the set file's folder"},
-	{"as", "FORMAT", "the report's format: text, markdown, csv or json"},
+	{"as", "FORMAT",
+	 "the report's format: table (the default), text, "
+	 "markdown, csv or json"},
 	{"out", "FILE", "write the report there"},
 	{"quiet", NULL, "no progress and no talk on standard error"},
 	{NULL, NULL, NULL},
