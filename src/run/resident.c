@@ -20,9 +20,11 @@ static MUST_USE enum status open_bytes(struct resident *resident,
 
 	TRY(corpus_open(resident->declared, bytes_allowed, &resident->corpus,
 			why));
-	status = sequence_init(&resident->sequence, corpus_bytes(&resident->corpus),
+	status = sequence_init(&resident->sequence,
+			       corpus_bytes(&resident->corpus),
 			       &resident->declared->rules, why);
 	if (status != STATUS_OK) {
+		reason_prefix(why, "%s: ", resident->declared->file);
 		corpus_close(&resident->corpus);
 		return status;
 	}

@@ -33,7 +33,7 @@ enum status resume_digest(const struct plan *plan,
 				    sizeof(plan->rows[i].place));
 	if (status == STATUS_OK) {
 		digest_sha256(all.bytes, all.length, digest);
-(void)snprintf(text, RESUME_DIGEST_BYTES, "%s", digest);
+		(void)snprintf(text, RESUME_DIGEST_BYTES, "%s", digest);
 	}
 	buffer_release(&all);
 	return status;
