@@ -19,8 +19,9 @@
 	X(n)                                                                   \
 	X(name)                                                                \
 	X(level)                                                               \
-	X(layout) X(order) X(status) X(reason) X(bits_per_symbol) X(low) X(    \
-		high) X(interval_reason) X(leans) X(is_code) X(gap) X(gap_low) \
+	X(layout)                                                              \
+	X(order) X(status) X(reason) X(bits_per_symbol) X(low) X(high) X(      \
+		interval_reason) X(leans) X(is_code) X(gap) X(gap_low)         \
 		X(gap_high) X(gap_percent) X(restart) X(family) X(effort) X(   \
 			framing) X(bytes) X(bits_per_record) X(efficiency)     \
 			X(effective_order) X(flush_cost) X(encode_mb_per_s) X( \
