@@ -8,6 +8,7 @@ const struct estimator *const estimators[] = {
 	&estimator_uniform,
 	&estimator_ngram,
 	&estimator_match,
+	&estimator_dirichlet,
 	&estimator_mix,
 	&estimator_mix_deep,
 	NULL,
