@@ -45,15 +45,14 @@ uint32_t weights_draw(const struct weights *weights,
 		      struct random_stream *random)
 {
 	uint32_t point = random_below(random, weights->total);
-	uint32_t low = 0, high = weights->count - 1;
+	uint32_t low = 0, left = weights->count;
 
-	while (low < high) {
-		uint32_t middle = (low + high) / 2;
+	/* Halving without a branch on the point, which nothing predicts. */
+	while (left > 1) {
+		uint32_t half = left / 2;
 
-		if (point < weights->cumulative[middle])
-			high = middle;
-		else
-			low = middle + 1;
+		low += point >= weights->cumulative[low + half - 1] ? half : 0;
+		left -= half;
 	}
 	return low;
 }
