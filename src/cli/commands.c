@@ -7,5 +7,6 @@ const struct command *const commands[] = {
 	&command_synth,
 	&command_merge,
 	&command_methods,
+	&command_calibrate,
 	NULL,
 };

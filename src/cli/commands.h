@@ -10,5 +10,6 @@ extern const struct command command_corpora;
 extern const struct command command_synth;
 extern const struct command command_merge;
 extern const struct command command_methods;
+extern const struct command command_calibrate;
 
 #endif
