@@ -24,7 +24,7 @@ void weights_init(struct weights *weights, const uint32_t *values,
 void weights_init_zipf(struct weights *weights, uint32_t count, uint32_t scale,
 		       uint32_t shift)
 {
-	uint32_t values[WEIGHTS_MAX];
+	uint32_t values[WEIGHTS_MAX] = {0};
 
 	for (uint32_t r = 0; r < count; r++)
 		values[r] = scale / (r + shift);
@@ -33,7 +33,7 @@ void weights_init_zipf(struct weights *weights, uint32_t count, uint32_t scale,
 
 void weights_init_dice(struct weights *weights, uint32_t sides)
 {
-	uint32_t values[WEIGHTS_MAX];
+	uint32_t values[WEIGHTS_MAX] = {0};
 	uint32_t count = 2 * sides - 1;
 
 	for (uint32_t i = 0; i < count; i++)

@@ -1,0 +1,87 @@
+#include "predict/contexts.h"
+
+/* Two values in one. */
+static uint64_t pair(uint64_t a, uint64_t b)
+{
+	return (a + 1) * UINT64_C(0x9fb21c651e98df25) + b;
+}
+
+static void add(struct view *view, unsigned *n, uint64_t value)
+{
+	view->hash[*n] = context_hash(*n, value);
+	(*n)++;
+}
+
+/* Orders 1 to 6 and 8, shared by both families of text. */
+static unsigned look_orders(const struct past *past, struct view *view)
+{
+	unsigned n = 0;
+
+	for (unsigned order = 1; order <= 6; order++)
+		add(view, &n, last_bytes(past, order));
+	add(view, &n, past->last8);
+	return n;
+}
+
+unsigned contexts_prose(const struct past *past, struct view *view)
+{
+	unsigned n = look_orders(past, view);
+	unsigned c1 = past->last8 & 255;
+
+	add(view, &n, pair(past->word, c1));
+	add(view, &n, pair(past->word, past->word1) + c1);
+	add(view, &n, pair(pair(past->word, past->word1), past->word2) + c1);
+	add(view, &n, pair(past->word, past->word2) + c1);
+	add(view, &n, last_bytes(past, 4) >> 8);
+	view->select[2] = (uint16_t)c1;
+	if (past->plan.strength == STRENGTH_NIGHTLY)
+		return n;
+	add(view, &n, last_bytes(past, 4) & 0xff00ffff);
+	add(view, &n, last_bytes(past, 7));
+	add(view, &n, pair(past->last8, past->before8 & 0xffffffff));
+	return n;
+}
+
+/* The byte of the same field in the line before, if it is that long. */
+static unsigned field_above(const struct past *past)
+{
+	unsigned field = past->fields[0];
+	size_t from, offset = past->at - past->field_start[0][field];
+
+	if (field > past->fields[1] || past->line == 0)
+		return 256;
+	from = past->field_start[1][field] + offset;
+	if (from >= past->line)
+		return 257;
+	return past->bytes[from];
+}
+
+/* The byte of the same column in the line before, likewise. */
+static unsigned column_above(const struct past *past)
+{
+	size_t from = past->line_before + (past->at - past->line);
+
+	return from < past->line ? past->bytes[from] : 256;
+}
+
+unsigned contexts_lines(const struct past *past, struct view *view)
+{
+	unsigned n = look_orders(past, view);
+	unsigned c1 = past->last8 & 255;
+	unsigned field = past->fields[0], above = field_above(past), kind;
+	uint64_t in_field = pair(past->field_hash, field);
+
+	add(view, &n, pair(past->word, c1));
+	add(view, &n, pair(past->word, past->word1) + c1);
+	add(view, &n, pair(column_above(past), last_bytes(past, 2)));
+	add(view, &n, in_field);
+	add(view, &n, pair(in_field, past->field_hash1));
+	add(view, &n, pair(field * 512 + above, c1));
+	kind = c1 >= '0' && c1 <= '9' ? 1 : 0;
+	kind += above == c1 ? 2 : 0;
+	view->select[2] = (uint16_t)((field * 8 + kind) % SET_ROWS);
+	if (past->plan.strength == STRENGTH_NIGHTLY)
+		return n;
+	add(view, &n, pair(past->first, past->line_hash));
+	return n;
+}

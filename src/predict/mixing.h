@@ -1,0 +1,163 @@
+/*
+ * The mixer's arithmetic, included once by each instruction set's file, which
+ * defines lanes_dot and lanes_train before.
+ */
+#ifndef PREDICT_MIXING_H
+#define PREDICT_MIXING_H
+
+#include "predict/components.h"
+
+/*
+ * Steps of the weights, in 2^-10 of error times input: four times as large at
+ * first, as far as the decisions seen are few.
+ */
+#define RATE_LAST 40
+#define RATE_MORE 120
+#define LEARNING_END (1U << 20)
+
+ALWAYS_INLINE int32_t logit_clip(int32_t x)
+{
+	if (x > LOGIT_MAX)
+		return LOGIT_MAX;
+	return x < -LOGIT_MAX ? -LOGIT_MAX : x;
+}
+
+/* Error of a 16-bit probability, in -65535..65535. */
+ALWAYS_INLINE int32_t error_of(unsigned p, unsigned bit)
+{
+	return (int32_t)(bit << 16) - (int32_t)p;
+}
+
+ALWAYS_INLINE void stage_predict(struct mixer *mixer, struct mixing *mixing,
+				 unsigned i, unsigned row, unsigned *p)
+{
+	unsigned at = (unsigned)(mixing->x + STAGE_STEP * (STAGE_ROOM / 2));
+	unsigned low = at / STAGE_STEP, part = at % STAGE_STEP;
+	uint32_t *entry = &mixer->stage[i][row * STAGE_ROOM + low];
+	uint64_t sum = (uint64_t)entry[0] * (STAGE_STEP - part) +
+		       (uint64_t)entry[1] * part;
+
+	mixing->stage[i] = entry;
+	mixing->nearer[i] = part >= STAGE_STEP / 2;
+	*p = (unsigned)(sum / STAGE_STEP >> 16);
+}
+
+ALWAYS_INLINE void stage_update(struct mixing *mixing, unsigned i, unsigned bit)
+{
+	uint32_t *entry = mixing->stage[i] + mixing->nearer[i];
+
+	if (bit)
+		*entry += (UINT32_MAX - *entry) >> 6;
+	else
+		*entry -= *entry >> 6;
+}
+
+/* Set i with the weights of a row of it. */
+ALWAYS_INLINE int64_t set_predict(struct mixer *mixer, struct mixing *mixing,
+				  unsigned i, size_t row, unsigned inputs)
+{
+	int16_t *weights =
+		mixer->weights + (i * (size_t)SET_ROWS + row) * inputs;
+	int32_t dot = lanes_dot(mixing->inputs, weights, inputs) >> 14;
+
+	dot = logit_clip(dot);
+	mixing->weights[i] = weights;
+	mixing->dot[i] = dot;
+	mixing->p[i] = mixer->tables.squash[dot + LOGIT_MAX];
+	return (int64_t)dot * mixing->final[i];
+}
+
+ALWAYS_INLINE void set_update(struct mixer *mixer, struct mixing *mixing,
+			      unsigned i, unsigned bit, unsigned inputs)
+{
+	int32_t step = (error_of(mixing->p[i], bit) * mixer->rate) >> 10;
+	int32_t error = error_of(mixing->p_final, bit) >> 3;
+
+	mixing->final[i] += (mixing->dot[i] * error) >> 13;
+	lanes_train(mixing->inputs, mixing->weights[i], inputs, (int16_t)step);
+}
+
+ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
+				   const struct selection *at,
+				   struct mixing *mixing, unsigned inputs)
+{
+	unsigned match = at->step * 8 + at->bit;
+	unsigned row = (at->view->last * 3U + at->partial * 5U) % STAGE_ROWS;
+	int64_t sum;
+	unsigned p0, p1, p;
+
+	mixing->final = mixer->final[match];
+	sum = set_predict(mixer, mixing, 0, at->partial, inputs);
+	sum += set_predict(mixer, mixing, 1, match, inputs);
+	sum += set_predict(mixer, mixing, 2, at->view->select[2], inputs);
+	mixing->x = logit_clip((int32_t)(sum >> 16));
+	mixing->p_final = mixer->tables.squash[mixing->x + LOGIT_MAX];
+	stage_predict(mixer, mixing, 0, at->partial, &p0);
+	stage_predict(mixer, mixing, 1, row, &p1);
+	p = (2 * mixing->p_final + p0 + p1 + 2) >> 2;
+	return p < 1 ? 1 : p > 65535 ? 65535 : p;
+}
+
+ALWAYS_INLINE void mix_update(struct mixer *mixer, struct mixing *mixing,
+			      unsigned bit, unsigned inputs)
+{
+	set_update(mixer, mixing, 0, bit, inputs);
+	set_update(mixer, mixing, 1, bit, inputs);
+	set_update(mixer, mixing, 2, bit, inputs);
+	stage_update(mixing, 0, bit);
+	stage_update(mixing, 1, bit);
+	if (mixer->seen < LEARNING_END && mixer->seen++ % 64 == 0)
+		mixer->rate = RATE_LAST + (int32_t)(RATE_MORE * 2048 /
+						    (2048 + mixer->seen));
+}
+
+/* All eight bits of a byte, given the inputs of each. */
+ALWAYS_INLINE void mix_byte(struct mixer *mixer, const struct view *view,
+			    unsigned byte, bool lane_failed,
+			    const int16_t *inputs, struct tally *tally,
+			    unsigned width)
+{
+	struct selection at = {.view = view, .partial = 1};
+	struct mixing mixing;
+
+	for (at.bit = 0; at.bit < 8; at.bit++) {
+		unsigned bit = byte >> (7 - at.bit) & 1, p;
+
+		at.step = match_holds(view, 0, at.partial, at.bit, lane_failed);
+		/* The byte is not the expected one: nothing left to say. */
+		if (lane_failed && at.bit == 7 && at.step)
+			break;
+		mixing.inputs = inputs + (size_t)at.bit * width;
+		p = mix_predict(mixer, &at, &mixing, width);
+		tally_add(tally, bit ? p : 65536 - p);
+		mix_update(mixer, &mixing, bit, width);
+		at.partial = at.partial * 2 + bit;
+	}
+}
+
+static unsigned LANES_PREDICT(struct mixer *mixer, const struct selection *at,
+			      struct mixing *mixing)
+{
+	return mix_predict(mixer, at, mixing, mixer->inputs);
+}
+
+static void LANES_UPDATE(struct mixer *mixer, struct mixing *mixing,
+			 unsigned bit)
+{
+	mix_update(mixer, mixing, bit, mixer->inputs);
+}
+
+/* The widths are spelt out so that the loops are unrolled. */
+static void LANES_BYTE(struct mixer *mixer, const struct view *view,
+		       unsigned byte, bool lane_failed, const int16_t *inputs,
+		       struct tally *tally)
+{
+	if (mixer->inputs == INPUTS_NIGHTLY)
+		mix_byte(mixer, view, byte, lane_failed, inputs, tally,
+			 INPUTS_NIGHTLY);
+	else
+		mix_byte(mixer, view, byte, lane_failed, inputs, tally,
+			 INPUTS_DEEP);
+}
+
+#endif

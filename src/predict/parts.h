@@ -1,0 +1,126 @@
+/* The inside of a predictor, shared by the files that make it run. */
+#ifndef PREDICT_PARTS_H
+#define PREDICT_PARTS_H
+
+#include "predict/cells.h"
+#include "predict/past.h"
+#include "predict/predictor.h"
+
+/* Inputs of the mixer: two a context, then the common ones. */
+#define INPUTS_NIGHTLY 32
+#define INPUTS_DEEP 64
+#define INPUTS_MAX INPUTS_DEEP
+#define COMMON 6 /* order 0, order 1, match (2), second match, constant */
+
+#define SETS 3
+
+/* Final stages: interpolated tables over the logistic domain. */
+#define STAGE_STEP 128
+#define STAGE_ROOM 49
+#define STAGE_ROWS 1024
+
+/* Bytes between which the passes of predictor_measure_q32 alternate. */
+#define CHUNK 16
+
+/* One decision's way through the mixer, from prediction to update. */
+struct mixing {
+	const int16_t *inputs;
+	int16_t *weights[SETS];
+	int32_t *final;
+	int32_t dot[SETS];
+	int32_t x; /* of the final mixer */
+	unsigned p[SETS], p_final;
+	uint32_t *stage[2]; /* lower of the two entries used */
+	unsigned nearer[2]; /* which of them is nearer */
+};
+
+/* What selects weights and stages for a decision. */
+struct selection {
+	unsigned partial;  /* bits of the byte so far after a leading 1 */
+	unsigned bit;      /* 0..7 */
+	unsigned step;     /* of the first match while it holds, else 0 */
+	unsigned expected; /* its bit */
+	const struct view *view;
+};
+
+/* The mixer's weights and final stages. */
+struct mixer {
+	struct predict_tables tables;
+	unsigned inputs;
+	int16_t *weights; /* owned; SETS x SET_ROWS x inputs */
+	int32_t final[SET_ROWS][SETS];
+	uint32_t stage[2][STAGE_ROWS * STAGE_ROOM];
+	uint32_t seen; /* decisions, up to the end of fast learning */
+	int32_t rate;  /* of learning, by seen */
+};
+
+/* Decisions whose product of probabilities has yet to be turned into bits. */
+struct tally {
+	uint64_t mantissa; /* in 2^63..2^64 - 1 */
+	uint64_t halvings;
+};
+
+/* The mixer in one instruction set. */
+struct lanes {
+	/* Fills mixing, returns the probability of a one. */
+	unsigned (*predict)(struct mixer *mixer, const struct selection *at,
+			    struct mixing *mixing);
+	void (*update)(struct mixer *mixer, struct mixing *mixing,
+		       unsigned bit);
+	/* Both, over the eight bits of a byte; inputs are consecutive. */
+	void (*byte)(struct mixer *mixer, const struct view *view,
+		     unsigned byte, bool lane_failed, const int16_t *inputs,
+		     struct tally *tally);
+};
+
+extern const struct lanes lanes_plain;
+/* NULL where the processor has nothing better than plain. */
+const struct lanes *lanes_fast(void);
+
+/* Where a context stands within the byte being coded. */
+struct place {
+	uint8_t *line, *slot;
+	uint8_t tag;
+};
+
+struct predictor {
+	struct predict_plan plan;
+	struct mixer mixer;
+	const struct lanes *lanes;
+	struct past past;
+	unsigned contexts;
+	uint8_t *lines; /* owned; contexts x lines_each lines */
+	unsigned lines_log2;
+	uint32_t trend[CONTEXTS_MAX][256]; /* by bit history */
+	uint16_t order0[256];
+	uint16_t *order1; /* owned; 65536 */
+	uint32_t match_cell[2][MATCH_STEPS];
+	uint32_t lane_cell[MATCH_STEPS][256];
+	/* between decisions */
+	struct view view;
+	struct place place[CONTEXTS_MAX];
+	struct mixing mixing;
+	bool begun;   /* view and place are those of the byte being coded */
+	bool pending; /* a byte is complete but not yet pushed */
+	bool lane_failed, in_lane;
+	unsigned partial, bit;
+	_Alignas(64) int16_t inputs[INPUTS_MAX];
+	/* passes */
+	struct tally tally;
+	struct view *views;    /* owned; 2 x CHUNK */
+	int16_t *chunk_inputs; /* owned; CHUNK x 8 x inputs */
+};
+
+static inline void tally_add(struct tally *tally, unsigned p16)
+{
+	uint64_t product = (tally->mantissa >> 16) * p16;
+	unsigned zeros = (unsigned)__builtin_clzll(product);
+
+	tally->mantissa = product << zeros;
+	tally->halvings += zeros;
+}
+
+/* Bits so far in Q32. */
+int64_t tally_q32(const struct tally *tally);
+
+#endif

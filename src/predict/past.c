@@ -1,0 +1,241 @@
+#include "predict/past.h"
+
+#include "predict/contexts.h"
+
+#include "base/memory.h"
+
+#include <string.h>
+
+/* Matches this long have their next byte coded in one decision. */
+#define LANE_LENGTH 32
+/* A match shorter than this gives way to a longer one. */
+#define FIRM_LENGTH 16
+#define MISSES_MAX 8
+/* Agreement is counted backwards no further than this when found. */
+#define VERIFY_MAX 32
+
+static MUST_USE enum status match_init(struct match *match, size_t bytes,
+				       unsigned least)
+{
+	unsigned bits = 10;
+
+	while (bits < 22 && ((size_t)1 << bits) < bytes)
+		bits++;
+	*match = (struct match){.shift = 32 - bits, .least = least};
+	return memory_new_zeroed((size_t)1 << bits, sizeof(*match->table),
+				 &match->table);
+}
+
+enum status past_init(struct past *past, const struct predict_plan *plan)
+{
+	bool text = plan->family <= FAMILY_LINES;
+
+	*past = (struct past){.plan = *plan};
+	TRY(match_init(&past->match[0], plan->bytes, text ? 6 : 5));
+	if (plan->strength == STRENGTH_NIGHTLY)
+		return STATUS_OK;
+	if (match_init(&past->match[1], plan->bytes, 8) == STATUS_OK)
+		return STATUS_OK;
+	past_release(past);
+	return STATUS_NO_MEMORY;
+}
+
+void past_release(struct past *past)
+{
+	memory_free(past->match[0].table);
+	memory_free(past->match[1].table);
+	*past = (struct past){0};
+}
+
+static void match_restart(struct match *match)
+{
+	if (!match->table)
+		return;
+	memset(match->table, 0,
+	       ((size_t)1 << (32 - match->shift)) * sizeof(*match->table));
+	match->at = 0;
+	match->length = match->misses = 0;
+}
+
+void past_restart(struct past *past, const uint8_t *bytes)
+{
+	struct past fresh = {.plan = past->plan, .bytes = bytes};
+
+	match_restart(&past->match[0]);
+	match_restart(&past->match[1]);
+	fresh.match[0] = past->match[0];
+	fresh.match[1] = past->match[1];
+	*past = fresh;
+}
+
+/* Where a context of the last bytes (latest lowest) is looked up. */
+static size_t match_entry(const struct match *match, uint64_t last8)
+{
+	uint64_t context = last8 << (64 - 8 * match->least);
+
+	context ^= context >> 29;
+	return (size_t)(context * UINT64_C(0xd6e8feb86659fd93) >>
+			(32 + match->shift));
+}
+
+/* How many bytes before a and before b agree; b is the later one. */
+static uint32_t agreement(const uint8_t *bytes, size_t a, size_t b)
+{
+	uint32_t length = 0;
+
+	while (length < VERIFY_MAX && length < a &&
+	       bytes[a - 1 - length] == bytes[b - 1 - length])
+		length++;
+	return length;
+}
+
+/* Follows the match over the byte just taken in, or finds another. */
+static void match_push(struct match *match, const uint8_t *bytes, size_t at,
+		       uint64_t last8)
+{
+	uint32_t *entry;
+
+	if (match->at) {
+		if (bytes[match->at] == bytes[at - 1]) {
+			match->length++;
+			if (match->length >= FIRM_LENGTH)
+				match->misses = 0;
+		} else {
+			match->length = 0;
+			match->misses++;
+		}
+		match->at = match->misses < MISSES_MAX ? match->at + 1 : 0;
+	}
+	if (at < match->least)
+		return;
+	entry = &match->table[match_entry(match, last8)];
+	if ((!match->at || match->length < FIRM_LENGTH) && *entry) {
+		uint32_t length = agreement(bytes, *entry, at);
+
+		if (length >= match->least &&
+		    (!match->at || length > match->length)) {
+			match->at = *entry;
+			match->length = length;
+			match->misses = 0;
+		}
+	}
+	*entry = (uint32_t)at;
+}
+
+/* Length, and whether it lately failed, in MATCH_STEPS steps. */
+static uint8_t match_step(const struct match *match)
+{
+	uint32_t length = match->length;
+	unsigned log2;
+
+	if (!match->at)
+		return 0;
+	if (match->misses)
+		return (uint8_t)(28 + (length > 1) + (length > 7));
+	if (length < 16)
+		return (uint8_t)(length ? length : 1);
+	if (length < 32)
+		return (uint8_t)(16 + (length - 16) / 4);
+	log2 = 31 - (unsigned)__builtin_clz(length);
+	return (uint8_t)(log2 > 12 ? 27 : 15 + log2);
+}
+
+static void push_word(struct past *past, unsigned c)
+{
+	if (is_word_byte(c)) {
+		unsigned folded = c >= 'A' && c <= 'Z' ? c + 32 : c;
+
+		past->word = (past->word + folded + 1) * UINT32_C(0x2c9277b5);
+		return;
+	}
+	if (!past->word)
+		return;
+	past->word2 = past->word1;
+	past->word1 = past->word;
+	past->word = 0;
+}
+
+static void begin_line(struct past *past)
+{
+	unsigned fields = past->fields[0];
+
+	memcpy(past->field_start[1], past->field_start[0],
+	       sizeof(past->field_start[0]));
+	past->fields[1] = fields;
+	past->fields[0] = 0;
+	past->field_start[0][0] = past->at;
+	past->line_before = past->line;
+	past->line = past->at;
+	past->first = 0;
+	past->line_hash = 0;
+	past->field_hash = past->field_hash1 = 0;
+}
+
+static void push_line(struct past *past, unsigned c)
+{
+	if (c == '\n') {
+		begin_line(past);
+		return;
+	}
+	if (c != ' ' && c != '\t' && !(past->first & 255)) {
+		uint32_t indent = (uint32_t)(past->at - past->line);
+
+		past->first = indent << 8 | c;
+	}
+	past->line_hash = (past->line_hash + c + 1) * UINT32_C(0x2c9277b5);
+	if (!is_field_end(c)) {
+		past->field_hash =
+			(past->field_hash + c + 1) * UINT32_C(0x2c9277b5);
+		return;
+	}
+	if (past->fields[0] + 1 < FIELDS_MAX)
+		past->field_start[0][++past->fields[0]] = past->at;
+	past->field_hash1 = past->field_hash;
+	past->field_hash = 0;
+}
+
+void past_push(struct past *past)
+{
+	unsigned c = past->bytes[past->at++];
+
+	past->before8 = past->before8 << 8 | past->last8 >> 56;
+	past->last8 = past->last8 << 8 | c;
+	if (past->plan.family <= FAMILY_BINARY)
+		push_word(past, c);
+	if (past->plan.family == FAMILY_LINES)
+		push_line(past, c);
+	match_push(&past->match[0], past->bytes, past->at, past->last8);
+	if (past->match[1].table)
+		match_push(&past->match[1], past->bytes, past->at, past->last8);
+}
+
+void past_look(const struct past *past, struct view *view)
+{
+	const struct match *match = past->match;
+
+	for (unsigned i = 0; i < 2; i++) {
+		view->match_step[i] = match_step(&match[i]);
+		view->expected[i] = match[i].at ? past->bytes[match[i].at] : 0;
+	}
+	view->last = (uint8_t)past->last8;
+	view->lane = match[0].at && match[0].length >= LANE_LENGTH;
+	contexts_look(past, view);
+}
+
+void past_warm(const struct past *past, const uint8_t *bytes, size_t position)
+{
+	const struct match *match = past->match;
+	uint64_t last8 = 0;
+
+	if (position < 8)
+		return;
+	for (unsigned i = 0; i < 8; i++)
+		last8 = last8 << 8 | bytes[position - 8 + i];
+	__builtin_prefetch(&match->table[match_entry(match, last8)], 1);
+}
+
+unsigned past_contexts(const struct predict_plan *plan)
+{
+	return plan->strength == STRENGTH_DEEP ? CONTEXTS_NIGHTLY + 2
+					       : CONTEXTS_NIGHTLY;
+}

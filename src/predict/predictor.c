@@ -1,0 +1,280 @@
+#include "predict/predictor.h"
+
+#include "predict/components.h"
+#include "predict/steps.h"
+
+#include "base/log2.h"
+#include "base/memory.h"
+
+#include <assert.h>
+
+/* Lines of a context: enough for the bytes at hand, within the memory given. */
+static unsigned lines_log2_for(const struct predict_plan *plan)
+{
+	unsigned most = plan->strength == STRENGTH_DEEP ? 19 : 18, log2 = 8;
+
+	while (log2 < most && ((size_t)4 << log2) < plan->bytes)
+		log2++;
+	return log2;
+}
+
+static MUST_USE enum status predictor_allocate(struct predictor *made)
+{
+	size_t inputs = made->mixer.inputs;
+
+	TRY(past_init(&made->past, &made->plan));
+	TRY(memory_new_lines((size_t)made->contexts << made->lines_log2,
+			     LINE_BYTES, &made->lines));
+	TRY(memory_new_lines((size_t)SETS * SET_ROWS * inputs, sizeof(int16_t),
+			     &made->mixer.weights));
+	TRY(memory_new_lines(65536, sizeof(uint16_t), &made->order1));
+	TRY(memory_new(2 * CHUNK, sizeof(*made->views), &made->views));
+	return memory_new_lines(CHUNK * 8 * inputs, sizeof(int16_t),
+				&made->chunk_inputs);
+}
+
+enum status predictor_new(const struct predict_plan *plan,
+			  struct predictor **predictor)
+{
+	struct predictor *made;
+	enum status status;
+
+	TRY(memory_new_lines(1, sizeof(*made), &made));
+	made->plan = *plan;
+	made->contexts = past_contexts(plan);
+	made->lines_log2 = lines_log2_for(plan);
+	made->mixer.inputs =
+		plan->strength == STRENGTH_DEEP ? INPUTS_DEEP : INPUTS_NIGHTLY;
+	assert(2 * made->contexts + COMMON <= made->mixer.inputs);
+	tables_build(&made->mixer.tables);
+	predictor_set_lanes(made, LANES_BEST);
+	status = predictor_allocate(made);
+	if (status != STATUS_OK) {
+		predictor_free(made);
+		return status;
+	}
+	*predictor = made;
+	return STATUS_OK;
+}
+
+void predictor_free(struct predictor *predictor)
+{
+	if (!predictor)
+		return;
+	past_release(&predictor->past);
+	memory_free(predictor->lines);
+	memory_free(predictor->mixer.weights);
+	memory_free(predictor->order1);
+	memory_free(predictor->views);
+	memory_free(predictor->chunk_inputs);
+	memory_free(predictor);
+}
+
+void predictor_set_lanes(struct predictor *predictor, enum predict_lanes lanes)
+{
+	const struct lanes *fast = lanes_fast();
+
+	predictor->lanes = lanes == LANES_BEST && fast ? fast : &lanes_plain;
+}
+
+/* Every input starts with the same say, and every set as well. */
+static void mixer_restart(struct mixer *mixer, unsigned contexts)
+{
+	size_t rows = (size_t)SETS * SET_ROWS;
+
+	for (size_t row = 0; row < rows; row++) {
+		int16_t *w = mixer->weights + row * mixer->inputs;
+
+		for (unsigned i = 0; i < mixer->inputs; i++)
+			w[i] = i < 2 * contexts && i % 2 ? 512 : 3600;
+		w[mixer->inputs - 1] = 0;
+	}
+	for (size_t row = 0; row < SET_ROWS; row++) {
+		for (unsigned i = 0; i < SETS; i++)
+			mixer->final[row][i] = 65536 / SETS;
+	}
+	for (size_t row = 0; row < STAGE_ROWS; row++) {
+		for (int i = 0; i < STAGE_ROOM; i++) {
+			int x = (i - STAGE_ROOM / 2) * STAGE_STEP;
+			size_t at = row * STAGE_ROOM + (size_t)i;
+			uint32_t p;
+
+			x = x > LOGIT_MAX ? LOGIT_MAX : x;
+			x = x < -LOGIT_MAX ? -LOGIT_MAX : x;
+			p = (uint32_t)mixer->tables.squash[x + LOGIT_MAX];
+			mixer->stage[0][at] = p << 16;
+			mixer->stage[1][at] = p << 16;
+		}
+	}
+	mixer->seen = 0;
+	mixer->rate = 160;
+}
+
+void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
+{
+	const struct predict_tables *tables = &predictor->mixer.tables;
+
+	past_restart(&predictor->past, bytes);
+	memset(predictor->lines, 0,
+	       ((size_t)predictor->contexts << predictor->lines_log2) *
+		       LINE_BYTES);
+	mixer_restart(&predictor->mixer, predictor->contexts);
+	for (unsigned i = 0; i < CONTEXTS_MAX; i++)
+		memcpy(predictor->trend[i], tables->start,
+		       sizeof(tables->start));
+	for (unsigned i = 0; i < 256; i++)
+		predictor->order0[i] = 32768;
+	for (unsigned i = 0; i < 65536; i++)
+		predictor->order1[i] = 32768;
+	for (unsigned i = 0; i < MATCH_STEPS; i++) {
+		/* A match of n bytes is right about n + 1 times in n + 2. */
+		uint32_t right = UINT32_MAX / (i + 2) * (i + 1);
+
+		predictor->match_cell[0][i] = (right & ~1023U) | 6;
+		predictor->match_cell[1][i] = (right & ~1023U) | 6;
+		for (unsigned j = 0; j < 256; j++)
+			predictor->lane_cell[i][j] =
+				(UINT32_MAX / 64 * 63 & ~1023U) | 20;
+	}
+	predictor->tally = (struct tally){.mantissa = UINT64_C(1) << 63};
+	predictor->begun = predictor->pending = false;
+	predictor->bit = 0;
+	predictor->partial = 1;
+}
+
+static void begin_byte(struct predictor *p)
+{
+	if (p->pending)
+		past_push(&p->past);
+	p->pending = false;
+	past_look(&p->past, &p->view);
+	p->in_lane = p->view.lane;
+	p->lane_failed = false;
+	p->bit = 0;
+	p->partial = 1;
+	p->begun = true;
+}
+
+/* All inputs of the next bit. */
+static void gather(struct predictor *p)
+{
+	const struct predict_tables *tables = &p->mixer.tables;
+	int16_t *common = p->inputs + p->mixer.inputs - COMMON;
+
+	for (unsigned i = 0; i < p->contexts; i++) {
+		struct place *place = &p->place[i];
+		uint32_t trend;
+
+		if (p->bit == 0)
+			p->trend[i][0] = TREND_HALF;
+		if (p->bit == 0)
+			place_begin(place, context_lines(p, i), p->lines_log2,
+				    p->view.hash[i]);
+		if (p->bit == 4)
+			place_middle(place, p->partial & 15);
+		trend = p->trend[i]
+				[place->slot[nibble_node(p->partial, p->bit)]];
+		p->inputs[2 * i] = trend_logit(tables, trend);
+		p->inputs[2 * i + 1] = trend_share(trend);
+	}
+	common_inputs(p, &p->view, p->partial, p->bit, p->lane_failed, common);
+}
+
+unsigned predictor_probability(struct predictor *p)
+{
+	struct selection at;
+
+	if (p->plan.family == FAMILY_FLAT)
+		return 32768;
+	if (!p->begun)
+		begin_byte(p);
+	if (p->in_lane)
+		return lane_p16(p, &p->view);
+	gather(p);
+	at = (struct selection){.partial = p->partial, .bit = p->bit};
+	at.view = &p->view;
+	at.step = match_holds(&p->view, 0, p->partial, p->bit, p->lane_failed);
+	p->mixing.inputs = p->inputs;
+	return p->lanes->predict(&p->mixer, &at, &p->mixing);
+}
+
+unsigned predictor_decision(const struct predictor *p, uint8_t byte)
+{
+	if (p->plan.family != FAMILY_FLAT && p->in_lane)
+		return byte == p->view.expected[0];
+	return byte >> (7 - p->bit) & 1;
+}
+
+static bool complete(struct predictor *p, uint8_t value, uint8_t *byte)
+{
+	p->begun = false;
+	p->pending = true;
+	p->bit = 0;
+	p->partial = 1;
+	*byte = value;
+	return true;
+}
+
+static bool update_lane(struct predictor *p, unsigned decision, uint8_t *byte)
+{
+	lane_update(p, &p->view, decision);
+	p->in_lane = false;
+	if (decision)
+		return complete(p, p->view.expected[0], byte);
+	p->lane_failed = true;
+	return false;
+}
+
+static void learn_history(struct predictor *p, unsigned i, unsigned bit)
+{
+	uint8_t *history = &p->place[i].slot[nibble_node(p->partial, p->bit)];
+	uint32_t *trend = &p->trend[i][*history];
+
+	*trend = trend_moved(*trend, bit);
+	*history = p->mixer.tables.next[*history][bit];
+}
+
+/* A bit that a failed lane leaves no choice: the byte is not the expected. */
+static bool implied(const struct predictor *p)
+{
+	return p->lane_failed && p->bit == 7 &&
+	       p->partial == (p->view.expected[0] | 256U) >> 1;
+}
+
+/* All models take the bit in; the mixer, if it was a decision, has done so. */
+static void learn(struct predictor *p, unsigned bit)
+{
+	for (unsigned i = 0; i < p->contexts; i++)
+		learn_history(p, i, bit);
+	common_update(p, &p->view, p->partial, p->bit, p->lane_failed, bit);
+	p->partial = p->partial * 2 + bit;
+	p->bit++;
+}
+
+bool predictor_update(struct predictor *p, unsigned decision, uint8_t *byte)
+{
+	if (p->plan.family == FAMILY_FLAT) {
+		p->partial = p->partial * 2 + decision;
+		if (++p->bit < 8)
+			return false;
+		return complete(p, (uint8_t)p->partial, byte);
+	}
+	if (p->in_lane)
+		return update_lane(p, decision, byte);
+	p->lanes->update(&p->mixer, &p->mixing, decision);
+	learn(p, decision);
+	if (implied(p)) {
+		gather(p);
+		learn(p, ~p->view.expected[0] & 1U);
+	}
+	if (p->bit < 8)
+		return false;
+	return complete(p, (uint8_t)p->partial, byte);
+}
+
+int64_t tally_q32(const struct tally *tally)
+{
+	int64_t top = (int64_t)log2_q32(tally->mantissa) - 63 * BIT_Q32;
+
+	return (int64_t)(tally->halvings << 32) - top;
+}
