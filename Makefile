@@ -121,8 +121,8 @@ build/fuzz/%: tests/fuzz/%.c $(SOURCES) $(SUPPORT)
 fuzz: $(FUZZERS) ## libFuzzer on every entry, FUZZ_SECONDS each
 	@set -e; for fuzzer in $(FUZZERS); do \
 		mkdir -p $$fuzzer.corpus; \
-		$$fuzzer -max_total_time=$(FUZZ_SECONDS) -print_final_stats=0 $$fuzzer.corpus \
-			$(wildcard tests/fuzz/seeds); done
+		$$fuzzer -max_total_time=$(FUZZ_SECONDS) $$fuzzer.corpus \
+			tests/fuzz/seeds_$${fuzzer#build/fuzz/fuzz_}; done
 
 coverage: ## line coverage of the tests, by gcov
 	@$(MAKE) --no-print-directory MODE=coverage test faults

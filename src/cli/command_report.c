@@ -10,7 +10,7 @@ static enum exit_code report_run(const struct words *words)
 	int failed = 0;
 	enum status status;
 
-	if (show_format(words, &format, &why) != STATUS_OK ||
+	if (show_format(words, "text", &format, &why) != STATUS_OK ||
 	    words_number(words, "survey", 1, INT64_MAX, &id, &why) !=
 		    STATUS_OK ||
 	    ledger_open(words->operands[0], LEDGER_READ, &ledger, &why) !=
@@ -25,7 +25,7 @@ static enum exit_code report_run(const struct words *words)
 }
 
 static const struct option_row options[] = {
-	{"as", "FORMAT", "text (the default), markdown, csv or json"},
+	{"as", "FORMAT", "text (the default), table, markdown, csv or json"},
 	{"out", "FILE", "write there instead of standard output"},
 	{"survey", "ID", "this survey of the ledger; the newest by default"},
 	{NULL, NULL, NULL},

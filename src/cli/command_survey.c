@@ -101,7 +101,7 @@ static MUST_USE enum status take_options(const struct words *words,
 		.stop = &stop_asked,
 	};
 	TRY(take_part(words, request, why));
-	return show_format(words, &request->format, why);
+	return show_format(words, "table", &request->format, why);
 }
 
 static MUST_USE enum status name_ledger(const struct words *words,
@@ -121,19 +121,6 @@ static MUST_USE enum status name_ledger(const struct words *words,
 	return STATUS_OK;
 }
 
-static MUST_USE enum status
-measure(const struct set *set, struct request *request, struct ledger *ledger,
-	struct run_outcome *outcome, struct reason *why)
-{
-	struct plan plan;
-	enum status status;
-
-	TRY(plan_init(&plan, set, &request->selection, why));
-	status = survey_run(&plan, ledger, &request->rules, outcome, why);
-	plan_release(&plan);
-	return status;
-}
-
 static void tell_end(const struct request *request,
 		     const struct run_outcome *outcome, bool quiet)
 {
@@ -148,33 +135,50 @@ static void tell_end(const struct request *request,
 			      (long long)outcome->survey, request->ledger);
 }
 
+/* Measures into the ledger and shows the report. */
+static MUST_USE enum status
+survey_into(const struct words *words, const struct plan *plan,
+	    struct request *request, struct ledger *ledger,
+	    enum exit_code *code, struct reason *why)
+{
+	bool quiet = words_get(words, "quiet") != NULL;
+	struct meter meter;
+	struct run_outcome outcome = {0};
+	int failed = 0;
+	enum status status;
+
+	meter_init(&meter, !quiet);
+	request->rules.watch = meter_watch;
+	request->rules.context = &meter;
+	catch_signals();
+	status = survey_run(plan, ledger, &request->rules, &outcome, why);
+	meter_clear(&meter);
+	TRY(status);
+	TRY(show_survey(ledger, outcome.survey, request->format,
+			words_get(words, "out"), &failed, why));
+	tell_end(request, &outcome, quiet);
+	*code = failed || outcome.stopped ? EXIT_FAILED : EXIT_DONE;
+	return STATUS_OK;
+}
+
 static MUST_USE enum status survey_set(const struct words *words,
 				       const struct set *set,
 				       struct request *request,
 				       enum exit_code *code, struct reason *why)
 {
-	bool quiet = words_get(words, "quiet") != NULL;
-	struct meter meter;
+	struct plan plan;
 	struct ledger *ledger;
-	struct run_outcome outcome = {0};
-	int failed = 0;
 	enum status status;
 
 	TRY(name_ledger(words, set, request, why));
-	TRY(ledger_open(request->ledger, LEDGER_WRITE, &ledger, why));
-	meter_init(&meter, !quiet);
-	request->rules.watch = meter_watch;
-	request->rules.context = &meter;
-	catch_signals();
-	status = measure(set, request, ledger, &outcome, why);
-	meter_clear(&meter);
+	/* What cannot be planned leaves no ledger behind. */
+	TRY(plan_init(&plan, set, &request->selection, why));
+	status = ledger_open(request->ledger, LEDGER_WRITE, &ledger, why);
 	if (status == STATUS_OK) {
-		status = show_survey(ledger, outcome.survey, request->format,
-				     words_get(words, "out"), &failed, why);
-		tell_end(request, &outcome, quiet);
+		status = survey_into(words, &plan, request, ledger, code, why);
+		ledger_close(ledger);
 	}
-	ledger_close(ledger);
-	*code = failed || outcome.stopped ? EXIT_FAILED : EXIT_DONE;
+	plan_release(&plan);
 	return status;
 }
 
@@ -212,7 +216,9 @@ static const struct option_row options[] = {
 	{"seed", "S", "of the resampling; 1 by default"},
 	{"orders", "K", "highest n-gram order, 1 to 32; 16 by default"},
 	{"outside", NULL, "corpora may lie outside the set file's folder"},
-	{"as", "FORMAT", "the report's format: text, markdown, csv or json"},
+	{"as", "FORMAT",
+	 "the report's format: table (the default), text, "
+	 "markdown, csv or json"},
 	{"out", "FILE", "write the report there"},
 	{"quiet", NULL, "no progress and no talk on standard error"},
 	{NULL, NULL, NULL},

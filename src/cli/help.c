@@ -11,15 +11,16 @@ static const char *const what_it_does =
 	"bits per symbol achieved, with a gap analysis and intervals from\n"
 	"resampled blocks.";
 
-static const char *const exit_words[] = {
-	"0",
-	"done",
-	"1",
-	"a cell, a method, a corpus or a gate failed; what it was is "
-	"recorded and shown",
-	"2",
-	"wrong usage, or input or output that cannot be used",
+static const struct {
+	const char *code, *words;
+} exits[] = {
+	{"0", "done"},
+	{"1", "a cell, a method, a corpus or a gate failed; it is recorded "
+	      "and shown"},
+	{"2", "wrong usage, or input or output that cannot be used"},
 };
+
+#define EXIT_COUNT (sizeof(exits) / sizeof(*exits))
 
 static void text_option(const struct option_row *row)
 {
@@ -90,10 +91,9 @@ static void roff_head(const char *name, const char *summary)
 static void roff_exit_status(void)
 {
 	(void)printf(".SH EXIT STATUS\n");
-	for (size_t i = 0; i < sizeof(exit_words) / sizeof(*exit_words);
-	     i += 2) {
-		(void)printf(".TP\n%s\n", exit_words[i]);
-		roff(exit_words[i + 1]);
+	for (size_t i = 0; i < EXIT_COUNT; i++) {
+		(void)printf(".TP\n%s\n", exits[i].code);
+		roff(exits[i].words);
 	}
 }
 
@@ -163,6 +163,6 @@ void help_program(bool man)
 			     commands[i]->summary);
 	(void)printf("\nratefloor COMMAND --help tells more; --version the "
 		     "version.\n\nexit codes:\n");
-	for (size_t i = 0; i < sizeof(exit_words) / sizeof(*exit_words); i += 2)
-		(void)printf("  %s  %s\n", exit_words[i], exit_words[i + 1]);
+	for (size_t i = 0; i < EXIT_COUNT; i++)
+		(void)printf("  %s  %s\n", exits[i].code, exits[i].words);
 }

@@ -9,7 +9,7 @@ static enum exit_code unknown_command(const char *name)
 	size_t count = 0;
 	const char *near;
 
-	while (commands[count] && count < 32) {
+	while (count < 32 && commands[count]) {
 		names[count] = commands[count]->name;
 		count++;
 	}

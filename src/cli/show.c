@@ -39,14 +39,14 @@ enum status show_survey(struct ledger *ledger, int64_t id,
 	return status;
 }
 
-enum status show_format(const struct words *words,
+enum status show_format(const struct words *words, const char *usual,
 			const struct report_format **format, struct reason *why)
 {
 	const char *name = words_get(words, "as");
 	char all[128] = "";
 	size_t used = 0;
 
-	*format = report_find(name ? name : "text");
+	*format = report_find(name ? name : usual);
 	if (*format)
 		return STATUS_OK;
 	for (size_t i = 0; report_formats[i] && used < sizeof(all); i++)

@@ -17,8 +17,8 @@ MUST_USE enum status show_survey(struct ledger *ledger, int64_t id,
 				 const char *path, int *failed,
 				 struct reason *why);
 
-/* --as: the format named, or text; STATUS_BAD_USAGE lists them. */
-MUST_USE enum status show_format(const struct words *words,
+/* --as: the format named, or usual; STATUS_BAD_USAGE lists them. */
+MUST_USE enum status show_format(const struct words *words, const char *usual,
 				 const struct report_format **format,
 				 struct reason *why);
 

@@ -212,13 +212,18 @@ static MUST_USE enum status payload_of(const lzma_index *index,
 		lzma_filter filters[LZMA_FILTERS_MAX + 1];
 		lzma_block block = {.check = flags.check, .filters = filters};
 
+		uint32_t around;
+
 		block.header_size = lzma_block_header_size_decode(bytes[0]);
+		around = block.header_size + lzma_check_size(flags.check);
+		/* A damaged size must not lead past the block. */
+		if (!bytes[0] || around > at.block.unpadded_size)
+			return STATUS_BAD_INPUT;
 		code = lzma_block_header_decode(&block, allocator, bytes);
 		if (code != LZMA_OK)
 			return unreadable(code);
 		lzma_filters_free(filters, allocator);
-		*payload += at.block.unpadded_size - block.header_size -
-			    lzma_check_size(flags.check);
+		*payload += at.block.unpadded_size - around;
 	}
 	return STATUS_OK;
 }

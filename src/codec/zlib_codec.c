@@ -186,12 +186,22 @@ static MUST_USE enum status zlib_decode(const struct codec_job *job,
 	return status;
 }
 
-/* RFC 1950, section 2.2: CMF, FLG, DICTID where FDICT is set, Adler-32. */
+/*
+ * RFC 1950, section 2.2: CMF, FLG, DICTID where FDICT is set, Adler-32. The
+ * header is a multiple of 31, and no Deflate data is shorter than 2 bytes.
+ */
 static enum status zlib_framing(struct slice stream, uint64_t *bytes)
 {
-	if (stream.length < 6 || (stream.bytes[0] & 0x0f) != Z_DEFLATED)
+	unsigned header, framing;
+
+	if (stream.length < 2)
 		return STATUS_BAD_INPUT;
-	*bytes = stream.bytes[1] & 0x20 ? 10 : 6;
+	header = stream.bytes[0] * 256U + stream.bytes[1];
+	framing = header & 0x20 ? 10 : 6;
+	if ((header >> 8 & 0x0f) != Z_DEFLATED || header >> 12 > 7 ||
+	    header % 31 || stream.length < framing + 2)
+		return STATUS_BAD_INPUT;
+	*bytes = framing;
 	return STATUS_OK;
 }
 

@@ -202,14 +202,85 @@ static MUST_USE enum status zstd_decode(const struct codec_job *job,
 	return status;
 }
 
+static uint32_t little_endian(const uint8_t *bytes, unsigned count)
+{
+	uint32_t value = 0;
+
+	for (unsigned i = count; i > 0; i--)
+		value = value << 8 | bytes[i - 1];
+	return value;
+}
+
+/* RFC 8878, section 3.1.1.2: blocks up to the one that is marked last. */
+static bool skip_blocks(struct slice stream, size_t *at)
+{
+	uint32_t header;
+
+	do {
+		uint32_t type, length;
+
+		if (stream.length - *at < 3)
+			return false;
+		header = little_endian(stream.bytes + *at, 3);
+		*at += 3;
+		type = header >> 1 & 3;
+		/* A run is one byte however long; type 3 is reserved. */
+		length = type == 1 ? 1 : header >> 3;
+		if (type == 3 || stream.length - *at < length)
+			return false;
+		*at += length;
+	} while (!(header & 1));
+	return true;
+}
+
+/* RFC 8878, section 3.1.2: magic, size, content. */
+static bool skip_skippable(struct slice stream, size_t *at, uint64_t *framing)
+{
+	size_t left = stream.length - *at;
+	uint32_t length = little_endian(stream.bytes + *at + 4, 4);
+
+	if (left - 8 < length)
+		return false;
+	*at += 8 + (size_t)length;
+	*framing += 8 + (uint64_t)length;
+	return true;
+}
+
 /* RFC 8878, section 3.1.1: magic, frame header, checksum where flagged. */
+static bool skip_frame(struct slice stream, size_t *at, uint64_t *framing)
+{
+	const uint8_t *bytes = stream.bytes + *at;
+	size_t left = stream.length - *at, header, checksum;
+	uint32_t magic;
+
+	/* No frame is shorter than a skippable one of no content. */
+	if (left < 8)
+		return false;
+	magic = little_endian(bytes, 4);
+	if ((magic & ZSTD_MAGIC_SKIPPABLE_MASK) == ZSTD_MAGIC_SKIPPABLE_START)
+		return skip_skippable(stream, at, framing);
+	header = ZSTD_frameHeaderSize(bytes, left);
+	if (magic != ZSTD_MAGICNUMBER || ZSTD_isError(header) || header > left)
+		return false;
+	checksum = bytes[4] & 0x04 ? 4 : 0;
+	*at += header;
+	if (!skip_blocks(stream, at) || stream.length - *at < checksum)
+		return false;
+	*at += checksum;
+	*framing += header + checksum;
+	return true;
+}
+
 static enum status zstd_framing(struct slice stream, uint64_t *bytes)
 {
-	size_t header = ZSTD_frameHeaderSize(stream.bytes, stream.length);
+	uint64_t framing = 0;
+	size_t at = 0;
 
-	if (stream.length < 5 || ZSTD_isError(header))
-		return STATUS_BAD_INPUT;
-	*bytes = header + (stream.bytes[4] & 0x04 ? 4 : 0);
+	do {
+		if (!skip_frame(stream, &at, &framing))
+			return STATUS_BAD_INPUT;
+	} while (at < stream.length);
+	*bytes = framing;
 	return STATUS_OK;
 }
 

@@ -139,7 +139,7 @@ static enum status parse_into(struct loader *loader)
 	TRY(path_folder(loader->path, &loader->set->folder));
 	TRY(value_text(loader->path, &loader->set->path));
 	digest_sha256(loader->text.bytes, loader->text.length,
-	              loader->set->digest);
+		      loader->set->digest);
 	/* A byte order mark is allowed and means nothing. */
 	if (loader->text.length >= 3 &&
 	    memcmp(loader->text.bytes, "\xEF\xBB\xBF", 3) == 0)

@@ -9,7 +9,7 @@
 /* An empty history's trend begins every byte here: it says next to nothing. */
 #define TREND_HALF (1U << (TREND_BITS - 1))
 #define MATCH_LIMIT 1020
-#define LANE_LIMIT 1020
+#define LANE_LIMIT 255
 
 /*
  * The two inputs of a bit history: the probability of what follows it in the

@@ -124,6 +124,9 @@ ALWAYS_INLINE void mix_byte(struct mixer *mixer, const struct view *view,
 		unsigned bit = byte >> (7 - at.bit) & 1, p;
 
 		at.step = match_holds(view, 0, at.partial, at.bit, lane_failed);
+		/* The byte is not the expected one: nothing left to say. */
+		if (lane_failed && at.bit == 7 && at.step)
+			break;
 		mixing.inputs = inputs + (size_t)at.bit * width;
 		p = mix_predict(mixer, &at, &mixing, width);
 		tally_add(tally, bit ? p : 65536 - p);

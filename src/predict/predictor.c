@@ -234,6 +234,23 @@ static void learn_history(struct predictor *p, unsigned i, unsigned bit)
 	*history = p->mixer.tables.next[*history][bit];
 }
 
+/* A bit that a failed lane leaves no choice: the byte is not the expected. */
+static bool implied(const struct predictor *p)
+{
+	return p->lane_failed && p->bit == 7 &&
+	       p->partial == (p->view.expected[0] | 256U) >> 1;
+}
+
+/* All models take the bit in; the mixer, if it was a decision, has done so. */
+static void learn(struct predictor *p, unsigned bit)
+{
+	for (unsigned i = 0; i < p->contexts; i++)
+		learn_history(p, i, bit);
+	common_update(p, &p->view, p->partial, p->bit, p->lane_failed, bit);
+	p->partial = p->partial * 2 + bit;
+	p->bit++;
+}
+
 bool predictor_update(struct predictor *p, unsigned decision, uint8_t *byte)
 {
 	if (p->plan.family == FAMILY_FLAT) {
@@ -245,12 +262,12 @@ bool predictor_update(struct predictor *p, unsigned decision, uint8_t *byte)
 	if (p->in_lane)
 		return update_lane(p, decision, byte);
 	p->lanes->update(&p->mixer, &p->mixing, decision);
-	for (unsigned i = 0; i < p->contexts; i++)
-		learn_history(p, i, decision);
-	common_update(p, &p->view, p->partial, p->bit, p->lane_failed,
-		      decision);
-	p->partial = p->partial * 2 + decision;
-	if (++p->bit < 8)
+	learn(p, decision);
+	if (implied(p)) {
+		gather(p);
+		learn(p, ~p->view.expected[0] & 1U);
+	}
+	if (p->bit < 8)
 		return false;
 	return complete(p, (uint8_t)p->partial, byte);
 }

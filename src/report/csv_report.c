@@ -12,24 +12,19 @@
  * One flat table (RFC 4180): the first column says what the row is about, and
  * columns that do not apply are empty. Columns are added at the end only.
  */
-#define COLUMNS(X)                                                             \
-	X(row)                                                                 \
-	X(corpus)                                                              \
-	X(symbols)                                                             \
-	X(n)                                                                   \
-	X(name) X(level) X(layout) X(order) X(status) X(reason) X(             \
-		bits_per_symbol) X(low) X(high) X(interval_reason) X(leans)    \
-		X(is_code) X(gap) X(gap_low) X(gap_high) X(gap_percent) X(     \
-			restart) X(family) X(effort) X(framing) X(bytes)       \
-			X(bits_per_record) X(efficiency) X(effective_order) X( \
-				flush_cost) X(encode_mb_per_s)                 \
-				X(decode_mb_per_s) X(encode_memory_bytes) X(   \
-					decode_memory_bytes) X(lossless)       \
-					X(H_bits_per_gram) X(h_plugin) X(      \
-						h_corrected) X(h_cwj)          \
-						X(h_crossfit) X(coverage)      \
-							X(distinct) X(trusted) \
-								X(sha256)
+/* clang-format off */
+#define COLUMNS(X) \
+	X(row) X(corpus) X(symbols) X(n) X(name) X(level) X(layout) \
+	X(order) X(status) X(reason) X(bits_per_symbol) X(low) X(high) \
+	X(interval_reason) X(leans) X(is_code) X(gap) X(gap_low) \
+	X(gap_high) X(gap_percent) X(restart) X(family) X(effort) \
+	X(framing) X(bytes) X(bits_per_record) X(efficiency) \
+	X(effective_order) X(flush_cost) X(encode_mb_per_s) \
+	X(decode_mb_per_s) X(encode_memory_bytes) X(decode_memory_bytes) \
+	X(lossless) X(H_bits_per_gram) X(h_plugin) X(h_corrected) \
+	X(h_cwj) X(h_crossfit) X(coverage) X(distinct) X(trusted) \
+	X(sha256)
+/* clang-format on */
 
 #define AS_CONSTANT(name) CSV_##name,
 #define AS_TEXT(name) #name,

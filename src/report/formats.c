@@ -3,7 +3,8 @@
 #include <string.h>
 
 const struct report_format *const report_formats[] = {
-	&report_text, &report_markdown, &report_csv, &report_json, NULL,
+	&report_table, &report_text, &report_markdown,
+	&report_csv,   &report_json, NULL,
 };
 
 const struct report_format *report_find(const char *name)

@@ -4,6 +4,7 @@
 
 #include "report/report.h"
 
+extern const struct report_format report_table;
 extern const struct report_format report_text;
 extern const struct report_format report_markdown;
 extern const struct report_format report_csv;

@@ -24,8 +24,8 @@ static void libraries_words(const struct writer *writer,
 	write_paragraph(writer, "Libraries: %s.", list);
 }
 
-static void survey_words(const struct writer *writer,
-			 const struct survey *survey)
+void paper_survey_words(const struct writer *writer,
+			const struct survey *survey)
 {
 	char title[2 * LEDGER_NAME_BYTES];
 
@@ -72,7 +72,7 @@ static enum status write_corpus(const struct writer *writer,
 static enum status write_paper(const struct writer *writer,
 			       const struct analysis *analysis)
 {
-	survey_words(writer, analysis->survey);
+	paper_survey_words(writer, analysis->survey);
 	TRY(paper_overview(writer, analysis));
 	for (size_t i = 0; i < analysis->corpus_count; i++)
 		TRY(write_corpus(writer, &analysis->corpora[i]));

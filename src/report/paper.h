@@ -8,6 +8,9 @@
 
 /* Each may return STATUS_NO_MEMORY. */
 
+/* Title, program, libraries, and whether it is finished. */
+void paper_survey_words(const struct writer *writer,
+			const struct survey *survey);
 /* One line a corpus. */
 MUST_USE enum status paper_overview(const struct writer *writer,
 				    const struct analysis *analysis);

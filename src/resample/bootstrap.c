@@ -226,8 +226,16 @@ static void guard(struct bootstrap_result *result, double confidence,
 	reach->above *= factor;
 }
 
-static void conclude(struct bootstrap_result *result, const struct reach *reach)
+static void conclude(struct bootstrap_result *result, const struct reach *reach,
+		     double from)
 {
+	if (from < EFFECTIVE_BLOCKS_MIN) {
+		(void)snprintf(result->reason, sizeof(result->reason),
+			       "the spread comes from about %.0f blocks, %d "
+			       "needed: all others are alike",
+			       from, EFFECTIVE_BLOCKS_MIN);
+		return;
+	}
 	if (result->effective_blocks < EFFECTIVE_BLOCKS_MIN) {
 		(void)snprintf(result->reason, sizeof(result->reason),
 			       "%.1f effective blocks of %d needed: about "
@@ -240,6 +248,24 @@ static void conclude(struct bootstrap_result *result, const struct reach *reach)
 	result->known = true;
 	result->low = result->mean - reach->below * result->standard_error;
 	result->high = result->mean + reach->above * result->standard_error;
+}
+
+/*
+ * How many blocks the spread comes from: (sum u^2)^2 / sum u^4, blocks / 3 for
+ * normal values, 1 where a single block differs. Draws that miss such blocks
+ * see no spread at all, and their quantiles say nothing.
+ */
+static double spread_blocks(const struct work *work)
+{
+	double squares = 0, fourths = 0;
+
+	for (size_t i = 0; i < work->blocks; i++) {
+		double square = work->residual[i] * work->residual[i];
+
+		squares += square;
+		fourths += square * square;
+	}
+	return squares * squares / fourths;
 }
 
 static bool is_constant(const struct work *work)
@@ -262,7 +288,7 @@ static enum status interval_of(struct bootstrap *bootstrap, struct work *work,
 		result->constant = true;
 		result->block_length = 1;
 		result->effective_blocks = (double)work->blocks;
-		conclude(result, &reach);
+		conclude(result, &reach, (double)work->blocks);
 		return STATUS_OK;
 	}
 	TRY(block_length_find(work->residual, work->blocks, &automatic));
@@ -280,7 +306,7 @@ static enum status interval_of(struct bootstrap *bootstrap, struct work *work,
 			       result->standard_error, &reach));
 	}
 	guard(result, bootstrap->rules.confidence, &reach);
-	conclude(result, &reach);
+	conclude(result, &reach, spread_blocks(work));
 	return STATUS_OK;
 }
 

@@ -54,8 +54,9 @@ void bootstrap_free(struct bootstrap *bootstrap); /* NULL is allowed */
  * 30 effective blocks on; with fewer, Student's quantiles on the exact block
  * standard error. Where the lag-1 correlation rho of the batch means passes
  * .17, the variance is multiplied and the effective blocks divided by
- * (1 + rho) / (1 - rho). A series without blocks or with too few effective
- * ones is STATUS_OK with known false. STATUS_NO_MEMORY.
+ * (1 + rho) / (1 - rho). A series without blocks, with too few effective ones
+ * or whose spread comes from too few is STATUS_OK with known false.
+ * STATUS_NO_MEMORY.
  */
 MUST_USE enum status bootstrap_interval(struct bootstrap *bootstrap,
 					const struct block_series *series,

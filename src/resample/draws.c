@@ -8,11 +8,12 @@
 enum status draws_init(struct draws *draws, size_t count, size_t blocks,
 		       size_t length, uint64_t seed, const char *corpus)
 {
-	size_t pieces = (blocks + length - 1) / length;
+	size_t pieces;
 	struct random_stream random;
 	uint16_t *starts;
 
 	assert(blocks && blocks <= DRAWS_BLOCKS_MAX && length);
+	pieces = (blocks + length - 1) / length;
 	TRY(memory_new(count, pieces * sizeof(*starts), &starts));
 	random_init(&random, seed,
 		    random_name(corpus) + (uint64_t)length * 0x10000 + blocks);

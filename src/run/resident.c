@@ -24,6 +24,7 @@ static MUST_USE enum status open_bytes(struct resident *resident,
 			       corpus_bytes(&resident->corpus),
 			       &resident->declared->rules, why);
 	if (status != STATUS_OK) {
+		reason_prefix(why, "%s: ", resident->declared->file);
 		corpus_close(&resident->corpus);
 		return status;
 	}

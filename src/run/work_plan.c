@@ -84,9 +84,9 @@ static MUST_USE enum status find_codec(const struct set *set,
 	if (*codec)
 		return STATUS_OK;
 	return reason_give(why, STATUS_BAD_USAGE,
-			   "%s: [codec %s]: there is no built-in codec of that "
-			   "name; ratefloor methods shows them",
-			   set->path, section->name);
+			   "%s:%u: [codec %s]: there is no built-in codec of "
+			   "that name; ratefloor methods shows them",
+			   set->path, section->line, section->name);
 }
 
 static MUST_USE enum status add_levels(struct plan *plan,
@@ -110,8 +110,9 @@ static MUST_USE enum status add_levels(struct plan *plan,
 				status = layout_parse(section->layouts.texts[j],
 						      &cell->page_bytes, why);
 			if (status != STATUS_OK) {
-				reason_prefix(why, "%s: [codec %s]: ",
-					      plan->set->path, section->name);
+				reason_prefix(why, "%s:%u: [codec %s]: ",
+					      plan->set->path, section->line,
+					      section->name);
 				return status;
 			}
 			plan->cell_count +=

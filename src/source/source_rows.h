@@ -12,6 +12,7 @@ extern const struct source source_random;
 extern const struct source source_zeros;
 extern const struct source source_iid;
 extern const struct source source_chain;
+extern const struct source source_strand;
 extern const struct source source_rec;
 
 #endif

@@ -6,9 +6,10 @@
 #include <string.h>
 
 const struct source *const sources[] = {
-	&source_frames, &source_feed,  &source_dutylog, &source_station_table,
-	&source_random, &source_zeros, &source_iid,     &source_chain,
-	&source_rec,    NULL,
+	&source_frames,        &source_feed,   &source_dutylog,
+	&source_station_table, &source_random, &source_zeros,
+	&source_iid,           &source_chain,  &source_strand,
+	&source_rec,           NULL,
 };
 
 const struct source *source_find(const char *name)

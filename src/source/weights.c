@@ -24,7 +24,7 @@ void weights_init(struct weights *weights, const uint32_t *values,
 void weights_init_zipf(struct weights *weights, uint32_t count, uint32_t scale,
 		       uint32_t shift)
 {
-	uint32_t values[WEIGHTS_MAX];
+	uint32_t values[WEIGHTS_MAX] = {0};
 
 	for (uint32_t r = 0; r < count; r++)
 		values[r] = scale / (r + shift);
@@ -33,7 +33,7 @@ void weights_init_zipf(struct weights *weights, uint32_t count, uint32_t scale,
 
 void weights_init_dice(struct weights *weights, uint32_t sides)
 {
-	uint32_t values[WEIGHTS_MAX];
+	uint32_t values[WEIGHTS_MAX] = {0};
 	uint32_t count = 2 * sides - 1;
 
 	for (uint32_t i = 0; i < count; i++)
@@ -45,15 +45,14 @@ uint32_t weights_draw(const struct weights *weights,
 		      struct random_stream *random)
 {
 	uint32_t point = random_below(random, weights->total);
-	uint32_t low = 0, high = weights->count - 1;
+	uint32_t low = 0, left = weights->count;
 
-	while (low < high) {
-		uint32_t middle = (low + high) / 2;
+	/* Halving without a branch on the point, which nothing predicts. */
+	while (left > 1) {
+		uint32_t half = left / 2;
 
-		if (point < weights->cumulative[middle])
-			high = middle;
-		else
-			low = middle + 1;
+		low += point >= weights->cumulative[low + half - 1] ? half : 0;
+		left -= half;
 	}
 	return low;
 }

@@ -70,7 +70,7 @@ static enum status scan(struct slice bytes, struct rank_table *table,
 
 	for (size_t offset = 0; offset < bytes.length; n++) {
 		const char *fault;
-		uint32_t point;
+		uint32_t point = 0;
 		unsigned length =
 			read_point(rest_of(bytes, offset), &point, &fault);
 
@@ -98,7 +98,7 @@ static enum status fill(struct sequence *sequence, struct slice bytes,
 	sequence->starts = starts;
 	for (size_t i = 0; i < n; i++) {
 		const char *fault;
-		uint32_t point;
+		uint32_t point = 0;
 
 		starts[i] = offset;
 		offset += read_point(rest_of(bytes, offset), &point, &fault);

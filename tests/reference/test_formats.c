@@ -5,6 +5,7 @@
 #include "support/near.h"
 
 #include <lzma.h>
+#include <math.h>
 #include <string.h>
 #include <zlib.h>
 
@@ -171,6 +172,55 @@ static void the_worked_code_of_rfc_1951(void **state)
 		assert_int_equal(codes[i], wanted[i]);
 }
 
+/*
+ * Mean length of a Huffman code in units of the weights' sum: every merger of
+ * the two lightest puts one more bit before all that is below it.
+ */
+static unsigned huffman_bits(unsigned *weights, size_t count)
+{
+	unsigned bits = 0;
+
+	for (; count > 1; count--) {
+		for (size_t last = count - 1; last + 2 >= count; last--) {
+			size_t least = last;
+			unsigned moved;
+
+			for (size_t i = 0; i < last; i++) {
+				if (weights[i] < weights[least])
+					least = i;
+			}
+			moved = weights[least];
+			weights[least] = weights[last];
+			weights[last] = moved;
+			if (!last)
+				break;
+		}
+		weights[count - 2] += weights[count - 1];
+		bits += weights[count - 2];
+	}
+	return bits;
+}
+
+/*
+ * Cover and Thomas, Elements of Information Theory, section 5.6: mean lengths
+ * 2.3 and 2 bits, from memory of the book; an entropy never lies above.
+ */
+static void huffman_codes_of_the_textbook(void **state)
+{
+	unsigned five[] = {25, 25, 20, 15, 15}, four[] = {4, 4, 3, 1};
+	double entropy_five = 0, entropy_four = 0;
+
+	(void)state;
+	for (size_t i = 0; i < 5; i++)
+		entropy_five -= five[i] / 100.0 * log2(five[i] / 100.0);
+	for (size_t i = 0; i < 4; i++)
+		entropy_four -= four[i] / 12.0 * log2(four[i] / 12.0);
+	assert_near(entropy_five, 2.285475, 5e-7);
+	assert_near(entropy_four, 1.855389, 5e-7);
+	assert_int_equal(huffman_bits(five, 5), 230);
+	assert_int_equal(huffman_bits(four, 4), 24);
+}
+
 int main(void)
 {
 	const struct CMUnitTest tests[] = {
@@ -180,6 +230,7 @@ int main(void)
 		cmocka_unit_test(check_values_are_the_published_ones),
 		cmocka_unit_test(random_bytes_grow_by_headers),
 		cmocka_unit_test(the_worked_code_of_rfc_1951),
+		cmocka_unit_test(huffman_codes_of_the_textbook),
 	};
 
 	return cmocka_run_group_tests(tests, NULL, NULL);

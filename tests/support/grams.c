@@ -9,6 +9,25 @@
 #include <stdlib.h>
 #include <string.h>
 
+static int compare_codes(const void *left, const void *right, void *width)
+{
+	return memcmp(left, right, *(const size_t *)width);
+}
+
+static uint32_t count_distinct(const uint8_t *codes, size_t n, size_t width)
+{
+	uint8_t *sorted = malloc(n * width + 1);
+	uint32_t distinct = n > 0;
+
+	memcpy(sorted, codes, n * width);
+	qsort_r(sorted, n, width, compare_codes, &width);
+	for (size_t i = 1; i < n; i++)
+		distinct += memcmp(sorted + (i - 1) * width, sorted + i * width,
+				   width) != 0;
+	free(sorted);
+	return distinct;
+}
+
 struct sequence grams_sequence(const uint8_t *codes, size_t n, unsigned width)
 {
 	uint64_t alphabet = UINT64_C(1) << 8 * width;
@@ -21,6 +40,7 @@ struct sequence grams_sequence(const uint8_t *codes, size_t n, unsigned width)
 		.code_width = width,
 		.code_count =
 			alphabet > UINT32_MAX ? UINT32_MAX : (uint32_t)alphabet,
+		.distinct = count_distinct(codes, n, width),
 		.alphabet = alphabet,
 	};
 }

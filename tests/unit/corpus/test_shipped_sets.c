@@ -2,11 +2,14 @@
  * Are the sets that come with the program valid, and do they name the files and
  * digests that scripts/fetch-corpora brings?
  */
+#include "base/digest.h"
 #include "corpus/set_file.h"
+#include "source/source.h"
 
 #include "support/near.h"
 
 #include <stdio.h>
+#include <stdlib.h>
 #include <string.h>
 
 static const char *script_text(void)
@@ -53,6 +56,31 @@ static void check_fetched(const struct set *set,
 	assert_true(strncmp(corpus->origin, "Debian package ", 15) == 0);
 }
 
+/* What the set file says of a made corpus, against its source. */
+static void check_made(const struct set_corpus *corpus)
+{
+	char name[64], digest[DIGEST_TEXT_BYTES], rest;
+	unsigned long symbols, seed;
+	const struct source *source;
+	uint8_t *bytes;
+
+	assert_int_equal(sscanf(corpus->origin,
+				"ratefloor synth %63s --symbols %lu --seed %lu "
+				"%c",
+				name, &symbols, &seed, &rest),
+			 3);
+	source = source_find(name);
+	assert_non_null(source);
+	assert_true(corpus->rate_known);
+	assert_near(corpus->known_rate, source->bits_per_symbol(), 5e-10);
+	bytes = malloc(symbols);
+	assert_non_null(bytes);
+	source_fill(source, symbols, seed, bytes);
+	digest_sha256(bytes, symbols, digest);
+	assert_string_equal(digest, corpus->sha256);
+	free(bytes);
+}
+
 static size_t check_set(const char *path)
 {
 	struct reason why = {""};
@@ -71,8 +99,7 @@ static size_t check_set(const char *path)
 			continue;
 		}
 		assert_true(strncmp(corpus->file, "corpora/made/", 13) == 0);
-		assert_true(strncmp(corpus->origin, "ratefloor synth ", 16) ==
-			    0);
+		check_made(corpus);
 	}
 	assert_int_equal(set.codec_count, 4);
 	set_release(&set);

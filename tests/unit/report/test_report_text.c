@@ -266,10 +266,11 @@ static void every_format_tells_of_a_full_disk(void **state)
 
 static void formats_are_found_by_name(void **state)
 {
-	static const char *const names[] = {"text", "markdown", "csv", "json"};
+	static const char *const names[] = {"table", "text", "markdown", "csv",
+					    "json"};
 
 	(void)state;
-	for (size_t i = 0; i < 4; i++) {
+	for (size_t i = 0; i < 5; i++) {
 		assert_non_null(report_find(names[i]));
 		assert_string_equal(report_find(names[i])->name, names[i]);
 	}

@@ -71,6 +71,21 @@ static void a_constant_series_has_no_width(void **state)
 	assert_near(result.effective_blocks, 100, 0);
 }
 
+/* The first block of zeros costs bits and the others none. */
+static void one_odd_block_is_no_spread(void **state)
+{
+	struct bootstrap_result result;
+
+	(void)state;
+	for (size_t i = 0; i < 100; i++) {
+		symbols[i] = 1000;
+		bits[i] = i ? 0.25 : 65;
+	}
+	result = interval(100, 1, "a");
+	assert_false(result.known);
+	assert_non_null(strstr(result.reason, "about 1 block"));
+}
+
 /* One long swing: so few independent pieces that nothing can be said. */
 static void too_few_effective_blocks_are_refused(void **state)
 {
@@ -213,6 +228,7 @@ int main(void)
 	const struct CMUnitTest tests[] = {
 		cmocka_unit_test(no_blocks_give_a_reason),
 		cmocka_unit_test(a_constant_series_has_no_width),
+		cmocka_unit_test(one_odd_block_is_no_spread),
 		cmocka_unit_test(too_few_effective_blocks_are_refused),
 		cmocka_unit_test(the_mean_is_a_ratio),
 		cmocka_unit_test(only_seed_and_corpus_change_the_draws),
