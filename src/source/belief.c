@@ -61,7 +61,7 @@ static void ranges_find(struct grid *grid)
 	const struct emissions *emissions = grid->emissions;
 
 	for (unsigned which = 0; which + 1 < emissions->regimes; which++) {
-		double low = INFINITY, high = -INFINITY;
+		double low = HUGE_VAL, high = -HUGE_VAL;
 
 		for (uint32_t r = 0; r < emissions->regimes; r++) {
 			double at =
@@ -215,7 +215,7 @@ enum status belief_rate(const struct emissions *emissions,
 	static const uint32_t three[] = {6, 9, 13, 18, 24, 32, 42, 0};
 	const uint32_t *points = emissions->regimes == 2 ? two : three;
 	struct grid grid;
-	double before = 0, bits, change = INFINITY;
+	double before = 0, bits, change = HUGE_VAL;
 
 	for (; *points && change > 1e-8; points++) {
 		enum status status;
