@@ -8,6 +8,7 @@ const struct estimator *const estimators[] = {
 	/* clang-format off */
 	&estimator_uniform,
 	&estimator_ngram,
+	&estimator_crossfit,
 	&estimator_match,
 	&estimator_dirichlet,
 	&estimator_mix,

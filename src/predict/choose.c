@@ -7,9 +7,9 @@
 #include <string.h>
 
 /* Samples are this share of the bytes, within limits. */
-#define SAMPLE_SHARE 32
-#define SAMPLE_LEAST 12288
-#define SAMPLE_MOST 65536
+#define SAMPLE_SHARE 128
+#define SAMPLE_LEAST 6144
+#define SAMPLE_MOST 49152
 
 static bool has_stride(enum predict_family family)
 {

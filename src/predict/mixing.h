@@ -82,7 +82,8 @@ ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
 				   struct mixing *mixing, unsigned inputs)
 {
 	unsigned match = at->step * 8 + at->bit;
-	unsigned row = (at->view->last * 3U + at->partial * 5U) % STAGE_ROWS;
+	unsigned row =
+		(at->view->hash[1] >> 16 ^ at->partial * 0x9e35u) & 0x3fff;
 	int64_t sum;
 	unsigned p0, p1, p;
 
@@ -94,7 +95,7 @@ ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
 	mixing->p_final = mixer->tables.squash[mixing->x + LOGIT_MAX];
 	stage_predict(mixer, mixing, 0, at->partial, &p0);
 	stage_predict(mixer, mixing, 1, row, &p1);
-	p = (2 * mixing->p_final + p0 + p1 + 2) >> 2;
+	p = (mixing->p_final + p0 + 2 * p1 + 2) >> 2;
 	return p < 1 ? 1 : p > 65535 ? 65535 : p;
 }
 

@@ -15,9 +15,9 @@
 #define SETS 3
 
 /* Final stages: interpolated tables over the logistic domain. */
-#define STAGE_STEP 128
-#define STAGE_ROOM 49
-#define STAGE_ROWS 1024
+#define STAGE_STEP 256
+#define STAGE_ROOM 25
+#define STAGE_ROWS 16384
 
 /* Bytes between which the passes of predictor_measure_q32 alternate. */
 #define CHUNK 16
@@ -77,6 +77,16 @@ extern const struct lanes lanes_plain;
 /* NULL where the processor has nothing better than plain. */
 const struct lanes *lanes_fast(void);
 
+/* The lane's decision: probabilities by length, and by two hashed contexts. */
+#define LANE_CELLS 3
+#define LANE_ROWS 16384
+
+struct lane {
+	int32_t weight[LANE_CELLS];
+	int32_t x[LANE_CELLS];
+	unsigned p16;
+};
+
 /* Where a context stands within the byte being coded. */
 struct place {
 	uint8_t *line, *slot;
@@ -96,6 +106,8 @@ struct predictor {
 	uint16_t *order1; /* owned; 65536 */
 	uint32_t match_cell[2][MATCH_STEPS];
 	uint32_t lane_cell[MATCH_STEPS][256];
+	uint32_t lane_row[LANE_CELLS - 1][LANE_ROWS];
+	struct lane lane;
 	/* between decisions */
 	struct view view;
 	struct place place[CONTEXTS_MAX];

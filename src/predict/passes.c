@@ -60,7 +60,7 @@ static void run_lanes(struct predictor *p, struct chunk *chunk)
 
 		chunk->lane_failed[i] = false;
 		if (view->lane) {
-			unsigned p16 = lane_p16(p, view);
+			unsigned p16 = lane_predict(p, view);
 
 			tally_add(&p->tally, hit ? p16 : 65536 - p16);
 			lane_update(p, view, hit);

@@ -7,7 +7,7 @@
 #include <string.h>
 
 /* Matches this long have their next byte coded in one decision. */
-#define LANE_LENGTH 32
+#define LANE_LENGTH 20
 /* A match shorter than this gives way to a longer one. */
 #define FIRM_LENGTH 16
 #define MISSES_MAX 8

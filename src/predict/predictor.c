@@ -136,6 +136,13 @@ void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 			predictor->lane_cell[i][j] =
 				(UINT32_MAX / 64 * 63 & ~1023U) | 20;
 	}
+	for (unsigned i = 0; i < LANE_CELLS; i++)
+		predictor->lane.weight[i] = 32768;
+	for (unsigned i = 0; i < LANE_ROWS; i++) {
+		for (unsigned j = 0; j < LANE_CELLS - 1; j++)
+			predictor->lane_row[j][i] =
+				(UINT32_MAX / 16 * 15 & ~1023U) | 2;
+	}
 	predictor->tally = (struct tally){.mantissa = UINT64_C(1) << 63};
 	predictor->begun = predictor->pending = false;
 	predictor->bit = 0;
@@ -189,7 +196,7 @@ unsigned predictor_probability(struct predictor *p)
 	if (!p->begun)
 		begin_byte(p);
 	if (p->in_lane)
-		return lane_p16(p, &p->view);
+		return lane_predict(p, &p->view);
 	gather(p);
 	at = (struct selection){.partial = p->partial, .bit = p->bit};
 	at.view = &p->view;

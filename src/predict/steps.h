@@ -17,21 +17,55 @@ ALWAYS_INLINE uint8_t *context_lines(struct predictor *p, unsigned i)
 	return p->lines + ((size_t)i << p->lines_log2) * LINE_BYTES;
 }
 
-ALWAYS_INLINE unsigned lane_p16(const struct predictor *p,
-				const struct view *view)
+/* The probabilities that a lane's decision is made of. */
+ALWAYS_INLINE void lane_cells(struct predictor *p, const struct view *view,
+			      uint32_t *cells[LANE_CELLS])
 {
-	unsigned step = view->match_step[0];
-	unsigned p16 = cell_p16(p->lane_cell[step][view->expected[0]]);
+	unsigned expected = view->expected[0];
 
-	return p16 < 1 ? 1 : p16;
+	cells[0] = &p->lane_cell[view->match_step[0]][expected];
+	for (unsigned i = 1; i < LANE_CELLS; i++) {
+		uint32_t hash = view->hash[i == 1 ? 1 : 3] >> 8;
+
+		hash = (hash + expected * 0x9e35U) % LANE_ROWS;
+		cells[i] = &p->lane_row[i - 1][hash];
+	}
+}
+
+/* Probability that the expected byte comes; the lane's own small mixer. */
+ALWAYS_INLINE unsigned lane_predict(struct predictor *p,
+				    const struct view *view)
+{
+	const struct predict_tables *tables = &p->mixer.tables;
+	struct lane *lane = &p->lane;
+	uint32_t *cells[LANE_CELLS];
+	int64_t sum = 0;
+
+	lane_cells(p, view, cells);
+	for (unsigned i = 0; i < LANE_CELLS; i++) {
+		lane->x[i] = tables->stretch[*cells[i] >> 20];
+		sum += (int64_t)lane->x[i] * lane->weight[i];
+	}
+	sum >>= 16;
+	sum = sum > LOGIT_MAX ? LOGIT_MAX : sum;
+	sum = sum < -LOGIT_MAX ? -LOGIT_MAX : sum;
+	lane->p16 = tables->squash[sum + LOGIT_MAX];
+	return lane->p16;
 }
 
 ALWAYS_INLINE void lane_update(struct predictor *p, const struct view *view,
 			       unsigned hit)
 {
-	uint32_t *cell = &p->lane_cell[view->match_step[0]][view->expected[0]];
+	struct lane *lane = &p->lane;
+	int32_t error = (int32_t)(hit << 16) - (int32_t)lane->p16;
+	uint32_t *cells[LANE_CELLS];
 
-	*cell = cell_update(&p->mixer.tables, *cell, hit, LANE_LIMIT);
+	lane_cells(p, view, cells);
+	for (unsigned i = 0; i < LANE_CELLS; i++) {
+		lane->weight[i] += (lane->x[i] * (error >> 3)) >> 12;
+		*cells[i] = cell_update(&p->mixer.tables, *cells[i], hit,
+					LANE_LIMIT);
+	}
 }
 
 /* The inputs that are no bit histories: COMMON of them. */
