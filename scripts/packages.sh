@@ -13,7 +13,7 @@ export CHECK_PACKAGES="clang libclang-rt-14-dev clang-format cppcheck valgrind
 # Prints the packages of the list that are not installed.
 missing_packages() {
 	for package in "$@"; do
-		state=$(dpkg-query -W -f '${db:Status-Status}' "$package" 2>/dev/null)
+		state=$(dpkg-query -W -f '${db:Status-Status}' "$package" 2>/dev/null) || true
 		[ "$state" = installed ] || printf '%s ' "$package"
 	done
 }
