@@ -3,7 +3,7 @@
 #include "estimate/crossfit_share.h"
 
 /* Suffixes that memory is asked for ahead of their turn. */
-#define AHEAD 16
+#define AHEAD 64
 
 struct level {
 	const struct suffix *suffix;
@@ -113,13 +113,21 @@ static inline void update(const struct level *level, struct context *context,
 			   context->divisor[fold]);
 }
 
+/*
+ * The shares lie all over the memory. A suffix that stands alone in its
+ * context will not be looked up.
+ */
 static inline void fetch_ahead(const struct level *level, size_t rank)
 {
 	const struct suffix *suffix = level->suffix;
+	const uint8_t *common = suffix->common + rank + AHEAD;
+	unsigned symbols = level->k - 1;
 
-	if (rank + AHEAD < suffix->n)
+	if (rank + AHEAD + 1 < suffix->n &&
+	    (common[0] >= symbols || common[1] >= symbols))
 		__builtin_prefetch(&level->shares[suffix->start[rank + AHEAD]] +
-				   level->k - 1);
+					   symbols,
+				   1);
 }
 
 static void apply(const struct level *level, struct context *context,
@@ -137,6 +145,12 @@ static void apply(const struct level *level, struct context *context,
 			update(level, context, i, &gram);
 		}
 	}
+}
+
+static void pass_over(const struct level *level, size_t begin, size_t end)
+{
+	for (size_t r = begin; r < end; r++)
+		fetch_ahead(level, r);
 }
 
 /* Seen in one fold at most, a context teaches the others nothing. */
@@ -158,10 +172,14 @@ void crossfit_level(const struct suffix *suffix, const struct folds *folds,
 		struct context context;
 
 		end = run_end(&level, begin, suffix->n, k - 1);
-		if (end == begin + 1)
+		if (end == begin + 1) {
+			fetch_ahead(&level, begin);
 			continue;
+		}
 		context = learn(&level, begin, end);
 		if (is_shared(&context))
 			apply(&level, &context, begin, end);
+		else
+			pass_over(&level, begin, end);
 	}
 }
