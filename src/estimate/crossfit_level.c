@@ -114,20 +114,19 @@ static inline void update(const struct level *level, struct context *context,
 }
 
 /*
- * The shares lie all over the memory. A suffix that stands alone in its
- * context will not be looked up.
+ * The shares lie all over the memory: the one to be asked for when it is the
+ * turn of suffix rank. The prefetch stands in the callers, as gcc drops calls
+ * of functions that do nothing else.
  */
-static inline void fetch_ahead(const struct level *level, size_t rank)
+static inline const uint64_t *share_ahead(const struct level *level,
+					  size_t rank)
 {
-	const struct suffix *suffix = level->suffix;
-	const uint8_t *common = suffix->common + rank + AHEAD;
-	unsigned symbols = level->k - 1;
+	size_t n = level->suffix->n, t;
 
-	if (rank + AHEAD + 1 < suffix->n &&
-	    (common[0] >= symbols || common[1] >= symbols))
-		__builtin_prefetch(&level->shares[suffix->start[rank + AHEAD]] +
-					   symbols,
-				   1);
+	t = (size_t)level->suffix
+		    ->start[rank + AHEAD < n ? rank + AHEAD : rank] +
+	    level->k - 1;
+	return &level->shares[t < n ? t : 0];
 }
 
 static void apply(const struct level *level, struct context *context,
@@ -141,16 +140,10 @@ static void apply(const struct level *level, struct context *context,
 		next = run_end(level, r, end, level->k);
 		gram = count_folds(level, r, next);
 		for (size_t i = r; i < next; i++) {
-			fetch_ahead(level, i);
+			__builtin_prefetch(share_ahead(level, i), 1);
 			update(level, context, i, &gram);
 		}
 	}
-}
-
-static void pass_over(const struct level *level, size_t begin, size_t end)
-{
-	for (size_t r = begin; r < end; r++)
-		fetch_ahead(level, r);
 }
 
 /* Seen in one fold at most, a context teaches the others nothing. */
@@ -172,14 +165,14 @@ void crossfit_level(const struct suffix *suffix, const struct folds *folds,
 		struct context context;
 
 		end = run_end(&level, begin, suffix->n, k - 1);
-		if (end == begin + 1) {
-			fetch_ahead(&level, begin);
-			continue;
+		if (end > begin + 1) {
+			context = learn(&level, begin, end);
+			if (is_shared(&context)) {
+				apply(&level, &context, begin, end);
+				continue;
+			}
 		}
-		context = learn(&level, begin, end);
-		if (is_shared(&context))
-			apply(&level, &context, begin, end);
-		else
-			pass_over(&level, begin, end);
+		for (size_t r = begin; r < end; r++)
+			__builtin_prefetch(share_ahead(&level, r), 1);
 	}
 }
