@@ -11,6 +11,8 @@
 /* Draws of each bootstrap, and its confidence: the survey's own. */
 static const struct analysis_rules interval_rules = {1999, 0.95};
 
+#define GAP_SYMBOLS_MIN 65536
+
 /* Rows that are run, where the program has them. */
 static const char *const row_names[] = {"ngram", "crossfit", "dirichlet",
 					"ctw"};
@@ -97,14 +99,17 @@ static enum status measure_row(const struct sample_rules *rules,
 	return STATUS_OK;
 }
 
-/* The codec whose gap is calibrated. */
+/*
+ * The codec whose gap is calibrated. On shorter samples flushing its blocks
+ * costs far over what an interval allows, so that nothing would be learnt.
+ */
 static enum status measure_gap(struct sample *sample, struct reason *why)
 {
 	struct cell_fact *cell = sample->fact.cells;
 	const struct codec *codec = codec_find("zlib");
 	struct codec_setting setting;
 
-	if (!codec)
+	if (!codec || sample->sequence.n < GAP_SYMBOLS_MIN)
 		return STATUS_OK;
 	TRY(codec->parse("9", &setting, why));
 	TRY(cell_measure(codec, &setting, 0, &sample->sequence, &sample->cuts,
