@@ -5,7 +5,7 @@
 export BUILD_PACKAGES="gcc libc6-dev make pkg-config zlib1g-dev liblzma-dev libzstd-dev
 	libsqlite3-dev libjansson-dev libinih-dev libdivsufsort-dev libmd-dev
 	librandom123-dev"
-export FETCH_PACKAGES="ca-certificates unzip zstd"
+export FETCH_PACKAGES="ca-certificates unzip zstd gzip libreadline8"
 export TEST_PACKAGES="libcmocka-dev python3 sqlite3"
 export CHECK_PACKAGES="clang libclang-rt-14-dev clang-format cppcheck valgrind
 	shellcheck man-db xz-utils zstd"
@@ -13,7 +13,7 @@ export CHECK_PACKAGES="clang libclang-rt-14-dev clang-format cppcheck valgrind
 # Prints the packages of the list that are not installed.
 missing_packages() {
 	for package in "$@"; do
-		state=$(dpkg-query -W -f '${db:Status-Status}' "$package" 2>/dev/null)
+		state=$(dpkg-query -W -f '${db:Status-Status}' "$package" 2>/dev/null) || true
 		[ "$state" = installed ] || printf '%s ' "$package"
 	done
 }

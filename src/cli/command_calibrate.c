@@ -29,10 +29,11 @@ static enum status read_lengths(const struct words *words,
 				struct calibration_rules *rules,
 				struct reason *why)
 {
-	uint64_t symbols = 0, samples = 0;
+	uint64_t symbols = 0, samples = 0, thin = 1;
 
 	TRY(words_number(words, "symbols", 6400, 100000000, &symbols, why));
 	TRY(words_number(words, "replicates", 2, 1000000, &samples, why));
+	TRY(words_number(words, "thin", 1, 20, &thin, why));
 	*rules = (struct calibration_rules){
 		.symbols = {10000, 100000, 400000},
 		.runs = {2000, 300, 40},
@@ -46,8 +47,8 @@ static enum status read_lengths(const struct words *words,
 		rules->length_count = 1;
 		rules->alphabet_least[0] = 0;
 	}
-	for (size_t i = 0; samples && i < rules->length_count; i++)
-		rules->runs[i] = samples;
+	for (size_t i = 0; i < rules->length_count; i++)
+		rules->runs[i] = samples ? samples : rules->runs[i] / thin;
 	return STATUS_OK;
 }
 
@@ -133,6 +134,8 @@ static const struct option_row options[] = {
 	 "400000"},
 	{"replicates", "R",
 	 "samples of each source; by default 2000, 300 and 40"},
+	{"thin", "N",
+	 "one in N of the default samples; 1 by default, at most 20"},
 	{"source", "NAME", "only this source of the list"},
 	{"seed", "S", "equal seeds give equal figures; 1 by default"},
 	{"jobs", "N", "threads; 1 by default"},

@@ -100,6 +100,7 @@ static MUST_USE enum status take_options(const struct words *words,
 		.program = "ratefloor " RATEFLOOR_VERSION,
 		.stop = &stop_asked,
 	};
+	request->selection.deep = words_get(words, "deep") != NULL;
 	TRY(take_part(words, request, why));
 	return show_format(words, "table", &request->format, why);
 }
@@ -207,6 +208,7 @@ static const struct option_row options[] = {
 	 "the set's name"},
 	{"corpus", "NAME", "only this corpus; may be given more than once"},
 	{"estimator", "NAME", "only this estimator; likewise"},
+	{"deep", NULL, "also the estimators that take long, for a review"},
 	{"codec", "NAME", "only this codec of the set; likewise"},
 	{"level", "L", "only this level; likewise"},
 	{"jobs", "N", "threads for the sizes; by default one a processor"},
@@ -256,6 +258,8 @@ const struct command command_survey = {
 		"  ratefloor survey corpora/starter.set\n"
 		"  ratefloor survey corpora/starter.set --corpus gauge-frames "
 		"--codec zstd --level 19\n"
+		"  ratefloor survey corpora/starter.set --deep --as text --out "
+		"review.txt\n"
 		"  ratefloor survey corpora/nightly.set --jobs 2 --no-timing "
 		"--as json --out tonight.json",
 	.options = options,

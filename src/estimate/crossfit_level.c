@@ -3,7 +3,7 @@
 #include "estimate/crossfit_share.h"
 
 /* Suffixes that memory is asked for ahead of their turn. */
-#define AHEAD 16
+#define AHEAD 64
 
 struct level {
 	const struct suffix *suffix;
@@ -113,13 +113,20 @@ static inline void update(const struct level *level, struct context *context,
 			   context->divisor[fold]);
 }
 
-static inline void fetch_ahead(const struct level *level, size_t rank)
+/*
+ * The shares lie all over the memory: the one to be asked for when it is the
+ * turn of suffix rank. The prefetch stands in the callers, as gcc drops calls
+ * of functions that do nothing else.
+ */
+static inline const uint64_t *share_ahead(const struct level *level,
+					  size_t rank)
 {
-	const struct suffix *suffix = level->suffix;
+	size_t n = level->suffix->n, t;
 
-	if (rank + AHEAD < suffix->n)
-		__builtin_prefetch(&level->shares[suffix->start[rank + AHEAD]] +
-				   level->k - 1);
+	t = (size_t)level->suffix
+		    ->start[rank + AHEAD < n ? rank + AHEAD : rank] +
+	    level->k - 1;
+	return &level->shares[t < n ? t : 0];
 }
 
 static void apply(const struct level *level, struct context *context,
@@ -133,7 +140,7 @@ static void apply(const struct level *level, struct context *context,
 		next = run_end(level, r, end, level->k);
 		gram = count_folds(level, r, next);
 		for (size_t i = r; i < next; i++) {
-			fetch_ahead(level, i);
+			__builtin_prefetch(share_ahead(level, i), 1);
 			update(level, context, i, &gram);
 		}
 	}
@@ -158,10 +165,14 @@ void crossfit_level(const struct suffix *suffix, const struct folds *folds,
 		struct context context;
 
 		end = run_end(&level, begin, suffix->n, k - 1);
-		if (end == begin + 1)
-			continue;
-		context = learn(&level, begin, end);
-		if (is_shared(&context))
-			apply(&level, &context, begin, end);
+		if (end > begin + 1) {
+			context = learn(&level, begin, end);
+			if (is_shared(&context)) {
+				apply(&level, &context, begin, end);
+				continue;
+			}
+		}
+		for (size_t r = begin; r < end; r++)
+			__builtin_prefetch(share_ahead(&level, r), 1);
 	}
 }

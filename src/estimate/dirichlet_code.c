@@ -58,16 +58,21 @@ static inline uint32_t code_at(const struct sequence *sequence, size_t t)
 	return value;
 }
 
-static inline void fetch_ahead(const struct coder *coder, size_t t, size_t to)
+/*
+ * The slot to be asked for when it is the turn of symbol t. The prefetch stands
+ * in the caller, as gcc drops calls of functions that do nothing else.
+ */
+static inline const uint32_t *slot_ahead(const struct coder *coder, size_t t,
+					 size_t to)
 {
+	size_t ahead = t + AHEAD < to ? t + AHEAD : t;
 	uint32_t shorter = EMPTY_GRAM;
 
-	if (t + AHEAD >= to)
-		return;
-	if (coder->order)
-		shorter = coder->endings[t + AHEAD - 1].number;
-	gram_prefetch(&coder->table, shorter,
-		      code_at(coder->input->sequence, t + AHEAD));
+	if (coder->order && ahead > 0)
+		shorter = coder->endings[ahead - 1].number;
+	return &coder->table.slots[gram_slot(
+		&coder->table, shorter,
+		code_at(coder->input->sequence, ahead))];
 }
 
 /*
@@ -86,7 +91,7 @@ static MUST_USE enum status code_span(struct coder *coder, size_t from,
 		uint64_t seen_q32 =
 			quick_log_q32(coder->log, (uint64_t)context.before + 1);
 
-		fetch_ahead(coder, t, to);
+		__builtin_prefetch(slot_ahead(coder, t, to), 1);
 		if (context.number != NO_GRAM) {
 			if (coder->table.next == coder->table.limit)
 				TRY(gram_table_grow(&coder->table));

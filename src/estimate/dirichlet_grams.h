@@ -50,13 +50,6 @@ static inline size_t gram_slot(const struct gram_table *table, uint32_t shorter,
 	return (size_t)((key * factor) >> table->shift);
 }
 
-/* Asks for the memory that a gram will be looked up in. */
-static inline void gram_prefetch(const struct gram_table *table,
-				 uint32_t shorter, uint32_t symbol)
-{
-	__builtin_prefetch(&table->slots[gram_slot(table, shorter, symbol)]);
-}
-
 /*
  * Counts a gram: returns its number and how often it was seen before through
  * *before. next is below limit.

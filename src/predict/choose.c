@@ -1,5 +1,6 @@
 #include "predict/plan.h"
 
+#include "predict/bases.h"
 #include "predict/predictor.h"
 
 #include "base/log2.h"
@@ -108,7 +109,9 @@ enum status plan_choose(const struct plan_request *request,
 	trial.best = (struct predict_plan){.family = FAMILY_FLAT, .stride = 1};
 	trial.least_q32 = (int64_t)(16 * trial.sample) << 32;
 	text = text_percent(histogram, request->count) > 97;
-	if (text) {
+	if (bases_only(request->bytes, request->count)) {
+		trial.best.family = FAMILY_BASES;
+	} else if (text) {
 		TRY(try_plan(&trial, FAMILY_PROSE, 1));
 		TRY(try_plan(&trial, FAMILY_LINES, 1));
 	} else {

@@ -60,6 +60,12 @@ struct tally {
 	uint64_t halvings;
 };
 
+/*
+ * Fresh weights and final stages: every input of even and odd number starts
+ * with this weight, in 2^-14, and every set has the same say.
+ */
+void mixer_restart(struct mixer *mixer, int16_t even, int16_t odd);
+
 /* The mixer in one instruction set. */
 struct lanes {
 	/* Fills mixing, returns the probability of a one. */
@@ -95,6 +101,7 @@ struct place {
 
 struct predictor {
 	struct predict_plan plan;
+	struct bases *bases; /* owned; instead of all else for that family */
 	struct mixer mixer;
 	const struct lanes *lanes;
 	struct past past;

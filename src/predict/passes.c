@@ -7,6 +7,7 @@
  */
 #include "predict/predictor.h"
 
+#include "predict/bases.h"
 #include "predict/steps.h"
 
 /* A chunk under way. */
@@ -252,6 +253,8 @@ int64_t predictor_measure_q32(struct predictor *p, size_t count)
 	size_t from = p->past.at + p->pending, end = from + count;
 	unsigned turn = 0;
 
+	if (p->bases)
+		return bases_measure_q32(p->bases, count);
 	if (p->plan.family == FAMILY_FLAT) {
 		p->past.at = end - 1;
 		p->pending = true;

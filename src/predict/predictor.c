@@ -1,5 +1,6 @@
 #include "predict/predictor.h"
 
+#include "predict/bases.h"
 #include "predict/components.h"
 #include "predict/steps.h"
 
@@ -48,7 +49,8 @@ enum status predictor_new(const struct predict_plan *plan,
 	assert(2 * made->contexts + COMMON <= made->mixer.inputs);
 	tables_build(&made->mixer.tables);
 	predictor_set_lanes(made, LANES_BEST);
-	status = predictor_allocate(made);
+	status = plan->family == FAMILY_BASES ? bases_new(plan, &made->bases)
+					      : predictor_allocate(made);
 	if (status != STATUS_OK) {
 		predictor_free(made);
 		return status;
@@ -61,6 +63,7 @@ void predictor_free(struct predictor *predictor)
 {
 	if (!predictor)
 		return;
+	bases_free(predictor->bases);
 	past_release(&predictor->past);
 	memory_free(predictor->lines);
 	memory_free(predictor->mixer.weights);
@@ -74,51 +77,24 @@ void predictor_set_lanes(struct predictor *predictor, enum predict_lanes lanes)
 {
 	const struct lanes *fast = lanes_fast();
 
+	if (predictor->bases)
+		bases_set_plain(predictor->bases, lanes == LANES_PLAIN);
 	predictor->lanes = lanes == LANES_BEST && fast ? fast : &lanes_plain;
-}
-
-/* Every input starts with the same say, and every set as well. */
-static void mixer_restart(struct mixer *mixer, unsigned contexts)
-{
-	size_t rows = (size_t)SETS * SET_ROWS;
-
-	for (size_t row = 0; row < rows; row++) {
-		int16_t *w = mixer->weights + row * mixer->inputs;
-
-		for (unsigned i = 0; i < mixer->inputs; i++)
-			w[i] = i < 2 * contexts && i % 2 ? 512 : 3600;
-		w[mixer->inputs - 1] = 0;
-	}
-	for (size_t row = 0; row < SET_ROWS; row++) {
-		for (unsigned i = 0; i < SETS; i++)
-			mixer->final[row][i] = 65536 / SETS;
-	}
-	for (size_t row = 0; row < STAGE_ROWS; row++) {
-		for (int i = 0; i < STAGE_ROOM; i++) {
-			int x = (i - STAGE_ROOM / 2) * STAGE_STEP;
-			size_t at = row * STAGE_ROOM + (size_t)i;
-			uint32_t p;
-
-			x = x > LOGIT_MAX ? LOGIT_MAX : x;
-			x = x < -LOGIT_MAX ? -LOGIT_MAX : x;
-			p = (uint32_t)mixer->tables.squash[x + LOGIT_MAX];
-			mixer->stage[0][at] = p << 16;
-			mixer->stage[1][at] = p << 16;
-		}
-	}
-	mixer->seen = 0;
-	mixer->rate = 160;
 }
 
 void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 {
 	const struct predict_tables *tables = &predictor->mixer.tables;
 
+	if (predictor->bases) {
+		bases_restart(predictor->bases, bytes);
+		return;
+	}
 	past_restart(&predictor->past, bytes);
 	memset(predictor->lines, 0,
 	       ((size_t)predictor->contexts << predictor->lines_log2) *
 		       LINE_BYTES);
-	mixer_restart(&predictor->mixer, predictor->contexts);
+	mixer_restart(&predictor->mixer, 3600, 512);
 	for (unsigned i = 0; i < CONTEXTS_MAX; i++)
 		memcpy(predictor->trend[i], tables->start,
 		       sizeof(tables->start));
@@ -193,6 +169,8 @@ unsigned predictor_probability(struct predictor *p)
 
 	if (p->plan.family == FAMILY_FLAT)
 		return 32768;
+	if (p->bases)
+		return bases_probability(p->bases);
 	if (!p->begun)
 		begin_byte(p);
 	if (p->in_lane)
@@ -207,6 +185,8 @@ unsigned predictor_probability(struct predictor *p)
 
 unsigned predictor_decision(const struct predictor *p, uint8_t byte)
 {
+	if (p->bases)
+		return bases_decision(p->bases, byte);
 	if (p->plan.family != FAMILY_FLAT && p->in_lane)
 		return byte == p->view.expected[0];
 	return byte >> (7 - p->bit) & 1;
@@ -260,6 +240,8 @@ static void learn(struct predictor *p, unsigned bit)
 
 bool predictor_update(struct predictor *p, unsigned decision, uint8_t *byte)
 {
+	if (p->bases)
+		return bases_update(p->bases, decision, byte);
 	if (p->plan.family == FAMILY_FLAT) {
 		p->partial = p->partial * 2 + decision;
 		if (++p->bit < 8)
@@ -277,11 +259,4 @@ bool predictor_update(struct predictor *p, unsigned decision, uint8_t *byte)
 	if (p->bit < 8)
 		return false;
 	return complete(p, (uint8_t)p->partial, byte);
-}
-
-int64_t tally_q32(const struct tally *tally)
-{
-	int64_t top = (int64_t)log2_q32(tally->mantissa) - 63 * BIT_Q32;
-
-	return (int64_t)(tally->halvings << 32) - top;
 }

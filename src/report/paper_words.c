@@ -131,6 +131,25 @@ static void extrapolation_words(const struct writer *writer,
 			figure_bits(true, row->miss).text);
 }
 
+/* A stated rate is a test that the bracket may fail. */
+static void known_rate_words(const struct writer *writer,
+			     const struct corpus_fact *fact,
+			     const struct bracket_row *bracket)
+{
+	if (!fact->rate_known || !bracket->known)
+		return;
+	if (!bracket->open_below && fact->known_rate < bracket->low)
+		write_paragraph(writer,
+				"The stated rate lies below the bracket: this "
+				"source remembers further back than %u "
+				"symbols, which the lower edge cannot see.",
+				bracket->order + 1);
+	if (fact->known_rate > bracket->high)
+		write_paragraph(writer,
+				"The stated rate lies above the bracket: one "
+				"file in about twenty is as untypical.");
+}
+
 static void trust_words(const struct writer *writer,
 			const struct corpus_view *view)
 {
@@ -173,6 +192,7 @@ void paper_corpus_words(const struct writer *writer,
 	corpus_identity(writer, fact);
 	floor_words(writer, &view->floor);
 	bracket_words(writer, &view->bracket);
+	known_rate_words(writer, fact, &view->bracket);
 	extrapolation_words(writer, &view->extrapolation);
 	trust_words(writer, view);
 }

@@ -230,10 +230,12 @@ static void conclude(struct bootstrap_result *result, const struct reach *reach,
 		     double from)
 {
 	if (from < EFFECTIVE_BLOCKS_MIN) {
-		(void)snprintf(result->reason, sizeof(result->reason),
-			       "the spread comes from about %.0f blocks, %d "
-			       "needed: all others are alike",
-			       from, EFFECTIVE_BLOCKS_MIN);
+		(void)snprintf(
+			result->reason, sizeof(result->reason),
+			"the spread comes from about %.0f of the blocks, "
+			"%d needed: a start-up or one odd stretch is no "
+			"spread",
+			from, EFFECTIVE_BLOCKS_MIN);
 		return;
 	}
 	if (result->effective_blocks < EFFECTIVE_BLOCKS_MIN) {

@@ -147,9 +147,10 @@ static MUST_USE enum status choose_cells(struct plan *plan,
 static bool row_wanted(const struct estimator *row,
 		       const struct selection *selection)
 {
-	if (selection->estimators.count)
-		return chosen(&selection->estimators, row->name);
-	return !row->deep;
+	if (selection->estimators.count &&
+	    chosen(&selection->estimators, row->name))
+		return true;
+	return row->deep ? selection->deep : !selection->estimators.count;
 }
 
 /* The page sizes of the cells, each once, in order of size. */

@@ -234,6 +234,11 @@ enum status belief_rate(const struct emissions *emissions,
 		change = fabs(bits - before);
 		before = bits;
 	}
+	if (change >= HUGE_VAL)
+		return reason_give(why, STATUS_BAD_INPUT,
+				   "%u regimes with %u contexts are too many "
+				   "for a grid of beliefs",
+				   emissions->regimes, emissions->contexts);
 	if (!(change < 1e-7))
 		return reason_give(why, STATUS_BAD_INPUT,
 				   "the rate of this hidden source is known to "

@@ -112,7 +112,8 @@ void source_model_release(struct source_model *model);
  * Hidden: the bounds of Cover and Thomas 2006, theorem 4.5.1, where they meet
  * to 1e-10 by n = 22; else the transfer operator of the belief (Blackwell
  * 1957) by collocation, refined until two grids agree to 1e-8.
- * STATUS_NO_MEMORY; STATUS_BAD_INPUT: no grid reached 1e-7.
+ * STATUS_NO_MEMORY; STATUS_BAD_INPUT: too large, or no grid
+ * reached 1e-7.
  */
 MUST_USE enum status source_model_rate(const struct source_model *model,
 				       struct known_rate *rate,

@@ -4,28 +4,21 @@
  */
 #include "symbols/sequence.h"
 
+#include "support/fetched.h"
 #include "support/near.h"
 #include "support/symbols_of.h"
 
 #include <math.h>
 #include <stdio.h>
 
+#define CORPUS_BYTES_MAX 10000000
+
 /* Bytes of a fetched corpus; length 0 where it is not there. */
 static struct slice corpus_read(const char *name)
 {
-	uint8_t *bytes = NULL;
-	char path[256];
-	size_t length;
-	FILE *file;
+	struct fetched file = fetched_read(name, CORPUS_BYTES_MAX);
 
-	(void)snprintf(path, sizeof(path), "corpora/fetched/%s", name);
-	file = fopen(path, "rb");
-	if (!file)
-		return (struct slice){NULL, 0};
-	assert_int_equal(memory_new(10000000, 1, &bytes), STATUS_OK);
-	length = fread(bytes, 1, 10000000, file);
-	(void)fclose(file);
-	return (struct slice){bytes, length};
+	return (struct slice){file.bytes, file.length};
 }
 
 /* Entropy of grams of one or two codes of one byte, cyclic, in bits. */

@@ -5,33 +5,21 @@
  */
 #include "estimate/corrections.h"
 
+#include "support/fetched.h"
 #include "support/grams.h"
 #include "support/near.h"
 
 #include <math.h>
-#include <stdio.h>
 #include <stdlib.h>
 
+/* A whole fetched file, which must have so many bytes. */
 static uint8_t *fetched(const char *name, size_t bytes)
 {
-	const char *folder = getenv("RATEFLOOR_CORPORA");
-	uint8_t *content = malloc(bytes + 1);
-	char path[4096];
-	FILE *file;
-	size_t length;
+	struct fetched file = fetched_read(name, bytes + 1);
 
-	snprintf(path, sizeof(path), "%s/%s",
-		 folder ? folder : "corpora/fetched", name);
-	file = fopen(path, "rb");
-	if (!file) {
-		printf("%s is not fetched\n", name);
-		free(content);
-		return NULL;
-	}
-	length = fread(content, 1, bytes + 1, file);
-	fclose(file);
-	assert_int_equal(length, bytes);
-	return content;
+	if (file.bytes)
+		assert_int_equal(file.length, bytes);
+	return file.bytes;
 }
 
 /* Order-0 entropies in bits a byte, by an independent count of bytes (common

@@ -97,8 +97,8 @@ static double bits_of_pages(const struct sequence *sequence, size_t page,
 static void check_by_definition(const struct sequence *sequence, size_t page)
 {
 	struct findings findings = measure(sequence, NULL, page);
-	double all = (double)sequence->alphabet, best = INFINITY;
-	double seen = sequence->distinct;
+	double all = (double)sequence->alphabet, best = HUGE_VAL;
+	double seen = (double)sequence->distinct;
 	unsigned chosen = 0;
 
 	for (unsigned k = 0; k < DIRICHLET_ORDERS; k++) {

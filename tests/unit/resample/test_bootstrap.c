@@ -83,7 +83,7 @@ static void one_odd_block_is_no_spread(void **state)
 	}
 	result = interval(100, 1, "a");
 	assert_false(result.known);
-	assert_non_null(strstr(result.reason, "about 1 block"));
+	assert_non_null(strstr(result.reason, "about 1 of the blocks"));
 }
 
 /* One long swing: so few independent pieces that nothing can be said. */

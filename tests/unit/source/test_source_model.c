@@ -128,6 +128,28 @@ static void bounds_have_limits(void **state)
 	source_model_release(&model);
 }
 
+static void grids_have_limits(void **state)
+{
+	enum { LETTERS = 64 };
+	static uint32_t weights[3 * LETTERS * LETTERS];
+	const uint32_t moves[9] = {8, 1, 1, 1, 8, 1, 1, 1, 8};
+	struct known_rate rate = {-1, -1};
+	struct source_model model;
+	struct reason why = {{0}};
+
+	(void)state;
+	for (uint32_t i = 0; i < 3 * LETTERS * LETTERS; i++)
+		weights[i] = 1 + i % 7;
+	assert_int_equal(source_model_init_switching(&model, 3, LETTERS, moves,
+						     weights, NULL),
+			 STATUS_OK);
+	assert_int_equal(source_model_rate(&model, &rate, &why),
+			 STATUS_BAD_INPUT);
+	assert_non_null(strstr(why.text, "too many"));
+	assert_near(rate.bits_per_symbol, -1, 0);
+	source_model_release(&model);
+}
+
 static void release_takes_the_empty(void **state)
 {
 	struct source_model model = {0};
@@ -279,6 +301,7 @@ int main(void)
 		cmocka_unit_test(shapes_have_limits),
 		cmocka_unit_test(one_closed_class_only),
 		cmocka_unit_test(bounds_have_limits),
+		cmocka_unit_test(grids_have_limits),
 		cmocka_unit_test(release_takes_the_empty),
 		cmocka_unit_test(a_packed_model_is_its_row),
 		cmocka_unit_test(a_trained_chain_has_the_cyclic_h3_of_its_text),

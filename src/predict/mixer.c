@@ -1,0 +1,42 @@
+#include "predict/parts.h"
+
+#include "base/log2.h"
+
+void mixer_restart(struct mixer *mixer, int16_t even, int16_t odd)
+{
+	size_t rows = (size_t)SETS * SET_ROWS;
+
+	for (size_t row = 0; row < rows; row++) {
+		int16_t *w = mixer->weights + row * mixer->inputs;
+
+		for (unsigned i = 0; i < mixer->inputs; i++)
+			w[i] = i % 2 ? odd : even;
+		w[mixer->inputs - 1] = 0;
+	}
+	for (size_t row = 0; row < SET_ROWS; row++) {
+		for (unsigned i = 0; i < SETS; i++)
+			mixer->final[row][i] = 65536 / SETS;
+	}
+	for (size_t row = 0; row < STAGE_ROWS; row++) {
+		for (int i = 0; i < STAGE_ROOM; i++) {
+			int x = (i - STAGE_ROOM / 2) * STAGE_STEP;
+			size_t at = row * STAGE_ROOM + (size_t)i;
+			uint32_t p;
+
+			x = x > LOGIT_MAX ? LOGIT_MAX : x;
+			x = x < -LOGIT_MAX ? -LOGIT_MAX : x;
+			p = (uint32_t)mixer->tables.squash[x + LOGIT_MAX];
+			mixer->stage[0][at] = p << 16;
+			mixer->stage[1][at] = p << 16;
+		}
+	}
+	mixer->seen = 0;
+	mixer->rate = 160;
+}
+
+int64_t tally_q32(const struct tally *tally)
+{
+	int64_t top = (int64_t)log2_q32(tally->mantissa) - 63 * BIT_Q32;
+
+	return (int64_t)(tally->halvings << 32) - top;
+}
