@@ -3,6 +3,7 @@
 #include "base/memory.h"
 #include "gap/bracket.h"
 #include "gap/cell_view.h"
+#include "gap/extrapolation.h"
 #include "gap/gram_orders.h"
 #include "gap/headline.h"
 
@@ -26,6 +27,8 @@ static enum status derive(struct corpus_view *view, const struct ground *ground)
 		status = cells_init(view, ground, &lengths);
 	if (status == STATUS_OK)
 		status = bracket_find(view, ground, &lengths, &view->bracket);
+	if (status == STATUS_OK)
+		extrapolation_find(ground, &lengths, &view->extrapolation);
 	lengths_release(&lengths);
 	return status;
 }

@@ -64,6 +64,20 @@ struct bracket_row {
 	char reason[ANALYSIS_REASON_BYTES];
 };
 
+/*
+ * What the shortest code row would tend to on endless data of this kind: the
+ * spread of three published forms from two start points. Not a bound.
+ */
+struct extrapolation_row {
+	bool known;
+	char method[3 * CELL_NAME_BYTES];
+	double last;      /* bits per symbol of the row here */
+	double low, high; /* of the fits */
+	double miss;      /* worst error at the last point when left out */
+	unsigned fits;
+	char reason[ANALYSIS_REASON_BYTES];
+};
+
 /* achieved = floor + restart + family + effort + framing, signed. */
 struct gap_stack {
 	bool known;
@@ -101,6 +115,7 @@ struct corpus_view {
 	size_t estimate_count;
 	struct floor_row floor;
 	struct bracket_row bracket;
+	struct extrapolation_row extrapolation;
 	struct cell_row *cells; /* owned, same order as fact->cells */
 	size_t cell_count;
 };

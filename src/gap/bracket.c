@@ -8,8 +8,8 @@
 
 /* How far an order may move between half of the data and all of it. */
 #define STABLE_SHARE 0.02
-/* Chao-Jost coverage below which grams of an order tell nothing. */
-#define COVERAGE_LEAST 0.5
+/* Chao-Jost coverage below which corrections fall short by a percent. */
+#define COVERAGE_LEAST 0.9
 
 /* What the edges are made of while they are found. */
 struct edges {
@@ -75,18 +75,19 @@ static void find_fitted(struct edges *edges)
 }
 
 /*
- * What one more symbol of context would still take off h_k^. Where most grams
- * were never seen both corrections fall short, so the higher is taken; where
- * not even half of the probability was, neither says anything, and the order
- * below it (two at least) has to do.
+ * h of one more symbol of context. Where many of its grams were never seen,
+ * every correction falls short, ever further from the truth than h_k^ is: then
+ * one more symbol is taken to win at most what the last one did.
  */
 static double next_order(const struct edges *edges)
 {
 	const struct order_row *next = &edges->view->orders[edges->stable];
+	double seen = fmax(next->h_corrected, next->h_cwj);
+	double here = corrected(edges, edges->stable);
 
-	if (next->coverage < COVERAGE_LEAST && edges->stable >= 2)
-		return corrected(edges, edges->stable);
-	return fmax(next->h_corrected, next->h_cwj);
+	if (next->coverage >= COVERAGE_LEAST || edges->stable < 2)
+		return seen;
+	return fmax(seen, 2 * here - corrected(edges, edges->stable - 1));
 }
 
 static double lower_edge(const struct edges *edges, double w)

@@ -16,12 +16,12 @@
  *   lower = min(GR_k^ - D_k^, GR_kX - D_kX, N) - w
  *   upper = min over orders k and codes j of (XF_k + w_k, L_j / n + w_j)
  *
- * where N is the higher of the Grassberger and Chao-Wang-Jost h_(k^+1); left
- * out where k^ >= 2 and the coverage of the grams of order k^+1 is under half:
- * they are then fiction on either correction, and would widen the bracket with
- * more data. lower is at least 0. Open below: a code, or upper, is below lower.
- * Needs the orders of view. Without a bracket: STATUS_OK, known false and the
- * reason. STATUS_NO_MEMORY.
+ * where N is the higher of the Grassberger and Chao-Wang-Jost h_(k^+1). Where
+ * under 90% of those grams were seen and k^ >= 2, N is at least 2 GR_k^ -
+ * GR_(k^-1): diminishing returns, as both corrections are then fiction and
+ * would widen the bracket with more data. lower is at least 0. Open below: a
+ * code, or upper, is below lower. Needs the orders of view. Without a bracket:
+ * STATUS_OK, known false and the reason. STATUS_NO_MEMORY.
  */
 MUST_USE enum status bracket_find(const struct corpus_view *view,
 				  const struct ground *ground,

@@ -81,6 +81,20 @@ static json_t *bracket_object(const struct bracket_row *bracket)
 	return json_done(&made);
 }
 
+static json_t *extrapolation_object(const struct extrapolation_row *row)
+{
+	struct json_maker made;
+
+	json_begin(&made);
+	json_put_reason(&made, "method", row->method);
+	json_put_real(&made, "low", row->known, row->low);
+	json_put_real(&made, "high", row->known, row->high);
+	json_put_real(&made, "last", row->known, row->last);
+	json_put_real(&made, "worst_miss", row->known, row->miss);
+	json_put_reason(&made, "reason", row->reason);
+	return json_done(&made);
+}
+
 static void put_rows(struct json_maker *made, const struct corpus_view *view)
 {
 	json_t *orders = json_array();
@@ -141,6 +155,8 @@ json_t *json_corpus(const struct corpus_view *view)
 	put_rows(&made, view);
 	json_put(&made, "floor", floor_object(&view->floor));
 	json_put(&made, "bracket", bracket_object(&view->bracket));
+	json_put(&made, "extrapolation",
+		 extrapolation_object(&view->extrapolation));
 	put_cells(&made, view);
 	put_more(&made, view);
 	return json_done(&made);

@@ -112,6 +112,25 @@ static void bracket_words(const struct writer *writer,
 				"less sure than intervals of steady data.");
 }
 
+static void extrapolation_words(const struct writer *writer,
+				const struct extrapolation_row *row)
+{
+	if (!row->known) {
+		if (row->reason[0])
+			write_paragraph(writer, "No extrapolation: %s.",
+					row->reason);
+		return;
+	}
+	write_paragraph(writer,
+			"On endless data of this kind %s would come to %s to "
+			"%s bits per symbol: the spread of %u fits (three "
+			"published forms, two start points), whose worst miss "
+			"at the last point was %s. Not a bound.",
+			row->method, figure_bits(true, row->low).text,
+			figure_bits(true, row->high).text, row->fits,
+			figure_bits(true, row->miss).text);
+}
+
 /* A stated rate is a test that the bracket may fail. */
 static void known_rate_words(const struct writer *writer,
 			     const struct corpus_fact *fact,
@@ -174,5 +193,6 @@ void paper_corpus_words(const struct writer *writer,
 	floor_words(writer, &view->floor);
 	bracket_words(writer, &view->bracket);
 	known_rate_words(writer, fact, &view->bracket);
+	extrapolation_words(writer, &view->extrapolation);
 	trust_words(writer, view);
 }

@@ -168,19 +168,21 @@ static enum status run_case(struct batch *batch, size_t length,
 	return status;
 }
 
-static bool is_wanted(const struct calibration_rules *rules,
+static bool is_wanted(const struct calibration_rules *rules, size_t length,
 		      const struct frozen_source *row)
 {
-	return !rules->source || strcmp(rules->source, row->name) == 0;
+	if (rules->source)
+		return strcmp(rules->source, row->name) == 0;
+	return row->alphabet >= rules->alphabet_least[length];
 }
 
-static size_t count_wanted(const struct calibration_rules *rules)
+static size_t count_wanted(const struct calibration_rules *rules, size_t length)
 {
 	const struct frozen_source *row;
 	size_t count = 0;
 
 	for (size_t i = 0; (row = frozen_at(i)); i++)
-		count += is_wanted(rules, row);
+		count += is_wanted(rules, length, row);
 	return count;
 }
 
@@ -189,8 +191,9 @@ static double total_symbols(const struct calibration_rules *rules)
 	double total = 0;
 
 	for (size_t i = 0; i < rules->length_count; i++)
-		total += (double)rules->symbols[i] * (double)rules->runs[i];
-	return total * (double)count_wanted(rules);
+		total += (double)rules->symbols[i] * (double)rules->runs[i] *
+			 (double)count_wanted(rules, i);
+	return total;
 }
 
 static enum status run_cases(struct batch *batch,
@@ -205,7 +208,7 @@ static enum status run_cases(struct batch *batch,
 			struct calibration_case *made =
 				&calibration->cases[calibration->case_count];
 
-			if (!is_wanted(rules, row))
+			if (!is_wanted(rules, length, row))
 				continue;
 			TRY(run_case(batch, length, row, made));
 			calibration->case_count++;
@@ -237,17 +240,18 @@ enum status calibration_run(const struct calibration_rules *rules,
 			    struct calibration *calibration, struct reason *why)
 {
 	struct calibration made = {.rules = *rules};
-	size_t wanted = count_wanted(rules);
+	size_t wanted = 0;
 	struct reason words = {""};
 	enum status status;
 
+	for (size_t i = 0; i < rules->length_count; i++)
+		wanted += count_wanted(rules, i);
 	if (!wanted)
 		return reason_give(why, STATUS_BAD_USAGE,
 				   "no source %s on the frozen list; leave "
 				   "--source out to see them all",
 				   rules->source);
-	TRY(memory_new_zeroed(wanted * rules->length_count, sizeof(*made.cases),
-			      &made.cases));
+	TRY(memory_new_zeroed(wanted, sizeof(*made.cases), &made.cases));
 	status = run_all(&made, &words);
 	if (status != STATUS_OK) {
 		calibration_release(&made);

@@ -12,6 +12,8 @@ struct calibration_rules {
 	/* Symbols a sample, and how many samples, pair by pair. */
 	uint64_t symbols[CALIBRATION_LENGTHS_MAX];
 	size_t runs[CALIBRATION_LENGTHS_MAX]; /* at least 2 */
+	/* Sources with fewer symbols are left out at this length. */
+	unsigned alphabet_least[CALIBRATION_LENGTHS_MAX];
 	size_t length_count;
 	const char *source; /* only this one; NULL: all frozen ones */
 	unsigned orders;    /* K */

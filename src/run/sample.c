@@ -11,7 +11,7 @@
 /* Draws of each bootstrap, and its confidence: the survey's own. */
 static const struct analysis_rules interval_rules = {1999, 0.95};
 
-#define GAP_SYMBOLS_MIN 65536
+#define GAP_SYMBOLS_MIN 262144
 
 /* Rows that are run, where the program has them. */
 static const char *const row_names[] = {"ngram", "crossfit", "dirichlet",

@@ -72,24 +72,32 @@ static bool covers(double low, double high, double value)
 }
 
 static void judge_row(const struct trial *trials, size_t count, size_t r,
-		      double known_rate, double *scratch,
-		      struct calibration_row *row)
+		      const struct calibration_subject *subject,
+		      double *scratch, struct calibration_row *row)
 {
+	double known_rate = subject->known_rate;
 	double mean = mean_estimate(trials, count, r);
-	size_t told = 0, own = 0, truth = 0;
+	size_t told = 0, own = 0, truth = 0, trusted = 0, trusted_truth = 0;
 
 	memcpy(row->name, trials[0].rows[r].name, sizeof(row->name));
 	for (size_t i = 0; i < count; i++) {
 		const struct trial_row *run = &trials[i].rows[r];
+		bool hit;
 
 		if (!run->has_interval)
 			continue;
 		own += covers(run->low, run->high, mean);
-		truth += covers(run->low, run->high, known_rate);
+		hit = covers(run->low, run->high, known_rate);
+		truth += hit;
+		if (trials[i].trusted_order >= subject->order) {
+			trusted++;
+			trusted_truth += hit;
+		}
 		scratch[told++] = run->high - run->low;
 	}
 	row->own_mean = share(own, told);
 	row->true_rate = share(truth, told);
+	row->trusted_rate = share(trusted_truth, trusted);
 	row->told = share(told, count);
 	row->width = median_of(scratch, told);
 	judge_errors(trials, count, r, known_rate, row);
@@ -177,8 +185,7 @@ enum status calibration_judge(const struct calibration_subject *subject,
 	TRY(memory_new(count, sizeof(*scratch), &scratch));
 	judged.row_count = trials[0].row_count;
 	for (size_t r = 0; r < judged.row_count; r++)
-		judge_row(trials, count, r, subject->known_rate, scratch,
-			  &judged.rows[r]);
+		judge_row(trials, count, r, subject, scratch, &judged.rows[r]);
 	judge_bracket(trials, count, scratch, &judged);
 	judge_drift(trials, count, &judged);
 	judge_gap(trials, count, scratch, &judged);

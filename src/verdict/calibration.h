@@ -23,7 +23,10 @@ struct calibration_row {
 	struct measured width;       /* median full width of the interval */
 	struct proportion own_mean;  /* covers the estimator's own mean */
 	struct proportion true_rate; /* covers the rate of the source */
-	struct proportion told;      /* runs with an interval */
+	/* The same, of the runs whose trusted order reaches this one: where the
+	 * program itself would show the figure. */
+	struct proportion trusted_rate;
+	struct proportion told; /* runs with an interval */
 };
 
 /* What is being calibrated; text is copied. */
@@ -76,13 +79,13 @@ struct calibration_goal {
 };
 
 /* At each length, at most so many. */
-#define CALIBRATION_GOALS 10
+#define CALIBRATION_GOALS 12
 
 /*
  * Judges the cases of one length against the promises; goals has room for
  * CALIBRATION_GOALS; returns how many the cases speak to. Coverage of own
- * means is met where its Wilson interval meets the range, all else by value.
- * Pure.
+ * means, averaged over plug-in and crossfit, is met where its Wilson interval
+ * meets the range, all else by value. Pure.
  */
 size_t calibration_goals(const struct calibration_case *cases, size_t count,
 			 struct calibration_goal *goals);

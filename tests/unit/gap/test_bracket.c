@@ -104,6 +104,60 @@ static void growth_between_halves_lowers_it(void **state)
 	assert_near(row.low, .985, 1e-6);
 }
 
+/* Grams of order k^ + 1 mostly seen once: both corrections are far too low. */
+static void make_order_4_unseen(struct survey *survey)
+{
+	struct gram_counts *all =
+		&survey->corpora[0].methods[0].findings.orders[3].all;
+
+	all->once = all->positions * 6 / 10;
+	all->twice = all->once / 4;
+	/* h_4 = .5 at either correction, less what CWJ adds for the unseen. */
+	all->grassberger_q16 += llround((double)all->positions * .5 * 65536);
+	all->psi_q16 += llround((double)all->positions * 6 * 65536);
+}
+
+static void unseen_grams_do_not_widen_it(void **state)
+{
+	struct survey survey;
+	struct bracket_row row;
+
+	(void)state;
+	build(&survey, fits, 0);
+	make_order_4_unseen(&survey);
+	/* h_3 lies .01 below h_2: order 4 is taken to win no more than that. */
+	survey.corpora[0].methods[0].findings.orders[2].all.grassberger_q16 +=
+		4000 * 65536;
+	for (int half = 0; half < 2; half++)
+		survey.corpora[0]
+			.methods[0]
+			.findings.orders[2]
+			.half[half]
+			.grassberger_q16 += 2000 * 65536;
+	row = bracket_of(&survey);
+	assert_true(row.known);
+	assert_int_equal(row.order, 3);
+	assert_near(row.low, .98, 1e-6);
+}
+
+/* Seen well, the same fall of h_4 is believed. */
+static void seen_grams_do(void **state)
+{
+	struct survey survey;
+	struct bracket_row row;
+	struct gram_counts *all;
+
+	(void)state;
+	build(&survey, fits, 0);
+	all = &survey.corpora[0].methods[0].findings.orders[3].all;
+	all->grassberger_q16 += llround((double)all->positions * .5 * 65536);
+	all->psi_q16 += llround((double)all->positions * .4 * 65536);
+	row = bracket_of(&survey);
+	assert_true(row.known);
+	/* The higher of .5 and .6, less what psi leaves out: 1 / 2c. */
+	assert_near(row.low, .6, 1e-3);
+}
+
 static void a_code_below_refutes_it(void **state)
 {
 	struct survey survey;
@@ -197,6 +251,8 @@ int main(void)
 		cmocka_unit_test(a_shorter_code_lowers_the_upper_edge),
 		cmocka_unit_test(the_lower_edge_lies_w_below),
 		cmocka_unit_test(growth_between_halves_lowers_it),
+		cmocka_unit_test(unseen_grams_do_not_widen_it),
+		cmocka_unit_test(seen_grams_do),
 		cmocka_unit_test(a_code_below_refutes_it),
 		cmocka_unit_test(drifting_blocks_are_not_calibrated),
 		cmocka_unit_test(refusals_say_what_would_do),
