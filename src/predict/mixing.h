@@ -108,8 +108,8 @@ ALWAYS_INLINE void mix_update(struct mixer *mixer, struct mixing *mixing,
 	stage_update(mixing, 0, bit);
 	stage_update(mixing, 1, bit);
 	if (mixer->seen < LEARNING_END && mixer->seen++ % 64 == 0)
-		mixer->rate = RATE_LAST + (int32_t)(RATE_MORE * 2048 /
-						    (2048 + mixer->seen));
+		mixer->rate = RATE_LAST + (int32_t)(RATE_MORE * 16384 /
+						    (16384 + mixer->seen));
 }
 
 /* All eight bits of a byte, given the inputs of each. */

@@ -234,8 +234,14 @@ void past_warm(const struct past *past, const uint8_t *bytes, size_t position)
 	__builtin_prefetch(&match->table[match_entry(match, last8)], 1);
 }
 
+/* More where each tells something new; even numbers, taken two by two. */
 unsigned past_contexts(const struct predict_plan *plan)
 {
-	return plan->strength == STRENGTH_DEEP ? CONTEXTS_NIGHTLY + 2
-					       : CONTEXTS_NIGHTLY;
+	static const unsigned nightly[FAMILY_COUNT] = {
+		[FAMILY_PROSE] = 12,  [FAMILY_LINES] = 12, [FAMILY_BINARY] = 10,
+		[FAMILY_RECORDS] = 8, [FAMILY_IMAGE] = 8,
+	};
+
+	return plan->strength == STRENGTH_DEEP ? CONTEXTS_DEEP
+					       : nightly[plan->family];
 }

@@ -6,7 +6,7 @@
 
 #include "base/status.h"
 
-#define CONTEXTS_NIGHTLY 12
+#define CONTEXTS_DEEP 14
 #define CONTEXTS_MAX 30
 #define FIELDS_MAX 32
 #define SELECTORS 3
