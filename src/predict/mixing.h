@@ -77,11 +77,19 @@ ALWAYS_INLINE void set_update(struct mixer *mixer, struct mixing *mixing,
 	lanes_train(mixing->inputs, mixing->weights[i], inputs, (int16_t)step);
 }
 
+/* By the match (none, short, long, doubtful), contexts seen, and bit. */
+ALWAYS_INLINE unsigned match_row(const struct selection *at)
+{
+	unsigned kind = (at->step > 0) + (at->step > 15) + (at->step > 27);
+
+	return (kind * 16 + at->view->hits) * 4 + (at->bit >> 1);
+}
+
 ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
 				   const struct selection *at,
 				   struct mixing *mixing, unsigned inputs)
 {
-	unsigned match = at->step * 8 + at->bit;
+	unsigned match = match_row(at);
 	unsigned row =
 		(at->view->hash[1] >> 16 ^ at->partial * 0x9e35u) & 0x3fff;
 	int64_t sum;
@@ -93,7 +101,7 @@ ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
 	sum += set_predict(mixer, mixing, 2, at->view->select[2], inputs);
 	mixing->x = logit_clip((int32_t)(sum >> 16));
 	mixing->p_final = mixer->tables.squash[mixing->x + LOGIT_MAX];
-	stage_predict(mixer, mixing, 0, at->partial, &p0);
+	stage_predict(mixer, mixing, 0, row0, &p0);
 	stage_predict(mixer, mixing, 1, row, &p1);
 	p = (mixing->p_final + p0 + 2 * p1 + 2) >> 2;
 	return p < 1 ? 1 : p > 65535 ? 65535 : p;

@@ -129,7 +129,8 @@ ALWAYS_INLINE void run_duo(struct predictor *p, const struct chunk *chunk,
 
 	for (size_t i = 0; i < actives; i++) {
 		unsigned at = chunk->active[i], byte = chunk->bytes[at];
-		const uint32_t *hash = &chunk->views[at].hash[k];
+		struct view *view = &chunk->views[at];
+		const uint32_t *hash = &view->hash[k];
 		struct place a, b;
 
 		duo.trend_a[0] = duo.trend_b[0] = TREND_HALF;
@@ -137,6 +138,8 @@ ALWAYS_INLINE void run_duo(struct predictor *p, const struct chunk *chunk,
 		place_begin(&b, lines_b, lines_log2, hash[1]);
 		duo.a = a.slot;
 		duo.b = b.slot;
+		view->hits = (uint8_t)(view->hits + (a.slot[1] != 0) +
+				       (b.slot[1] != 0));
 		run_nibble(tables, &duo, byte >> 4, inputs, width);
 		inputs += 4 * width;
 		place_middle(&a, byte >> 4);

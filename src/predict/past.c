@@ -217,6 +217,7 @@ void past_look(const struct past *past, struct view *view)
 		view->match_step[i] = match_step(&match[i]);
 		view->expected[i] = match[i].at ? past->bytes[match[i].at] : 0;
 	}
+	view->hits = 0;
 	view->last = (uint8_t)past->last8;
 	view->lane = match[0].at && match[0].length >= LANE_LENGTH;
 	contexts_look(past, view);

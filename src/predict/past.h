@@ -22,8 +22,9 @@ struct view {
 	uint32_t hash[CONTEXTS_MAX];
 	uint8_t expected[2];   /* the bytes that two matches go on with */
 	uint8_t match_step[2]; /* 0: there is no match */
-	uint8_t last;          /* the byte before */
-	bool lane; /* code whether expected[0] comes, before its bits */
+	uint8_t hits; /* contexts seen before; counted as they are looked up */
+	uint8_t last; /* the byte before */
+	bool lane;    /* code whether expected[0] comes, before its bits */
 	uint16_t select[SELECTORS]; /* weight sets, each below 256 */
 };
 

@@ -153,6 +153,8 @@ static void gather(struct predictor *p)
 		if (p->bit == 0)
 			place_begin(place, context_lines(p, i), p->lines_log2,
 				    p->view.hash[i]);
+		if (p->bit == 0)
+			p->view.hits += place->slot[1] != 0;
 		if (p->bit == 4)
 			place_middle(place, p->partial & 15);
 		trend = p->trend[i]
