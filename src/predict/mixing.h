@@ -80,7 +80,9 @@ ALWAYS_INLINE void set_update(struct mixer *mixer, struct mixing *mixing,
 /* By the match (none, short, long, doubtful), contexts seen, and bit. */
 ALWAYS_INLINE unsigned match_row(const struct selection *at)
 {
-	unsigned kind = (at->step > 0) + (at->step > 15) + (at->step > 27);
+	unsigned kind = at->step == 0 ? 0 : at->step < 16 ? 1 : 2;
+
+	kind += at->step > 27 ? 1 : 0;
 
 	return (kind * 16 + at->view->hits) * 4 + (at->bit >> 1);
 }
@@ -90,6 +92,7 @@ ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
 				   struct mixing *mixing, unsigned inputs)
 {
 	unsigned match = match_row(at);
+	unsigned row0 = (at->view->last * 256U + at->partial) % STAGE_ROWS;
 	unsigned row =
 		(at->view->hash[1] >> 16 ^ at->partial * 0x9e35u) & 0x3fff;
 	int64_t sum;
