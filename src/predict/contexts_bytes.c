@@ -111,6 +111,9 @@ void contexts_look(const struct past *past, struct view *view)
 	case FAMILY_RECORDS:
 		n = contexts_records(past, view);
 		break;
+	case FAMILY_FIELDS:
+		n = contexts_fields(past, view);
+		break;
 	case FAMILY_IMAGE:
 		n = contexts_image(past, view);
 		break;

@@ -154,7 +154,8 @@ static void gather(struct predictor *p)
 			place_begin(place, context_lines(p, i), p->lines_log2,
 				    p->view.hash[i]);
 		if (p->bit == 0)
-			p->view.hits += place->slot[1] != 0;
+			p->view.hits =
+				(uint8_t)(p->view.hits + (place->slot[1] != 0));
 		if (p->bit == 4)
 			place_middle(place, p->partial & 15);
 		trend = p->trend[i]
@@ -189,6 +190,7 @@ unsigned predictor_decision(const struct predictor *p, uint8_t byte)
 {
 	if (p->bases)
 		return bases_decision(p->bases, byte);
+	byte = (uint8_t)(byte - p->view.base);
 	if (p->plan.family != FAMILY_FLAT && p->in_lane)
 		return byte == p->view.expected[0];
 	return byte >> (7 - p->bit) & 1;
@@ -196,6 +198,7 @@ unsigned predictor_decision(const struct predictor *p, uint8_t byte)
 
 static bool complete(struct predictor *p, uint8_t value, uint8_t *byte)
 {
+	value = (uint8_t)(value + p->view.base);
 	p->begun = false;
 	p->pending = true;
 	p->bit = 0;
