@@ -1,4 +1,4 @@
-#define _GNU_SOURCE /* _SC_AVPHYS_PAGES */
+#define _GNU_SOURCE /* _SC_PHYS_PAGES */
 #include "base/memory.h"
 
 #include <stdlib.h>
@@ -72,7 +72,7 @@ void memory_free(void *block)
 
 uint64_t memory_available(void)
 {
-	long pages = sysconf(_SC_AVPHYS_PAGES);
+	long pages = sysconf(_SC_PHYS_PAGES);
 	long page_bytes = sysconf(_SC_PAGESIZE);
 	uint64_t available = UINT64_MAX;
 	struct rlimit limit;

@@ -25,7 +25,10 @@ MUST_USE enum status memory_resize(void *block, size_t count, size_t size);
 /* Gives a block back; NULL is allowed. */
 void memory_free(void *block);
 
-/* Bytes this process may still take: the least of free memory and limits. */
+/*
+ * Bytes this process can hope for at most: physical memory, or the limit on its
+ * address space where that is less. Free memory is no guide: caches give way.
+ */
 uint64_t memory_available(void);
 
 /* A growing run of bytes with its largest size fixed at birth. */

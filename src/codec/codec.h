@@ -26,6 +26,11 @@ struct codec_job {
 	const struct codec_setting *setting;
 	struct slice input;
 	/*
+	 * Encode only: the input is one page of this many bytes at most, so a
+	 * row may ask for no larger a window; 0: the setting as it is.
+	 */
+	size_t page_bytes;
+	/*
 	 * Encode only: flush so that every byte up to cuts[i] is decodable, and
 	 * count the bytes sent for each piece; cuts[cut_count - 1] is the end.
 	 * The last piece carries the trailer. NULL: one unflushed stream.
@@ -51,12 +56,16 @@ struct codec {
 	/* Appends to out. STATUS_CODEC with the library's words, NO_MEMORY. */
 	enum status (*encode)(const struct codec_job *job, struct buffer *out,
 			      struct reason *why);
-	/* out's limit bounds what a hostile stream may expand to. */
+	/*
+	 * out's limit bounds what a hostile stream may expand to; it must be
+	 * at least one byte more than what is expected.
+	 */
 	enum status (*decode)(const struct codec_job *job, struct buffer *out,
 			      struct reason *why);
 	/*
 	 * Container bytes in one whole encoded stream: header, trailer, check,
-	 * index, padding. STATUS_BAD_INPUT: not such a stream. NULL: unknown.
+	 * index, padding. STATUS_BAD_INPUT: not such a stream, or NO_MEMORY.
+	 * NULL: unknown.
 	 */
 	enum status (*framing)(struct slice stream, uint64_t *bytes);
 };

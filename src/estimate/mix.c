@@ -118,6 +118,7 @@ const struct estimator estimator_mix = {
 	.source = "Mahoney 2005; Mattern 2013",
 	.leans = LEANS_ABOVE,
 	.is_code = true,
+	.reads_words = true,
 	.work = 1,
 	.measure = mix_measure,
 };
@@ -128,6 +129,7 @@ const struct estimator estimator_mix_deep = {
 	.source = "Mahoney 2005; Mattern 2013",
 	.leans = LEANS_ABOVE,
 	.is_code = true,
+	.reads_words = true,
 	.deep = true,
 	.work = 4,
 	.measure = mix_deep_measure,

@@ -5,10 +5,16 @@
 #include <string.h>
 
 const struct estimator *const estimators[] = {
+	/* clang-format off */
 	&estimator_uniform,
+	&estimator_ngram,
+	&estimator_crossfit,
+	&estimator_match,
+	&estimator_dirichlet,
 	&estimator_mix,
 	&estimator_mix_deep,
 	NULL,
+	/* clang-format on */
 };
 
 const struct estimator *estimator_find(const char *name)

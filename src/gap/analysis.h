@@ -37,7 +37,9 @@ struct order_row {
 /* One row of table 1 as shown. */
 struct estimate_row {
 	const struct method_fact *fact; /* borrowed */
-	bool known; /* false: fact->outcome and fact->reason say why */
+	bool known;        /* false: fact->outcome and fact->reason say why */
+	const char *leans; /* borrowed: "above", "none", "unknown" */
+	bool is_code;      /* bits a decoder could live on */
 	double bits_per_symbol;
 	unsigned order; /* at which, where the row has orders */
 	struct interval interval;

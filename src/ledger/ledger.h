@@ -1,4 +1,13 @@
-/* The ledger: a SQLite file of measured facts, one transaction a row. */
+/*
+ * The ledger: a SQLite file of measured facts, one transaction a row.
+ *
+ * A rollback journal stands beside the file only while a row is written: a
+ * kill loses at most that row, and whoever opens the file next takes it back.
+ * Beyond the statuses named at a function, each call may return STATUS_LEDGER
+ * (damaged: the row and column are named; or in use by another process for
+ * more than two seconds), STATUS_IO (disk full, folder gone) or
+ * STATUS_NO_MEMORY. Rows that are in the file already are never lost by one.
+ */
 #ifndef LEDGER_LEDGER_H
 #define LEDGER_LEDGER_H
 
@@ -13,6 +22,8 @@ enum ledger_mode { LEDGER_READ, LEDGER_WRITE };
  * Opens, and with LEDGER_WRITE creates, the file. STATUS_NOT_FOUND: nothing
  * there to read; STATUS_IO: folder read-only, disk full; STATUS_LEDGER: not a
  * ledger, a newer schema (both numbers named), or in use by another process.
+ * A file that is refused stays as it was. LEDGER_READ works in a folder that
+ * cannot be written to.
  */
 MUST_USE enum status ledger_open(const char *path, enum ledger_mode mode,
 				 struct ledger **ledger, struct reason *why);
@@ -35,7 +46,10 @@ MUST_USE enum status ledger_finish(struct ledger *ledger, int64_t survey,
 
 /*
  * One transaction each. place is the index in the set, which orders the rows.
- * Writing a row that is there replaces it.
+ * Writing a row that is there replaces it. The survey comes first, then the
+ * corpus, then its methods and cells, a cell before its timing:
+ * STATUS_BAD_USAGE otherwise. Replacing a corpus keeps the rows under it;
+ * replacing a cell drops its timing unless the new one is timed.
  */
 MUST_USE enum status ledger_put_corpus(struct ledger *ledger, int64_t survey,
 				       size_t place,
@@ -55,7 +69,10 @@ MUST_USE enum status ledger_put_timing(struct ledger *ledger, int64_t survey,
 				       const struct cell_timing *timing,
 				       struct reason *why);
 
-/* Reads a survey whole; id 0 is the newest. STATUS_NOT_FOUND names the ids. */
+/*
+ * Reads a survey whole, finished or not; id 0 is the newest. The caller
+ * releases it. STATUS_NOT_FOUND names the ids that are there.
+ */
 MUST_USE enum status ledger_read(struct ledger *ledger, int64_t id,
 				 struct survey *survey, struct reason *why);
 /* Ids of all surveys, oldest first; *ids is owned by the caller. */

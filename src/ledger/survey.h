@@ -78,7 +78,10 @@ struct survey {
 	size_t corpus_count;
 };
 
-/* Accepts an initialised-empty survey. */
+/* Each accepts an initialised-empty one. */
+void method_fact_release(struct method_fact *method);
+void cell_fact_release(struct cell_fact *cell);
+void corpus_fact_release(struct corpus_fact *corpus);
 void survey_release(struct survey *survey);
 
 #endif

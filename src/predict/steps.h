@@ -74,7 +74,7 @@ ALWAYS_INLINE void common_inputs(struct predictor *p, const struct view *view,
 				 bool lane_failed, int16_t *inputs)
 {
 	const struct predict_tables *tables = &p->mixer.tables;
-	int16_t second[2];
+	int16_t second[2] = {0, 0};
 
 	inputs[0] = tables->stretch[p->order0[partial] >> 4];
 	inputs[1] =

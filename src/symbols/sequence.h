@@ -15,11 +15,12 @@ enum symbol_kind {
 	SYMBOL_U16LE,
 	SYMBOL_U16BE,
 	SYMBOL_U32LE,
-	SYMBOL_NUCLEOTIDE, /* A C G T, either case; line breaks are not allowed
-			    */
-	SYMBOL_LETTERS27,  /* folded to a-z and single spaces */
-	SYMBOL_CODEPOINT,  /* of valid UTF-8 */
-	SYMBOL_WORD,       /* maximal runs of non-space; a divisor only */
+	SYMBOL_NUCLEOTIDE, /* A C G T in upper case and nothing else */
+	SYMBOL_LETTERS27,  /* a-z, A-Z taken as a-z, and one space for every
+			      run of other bytes, at either end too */
+	SYMBOL_CODEPOINT,  /* of valid UTF-8 (RFC 3629) */
+	SYMBOL_WORD,       /* maximal runs of bytes other than space, \t, \n,
+			      \v, \f and \r; a divisor only */
 	SYMBOL_KIND_COUNT
 };
 
@@ -44,10 +45,13 @@ struct sequence {
 	const uint8_t *codes;
 	unsigned code_width; /* 1 to 4 */
 	uint32_t code_count;
-	uint32_t distinct; /* different symbols seen: A observed */
-	uint64_t alphabet; /* the kind's full alphabet: 256, 2, 65536, 4, … */
+	uint32_t distinct;    /* different symbols seen: A observed */
+	uint64_t alphabet;    /* of the kind: 256, 2, 65536, 2^32, 4, 27; the
+				 1,112,064 scalar values of Unicode; the
+				 distinct words */
 	size_t record_bytes;  /* fixed record width, or 0 */
-	size_t records;       /* number of records (lines or fixed), or 0 */
+	size_t records;       /* number of records (lines or fixed), or 0; a
+				 last line without its end counts */
 	const size_t *starts; /* byte offset of every symbol and of the end for
 				 codepoint and word (n + 1), otherwise NULL */
 	uint8_t *owned[3];    /* canonical, codes, starts where made here */
@@ -64,7 +68,8 @@ struct symbol_rules {
  * Maps the bytes of a file, which must outlive the sequence. On failure why
  * says which byte and what would be right: STATUS_BAD_INPUT (a length that is
  * no multiple of the width, bytes outside the alphabet, invalid UTF-8, no
- * symbols at all), STATUS_NO_MEMORY.
+ * symbols at all), STATUS_BAD_USAGE (fixed records of a kind whose symbols have
+ * no fixed width, or both sorts of records), STATUS_NO_MEMORY.
  */
 MUST_USE enum status sequence_init(struct sequence *sequence,
 				   struct slice bytes,
@@ -78,8 +83,8 @@ size_t sequence_byte_of(const struct sequence *sequence, size_t i);
 /*
  * Cuts into m = 100 x 2^j <= 3200 blocks, as even as symbol, byte and fixed
  * record boundaries allow, none empty; each at least 4 KiB where the length
- * allows, 100 blocks on shorter files. Below CUTS_SYMBOLS_MIN symbols there
- * are none.
+ * allows, 100 blocks on shorter files. Below CUTS_SYMBOLS_MIN symbols, or 100
+ * fixed records, there are none.
  */
 #define CUTS_SYMBOLS_MIN 6400
 #define CUTS_BLOCKS_MAX 3200

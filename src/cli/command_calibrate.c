@@ -1,0 +1,154 @@
+#include "cli/commands.h"
+#include "cli/output.h"
+#include "report/calibration_report.h"
+#include "run/calibration_run.h"
+
+#include <stdio.h>
+#include <unistd.h>
+
+#define ORDERS_DEFAULT 16
+
+/* One line rewritten on a terminal; nothing elsewhere. */
+static void show_share(void *context, double share, double seconds)
+{
+	double *shown = context;
+
+	if (seconds < *shown + 0.5)
+		return;
+	*shown = seconds;
+	(void)fprintf(stderr, "\r%5.1f%%  about %.0f s left ", 100 * share,
+		      seconds * (1 - share) / share);
+}
+
+/* The two lengths of a full calibration, or the one that was asked for. */
+static enum status read_lengths(const struct words *words,
+				struct calibration_rules *rules,
+				struct reason *why)
+{
+	uint64_t symbols = 0, samples = 0;
+
+	TRY(words_number(words, "symbols", 6400, 100000000, &symbols, why));
+	TRY(words_number(words, "replicates", 2, 1000000, &samples, why));
+	*rules = (struct calibration_rules){
+		.symbols = {10000, 100000},
+		.runs = {2000, 300},
+		.length_count = 2,
+		.orders = ORDERS_DEFAULT,
+	};
+	if (symbols) {
+		rules->symbols[0] = symbols;
+		rules->runs[0] = symbols < 100000 ? 2000 : 300;
+		rules->length_count = 1;
+	}
+	for (size_t i = 0; samples && i < rules->length_count; i++)
+		rules->runs[i] = samples;
+	return STATUS_OK;
+}
+
+static enum status read_rules(const struct words *words,
+			      struct calibration_rules *rules,
+			      struct reason *why)
+{
+	uint64_t seed = 1, jobs = 1;
+
+	TRY(read_lengths(words, rules, why));
+	TRY(words_number(words, "seed", 0, UINT32_MAX, &seed, why));
+	TRY(words_number(words, "jobs", 1, 256, &jobs, why));
+	rules->seed = seed;
+	rules->jobs = (unsigned)jobs;
+	rules->source = words_get(words, "source");
+	return STATUS_OK;
+}
+
+static enum status write_report(const struct calibration *calibration,
+				const struct calibration_format *format,
+				const char *path, struct reason *why)
+{
+	const struct calibration_report report = {
+		.program = "ratefloor " RATEFLOOR_VERSION,
+		.seed = calibration->rules.seed,
+		.orders = calibration->rules.orders,
+		.cases = calibration->cases,
+		.case_count = calibration->case_count,
+	};
+	struct output output;
+	enum status status;
+
+	TRY(output_open(&output, path, why));
+	status = format->write(output.file, &report, why);
+	if (status != STATUS_OK) {
+		output_drop(&output);
+		return status;
+	}
+	return output_keep(&output, why);
+}
+
+static enum status calibrate(const struct words *words, struct reason *why)
+{
+	const char *as = words_get(words, "as");
+	const struct calibration_format *format =
+		calibration_format_find(as ? as : "text");
+	struct calibration_rules rules;
+	struct calibration calibration;
+	double shown = 0;
+	enum status status;
+
+	if (!format)
+		return reason_give(why, STATUS_BAD_USAGE,
+				   "--as takes text, markdown or json, not %s",
+				   as);
+	TRY(read_rules(words, &rules, why));
+	if (isatty(STDERR_FILENO)) {
+		rules.watch = show_share;
+		rules.context = &shown;
+	}
+	TRY(calibration_run(&rules, &calibration, why));
+	(void)fprintf(stderr, "%s%zu sources and lengths in %.1f s\n",
+		      rules.watch ? "\r" : "", calibration.case_count,
+		      calibration.seconds);
+	status = write_report(&calibration, format, words_get(words, "out"),
+			      why);
+	calibration_release(&calibration);
+	return status;
+}
+
+static enum exit_code calibrate_run(const struct words *words)
+{
+	struct reason why = {""};
+
+	if (calibrate(words, &why) != STATUS_OK)
+		return complain(words, &why);
+	return EXIT_DONE;
+}
+
+static const struct option_row options[] = {
+	{"symbols", "N",
+	 "length of a sample, from 6400; by default 10000 and 100000"},
+	{"replicates", "R",
+	 "samples of each source; by default 2000 below 100000 symbols, else "
+	 "300"},
+	{"source", "NAME", "only this source of the list"},
+	{"seed", "S", "equal seeds give equal figures; 1 by default"},
+	{"jobs", "N", "threads; 1 by default"},
+	{"as", "FORMAT", "text, markdown or json"},
+	{"out", "FILE", "write there instead of standard output"},
+	{NULL, NULL, NULL},
+};
+
+const struct command command_calibrate = {
+	.name = "calibrate",
+	.operands = "",
+	.summary = "checks estimators and intervals on sources of known rate",
+	.description =
+		"Draws many samples of each source of a fixed list, whose "
+		"entropy\n"
+		"rates are known exactly, and counts how often intervals and\n"
+		"rate brackets were right, how wide they were, and how often\n"
+		"drift was seen. The promises stand first, each with what was\n"
+		"measured and its own Monte-Carlo error.",
+	.examples = "  ratefloor calibrate --jobs 2 --out calibration.txt\n"
+		    "  ratefloor calibrate --source chain --symbols 10000 "
+		    "--replicates 200",
+	.options = options,
+	.run = calibrate_run,
+};

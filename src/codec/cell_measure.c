@@ -1,0 +1,289 @@
+#include "codec/codec.h"
+
+#include <stdio.h>
+#include <string.h>
+
+/* What one cell needs while it is measured. */
+struct cell_work {
+	const struct codec *codec;
+	const struct codec_setting *setting;
+	size_t page_bytes; /* 0: whole */
+	const struct sequence *sequence;
+	const struct cuts *cuts;
+	struct cell_facts *facts;
+	struct buffer packed, plain;
+	struct codec_memory encode, decode;
+	size_t block; /* pages: block of the first byte not yet spread */
+};
+
+static MUST_USE enum status out_of_memory(struct reason *why)
+{
+	return reason_give(why, STATUS_NO_MEMORY, "out of memory");
+}
+
+static MUST_USE enum status encode(struct cell_work *work, struct slice input,
+				   const size_t *cuts, size_t cut_count,
+				   uint64_t *piece_bytes, struct reason *why)
+{
+	const struct codec_job job = {
+		.setting = work->setting,
+		.input = input,
+		.page_bytes = work->page_bytes,
+		.cuts = cuts,
+		.cut_count = cut_count,
+		.piece_bytes = piece_bytes,
+		.memory = cuts ? NULL : &work->encode,
+	};
+
+	work->packed.length = 0;
+	return work->codec->encode(&job, &work->packed, why);
+}
+
+static void note_difference(struct cell_work *work, struct slice input,
+			    const char *run, struct reason *why)
+{
+	size_t i = 0;
+
+	while (i < input.length && i < work->plain.length &&
+	       input.bytes[i] == work->plain.bytes[i])
+		i++;
+	work->facts->lossless = 0;
+	(void)reason_give(why, STATUS_MISMATCH,
+			  "not lossless: the %s decodes to %zu of %zu bytes "
+			  "and first differs at byte %zu of its input",
+			  run, work->plain.length, input.length, i);
+}
+
+/* Decodes what was packed and compares it with the input. */
+static MUST_USE enum status check(struct cell_work *work, struct slice input,
+				  const char *run, struct reason *why)
+{
+	const struct codec_job job = {
+		.setting = work->setting,
+		.input = {work->packed.bytes, work->packed.length},
+		.memory = &work->decode,
+	};
+
+	work->plain.length = 0;
+	work->plain.limit = input.length + 1;
+	TRY(work->codec->decode(&job, &work->plain, why));
+	if (work->plain.length != input.length ||
+	    (input.length &&
+	     memcmp(work->plain.bytes, input.bytes, input.length) != 0))
+		note_difference(work, input, run, why);
+	return STATUS_OK;
+}
+
+static MUST_USE enum status count_stream(struct cell_work *work,
+					 struct reason *why)
+{
+	const struct slice stream = {work->packed.bytes, work->packed.length};
+	uint64_t framing = 0;
+	enum status status;
+
+	work->facts->bytes += stream.length;
+	if (!work->codec->framing) {
+		work->facts->framing_known = 0;
+		return STATUS_OK;
+	}
+	status = work->codec->framing(stream, &framing);
+	if (status == STATUS_NO_MEMORY)
+		return out_of_memory(why);
+	if (status != STATUS_OK)
+		return reason_give(why, STATUS_CODEC,
+				   "%s: its own stream cannot be read",
+				   work->codec->name);
+	work->facts->framing_bytes += framing;
+	return STATUS_OK;
+}
+
+/* Bits by block from pieces that end at the cuts from block first on. */
+static void add_pieces(struct cell_work *work, size_t first,
+		       const uint64_t *piece_bytes, size_t count)
+{
+	for (size_t i = 0; i < count; i++) {
+		int64_t bits_q16 = (int64_t)piece_bytes[i] * 8 * BIT_Q16;
+
+		work->facts->flushed.block_q16[first + i] += bits_q16;
+		work->facts->flushed.headline_q16 += bits_q16;
+		work->facts->flushed_bytes += piece_bytes[i];
+	}
+}
+
+static MUST_USE enum status flush_at(struct cell_work *work, struct slice input,
+				     const size_t *cuts, size_t count,
+				     struct reason *why)
+{
+	uint64_t *piece_bytes;
+	enum status status;
+
+	if (memory_new(count, sizeof(*piece_bytes), &piece_bytes) != STATUS_OK)
+		return out_of_memory(why);
+	status = encode(work, input, cuts, count, piece_bytes, why);
+	if (status == STATUS_OK)
+		status = check(work, input, "flushed stream", why);
+	if (status == STATUS_OK)
+		add_pieces(work, work->block, piece_bytes, count);
+	memory_free(piece_bytes);
+	return status;
+}
+
+static MUST_USE enum status measure_whole(struct cell_work *work,
+					  struct reason *why)
+{
+	const struct slice input = {work->sequence->canonical,
+				    work->sequence->canonical_bytes};
+
+	work->facts->pages = 1;
+	TRY(encode(work, input, NULL, 0, NULL, why));
+	TRY(count_stream(work, why));
+	TRY(check(work, input, "stream", why));
+	if (!work->facts->lossless || !work->facts->flushed.blocks)
+		return STATUS_OK;
+	return flush_at(work, input, work->cuts->byte + 1, work->cuts->blocks,
+			why);
+}
+
+/*
+ * Spreads a page's bits over the blocks by the bytes that lie in each, whole
+ * units by rounding the running total down, so that nothing is lost.
+ */
+static void spread_page(struct cell_work *work, size_t start, size_t end,
+			uint64_t packed_bytes)
+{
+	struct costs *flushed = &work->facts->flushed;
+	const wide_uint all = (wide_uint)packed_bytes * 8 * BIT_Q16;
+	int64_t given = 0;
+
+	for (;;) {
+		size_t cut = work->cuts->byte[work->block + 1];
+		size_t reach = cut < end ? cut : end;
+		int64_t now = (int64_t)(all * (reach - start) / (end - start));
+
+		flushed->block_q16[work->block] += now - given;
+		given = now;
+		if (cut > end || reach == work->sequence->canonical_bytes)
+			break;
+		work->block++;
+		if (reach == end)
+			break;
+	}
+	flushed->headline_q16 += given;
+	work->facts->flushed_bytes += packed_bytes;
+}
+
+/* A large page: flushed inside at the block cuts that fall into it. */
+static MUST_USE enum status flush_page(struct cell_work *work,
+				       struct slice page, size_t start,
+				       struct reason *why)
+{
+	const size_t *byte = work->cuts->byte + 1;
+	size_t end = start + page.length, count = 1;
+	size_t *cuts;
+	enum status status;
+
+	while (byte[work->block + count - 1] < end)
+		count++;
+	if (memory_new(count, sizeof(*cuts), &cuts) != STATUS_OK)
+		return out_of_memory(why);
+	for (size_t i = 0; i < count; i++)
+		cuts[i] = byte[work->block + i] - start;
+	cuts[count - 1] = page.length;
+	status = flush_at(work, page, cuts, count, why);
+	memory_free(cuts);
+	work->block += byte[work->block + count - 1] == end ? count : count - 1;
+	return status;
+}
+
+static MUST_USE enum status measure_page(struct cell_work *work, size_t start,
+					 bool small, struct reason *why)
+{
+	size_t left = work->sequence->canonical_bytes - start;
+	const struct slice page = {work->sequence->canonical + start,
+				   left < work->page_bytes ? left
+							   : work->page_bytes};
+	size_t before = work->facts->bytes;
+
+	work->facts->pages++;
+	TRY(encode(work, page, NULL, 0, NULL, why));
+	TRY(count_stream(work, why));
+	TRY(check(work, page, "page", why));
+	if (!work->facts->lossless || !work->facts->flushed.blocks)
+		return STATUS_OK;
+	if (!small)
+		return flush_page(work, page, start, why);
+	spread_page(work, start, start + page.length,
+		    work->facts->bytes - before);
+	return STATUS_OK;
+}
+
+static MUST_USE enum status measure_pages(struct cell_work *work,
+					  struct reason *why)
+{
+	size_t bytes = work->sequence->canonical_bytes;
+	size_t blocks = work->cuts->blocks;
+	bool small = !blocks || work->page_bytes <= bytes / blocks / 4;
+
+	if (!small && !work->codec->flushes)
+		costs_release(&work->facts->flushed);
+	for (size_t start = 0; start < bytes; start += work->page_bytes) {
+		enum status status = measure_page(work, start, small, why);
+
+		if (status != STATUS_OK) {
+			reason_prefix(why, "page at byte %zu: ", start);
+			return status;
+		}
+		if (!work->facts->lossless) {
+			reason_prefix(why, "page at byte %zu: ", start);
+			return STATUS_OK;
+		}
+	}
+	return STATUS_OK;
+}
+
+static MUST_USE enum status measure(struct cell_work *work, struct reason *why)
+{
+	bool spread = work->codec->flushes || work->page_bytes;
+
+	work->facts->lossless = 1;
+	work->facts->framing_known = 1;
+	if (costs_init(&work->facts->flushed,
+		       spread ? work->cuts->blocks : 0) != STATUS_OK)
+		return out_of_memory(why);
+	if (work->page_bytes)
+		TRY(measure_pages(work, why));
+	else
+		TRY(measure_whole(work, why));
+	if (!work->facts->lossless)
+		costs_release(&work->facts->flushed);
+	work->facts->encode_memory_bytes = work->encode.peak_bytes;
+	work->facts->decode_memory_bytes = work->decode.peak_bytes;
+	return STATUS_OK;
+}
+
+enum status cell_measure(const struct codec *codec,
+			 const struct codec_setting *setting, size_t page_bytes,
+			 const struct sequence *sequence,
+			 const struct cuts *cuts, struct cell_facts *facts,
+			 struct reason *why)
+{
+	struct cell_facts made = {0};
+	struct cell_work work = {.codec = codec,
+				 .setting = setting,
+				 .page_bytes = page_bytes,
+				 .sequence = sequence,
+				 .cuts = cuts,
+				 .facts = &made};
+	enum status status;
+
+	buffer_init(&work.packed, SIZE_MAX / 2);
+	buffer_init(&work.plain, SIZE_MAX / 2);
+	status = measure(&work, why);
+	buffer_release(&work.packed);
+	buffer_release(&work.plain);
+	if (status == STATUS_OK)
+		*facts = made;
+	else
+		cell_facts_release(&made);
+	return status;
+}

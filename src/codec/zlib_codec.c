@@ -1,0 +1,220 @@
+#include "codec/codec_rows.h"
+
+#include <limits.h>
+#include <zlib.h>
+
+#define WINDOW_BITS 15
+#define MEMORY_LEVEL 8
+/* zlib counts in unsigned int: larger inputs go in pieces of this. */
+#define STEP_BYTES ((size_t)1 << 30)
+#define ROOM_BYTES ((size_t)1 << 16)
+
+static const char *zlib_codec_version(void)
+{
+	return zlibVersion();
+}
+
+static MUST_USE enum status
+zlib_parse(const char *text, struct codec_setting *setting, struct reason *why)
+{
+	return level_number(text, 1, 9, "zlib", setting, why);
+}
+
+static void *take(void *memory, unsigned items, unsigned bytes)
+{
+	return counted_new(memory, (size_t)items * bytes);
+}
+
+static void give_back(void *memory, void *block)
+{
+	counted_free(memory, block);
+}
+
+static MUST_USE enum status failure(const z_stream *stream, int code,
+				    struct reason *why)
+{
+	if (code == Z_MEM_ERROR)
+		return reason_give(why, STATUS_NO_MEMORY,
+				   "zlib: out of memory");
+	return reason_give(why, STATUS_CODEC, "zlib: %s",
+			   stream->msg ? stream->msg : zError(code));
+}
+
+/* Runs step until it has read all and has no more to write. */
+static MUST_USE enum status pump(z_stream *stream, struct buffer *out,
+				 int (*step)(z_stream *, int), int flush,
+				 int *code)
+{
+	do {
+		size_t room;
+
+		TRY(buffer_reserve(out, 1));
+		room = out->room - out->length;
+		if (room < ROOM_BYTES && out->limit - out->length > room) {
+			size_t more = out->limit - out->length;
+
+			TRY(buffer_reserve(
+				out, more < ROOM_BYTES ? more : ROOM_BYTES));
+			room = out->room - out->length;
+		}
+		if (room > STEP_BYTES)
+			room = STEP_BYTES;
+		stream->next_out = out->bytes + out->length;
+		stream->avail_out = (uInt)room;
+		*code = step(stream, flush);
+		out->length += room - stream->avail_out;
+	} while (*code == Z_OK && (stream->avail_out == 0 || stream->avail_in));
+	return STATUS_OK;
+}
+
+static MUST_USE enum status encode_piece(z_stream *stream, struct slice piece,
+					 int flush, struct buffer *out,
+					 struct reason *why)
+{
+	size_t done = 0;
+	int code = Z_OK;
+
+	do {
+		size_t step = piece.length - done;
+		int last;
+
+		if (step > STEP_BYTES)
+			step = STEP_BYTES;
+		last = done + step == piece.length;
+		/* zlib does not write to its input. */
+		stream->next_in =
+			(z_const Bytef *)(uintptr_t)(piece.bytes + done);
+		stream->avail_in = (uInt)step;
+		if (pump(stream, out, deflate, last ? flush : Z_NO_FLUSH,
+			 &code) != STATUS_OK)
+			return reason_give(why, STATUS_NO_MEMORY,
+					   "out of memory");
+		if (code != Z_OK && code != Z_STREAM_END && code != Z_BUF_ERROR)
+			return failure(stream, code, why);
+		done += step;
+	} while (done < piece.length);
+	return STATUS_OK;
+}
+
+static MUST_USE enum status encode_pieces(z_stream *stream,
+					  const struct codec_job *job,
+					  struct buffer *out,
+					  struct reason *why)
+{
+	size_t pieces = job_pieces(job), start = 0;
+
+	for (size_t i = 0; i < pieces; i++) {
+		size_t end = job_piece_end(job, i), before = out->length;
+		const struct slice piece = {job->input.bytes + start,
+					    end - start};
+
+		TRY(encode_piece(stream, piece,
+				 i + 1 == pieces ? Z_FINISH : Z_PARTIAL_FLUSH,
+				 out, why));
+		if (job->piece_bytes)
+			job->piece_bytes[i] = out->length - before;
+		start = end;
+	}
+	return STATUS_OK;
+}
+
+static MUST_USE enum status zlib_encode(const struct codec_job *job,
+					struct buffer *out, struct reason *why)
+{
+	struct codec_memory unseen = {0, 0};
+	z_stream stream = {.zalloc = take,
+			   .zfree = give_back,
+			   .opaque = job->memory ? job->memory : &unseen};
+	int code = deflateInit2(&stream, job->setting->level, Z_DEFLATED,
+				WINDOW_BITS, MEMORY_LEVEL, Z_DEFAULT_STRATEGY);
+	enum status status;
+
+	if (code != Z_OK)
+		return failure(&stream, code, why);
+	status = encode_pieces(&stream, job, out, why);
+	(void)deflateEnd(&stream);
+	return status;
+}
+
+static MUST_USE enum status decode_all(z_stream *stream, struct slice input,
+				       struct buffer *out, struct reason *why)
+{
+	size_t done = 0;
+	int code = Z_OK;
+
+	while (code == Z_OK && done < input.length) {
+		size_t step = input.length - done;
+		enum status status;
+
+		if (step > STEP_BYTES)
+			step = STEP_BYTES;
+		stream->next_in =
+			(z_const Bytef *)(uintptr_t)(input.bytes + done);
+		stream->avail_in = (uInt)step;
+		status = pump(stream, out, inflate, Z_NO_FLUSH, &code);
+		if (status != STATUS_OK)
+			return output_full(out, "zlib", why);
+		done += step - stream->avail_in;
+		if (code == Z_BUF_ERROR)
+			code = Z_OK;
+		if (code == Z_OK && stream->avail_in)
+			break;
+	}
+	if (code == Z_STREAM_END && done == input.length)
+		return STATUS_OK;
+	if (code == Z_STREAM_END || code == Z_OK)
+		return reason_give(why, STATUS_CODEC,
+				   "zlib: the stream ends at %zu of %zu bytes",
+				   done, input.length);
+	return failure(stream, code, why);
+}
+
+static MUST_USE enum status zlib_decode(const struct codec_job *job,
+					struct buffer *out, struct reason *why)
+{
+	struct codec_memory unseen = {0, 0};
+	z_stream stream = {.zalloc = take,
+			   .zfree = give_back,
+			   .opaque = job->memory ? job->memory : &unseen};
+	int code = inflateInit2(&stream, WINDOW_BITS);
+	enum status status;
+
+	if (code != Z_OK)
+		return failure(&stream, code, why);
+	status = decode_all(&stream, job->input, out, why);
+	(void)inflateEnd(&stream);
+	return status;
+}
+
+/*
+ * RFC 1950, section 2.2: CMF, FLG, DICTID where FDICT is set, Adler-32. The
+ * header is a multiple of 31, and no Deflate data is shorter than 2 bytes.
+ */
+static enum status zlib_framing(struct slice stream, uint64_t *bytes)
+{
+	unsigned header, framing;
+
+	if (stream.length < 2)
+		return STATUS_BAD_INPUT;
+	header = stream.bytes[0] * 256U + stream.bytes[1];
+	framing = header & 0x20 ? 10 : 6;
+	if ((header >> 8 & 0x0f) != Z_DEFLATED || header >> 12 > 7 ||
+	    header % 31 || stream.length < framing + 2)
+		return STATUS_BAD_INPUT;
+	*bytes = framing;
+	return STATUS_OK;
+}
+
+const struct codec codec_zlib = {
+	.name = "zlib",
+	.summary = "Deflate in the zlib container, 32 KiB window",
+	.source = "RFC 1950, RFC 1951",
+	.levels = "1 to 9",
+	.flushes = true,
+	.work = 0.15,
+	.version = zlib_codec_version,
+	.parse = zlib_parse,
+	.encode = zlib_encode,
+	.decode = zlib_decode,
+	.framing = zlib_framing,
+};

@@ -1,0 +1,180 @@
+#include "gap/trial.h"
+
+#include <math.h>
+#include <stdio.h>
+
+#include "base/memory.h"
+#include "gap/bracket.h"
+#include "gap/gram_orders.h"
+#include "gap/headline.h"
+
+static struct trial_row *add_row(struct trial *trial, const char *name,
+				 double bits_per_symbol)
+{
+	struct trial_row *row = &trial->rows[trial->row_count];
+
+	if (trial->row_count == TRIAL_ROWS_MAX)
+		return NULL;
+	*row = (struct trial_row){.bits_per_symbol = bits_per_symbol};
+	(void)snprintf(row->name, sizeof(row->name), "%s", name);
+	trial->row_count++;
+	return row;
+}
+
+/* The same blocks about another mean: an interval only moves. */
+static void add_shifted(struct trial *trial, const char *name,
+			double bits_per_symbol, double from,
+			const struct interval *interval)
+{
+	struct trial_row *row = add_row(trial, name, bits_per_symbol);
+
+	if (!row || !interval->known)
+		return;
+	row->has_interval = true;
+	row->low = interval->low + (bits_per_symbol - from);
+	row->high = interval->high + (bits_per_symbol - from);
+}
+
+static enum status find_grams(const struct corpus_view *view,
+			      const struct ground *ground, unsigned order,
+			      struct trial *trial)
+{
+	const struct method_fact *method = method_done(view->fact, "ngram");
+	const struct series *series =
+		method ? series_of_order(&method->findings, order) : NULL;
+	const struct order_row *row;
+	struct contribution contribution;
+	struct interval interval;
+
+	if (!series || order > view->order_count)
+		return STATUS_OK;
+	row = &view->orders[order - 1];
+	contribution = contribution_of_series(
+		series, row->h_plugin * (double)view->fact->n);
+	TRY(ground_interval(ground, &contribution, NULL, &interval,
+			    &trial->drifts));
+	trial->drift_known = interval.effective_blocks > 0;
+	add_shifted(trial, "plug-in", row->h_plugin, row->h_plugin, &interval);
+	add_shifted(trial, "grassberger", row->h_corrected, row->h_plugin,
+		    &interval);
+	add_shifted(trial, "chao-wang-jost", row->h_cwj, row->h_plugin,
+		    &interval);
+	return STATUS_OK;
+}
+
+static enum status find_series(const struct ground *ground, const char *name,
+			       const struct contribution *contribution,
+			       struct trial *trial)
+{
+	double bits = contribution->total_bits / (double)ground->fact->n;
+	struct interval interval;
+
+	TRY(ground_interval(ground, contribution, NULL, &interval, NULL));
+	add_shifted(trial, name, bits, bits, &interval);
+	return STATUS_OK;
+}
+
+static enum status find_crossfit(const struct ground *ground, unsigned order,
+				 struct trial *trial)
+{
+	const struct method_fact *method =
+		method_done(ground->fact, "crossfit");
+	const struct series *series =
+		method ? series_of_order(&method->findings, order) : NULL;
+	struct contribution contribution;
+
+	if (!series)
+		return STATUS_OK;
+	contribution = contribution_of_series(
+		series, bits_from_q16(series->costs.headline_q16));
+	return find_series(ground, "crossfit", &contribution, trial);
+}
+
+static enum status find_codes(const struct ground *ground,
+			      const struct lengths *lengths,
+			      struct trial *trial)
+{
+	for (size_t i = 0; i < lengths->count; i++) {
+		const struct length *length = &lengths->rows[i];
+
+		if (length->method && !length->page_bytes)
+			TRY(find_series(ground, length->method->method,
+					&length->contribution, trial));
+	}
+	return STATUS_OK;
+}
+
+static enum status find_gap(const struct ground *ground,
+			    const struct lengths *lengths, struct trial *trial)
+{
+	const struct corpus_fact *fact = ground->fact;
+	const struct length *floor = lengths_lowest(lengths, 0);
+	struct interval paired, achieved, reference;
+	struct contribution cell;
+
+	if (!fact->cell_count || !floor || floor->cell ||
+	    !cell_is_sound(&fact->cells[0]))
+		return STATUS_OK;
+	cell = contribution_of_cell(&fact->cells[0],
+				    8 * (double)fact->cells[0].facts.bytes);
+	TRY(ground_interval(ground, &cell, &floor->contribution, &paired,
+			    NULL));
+	TRY(ground_interval(ground, &cell, NULL, &achieved, NULL));
+	TRY(ground_interval(ground, &floor->contribution, NULL, &reference,
+			    NULL));
+	trial->gap_known = paired.known && achieved.known && reference.known;
+	trial->gap = (cell.total_bits - floor->contribution.total_bits) /
+		     (double)fact->n;
+	trial->gap_low = paired.low;
+	trial->gap_high = paired.high;
+	trial->unpaired_width = 2 * hypot(interval_half_width(&achieved),
+					  interval_half_width(&reference));
+	return STATUS_OK;
+}
+
+static enum status find_all(struct corpus_view *view,
+			    const struct ground *ground,
+			    const struct lengths *lengths, unsigned order,
+			    struct trial *trial)
+{
+	struct bracket_row bracket;
+
+	TRY(find_grams(view, ground, order, trial));
+	TRY(find_crossfit(ground, order, trial));
+	TRY(find_codes(ground, lengths, trial));
+	TRY(find_gap(ground, lengths, trial));
+	TRY(bracket_find(view, ground, lengths, &bracket));
+	trial->trusted_order = view->trusted_order;
+	trial->bracket_known = bracket.known;
+	trial->open_below = bracket.open_below;
+	trial->not_calibrated = bracket.not_calibrated;
+	trial->bracket_order = bracket.order;
+	trial->bracket_low = bracket.low;
+	trial->bracket_high = bracket.high;
+	return STATUS_OK;
+}
+
+enum status trial_find(const struct corpus_fact *fact, uint64_t seed,
+		       const struct analysis_rules *rules, unsigned order,
+		       struct trial *trial)
+{
+	const struct survey survey = {.seed = seed};
+	struct corpus_view view = {.fact = fact};
+	struct lengths lengths = {0};
+	struct trial made = {0};
+	struct ground ground;
+	enum status status;
+
+	TRY(ground_init(&ground, &survey, fact, rules));
+	status = gram_orders_init(&view);
+	if (status == STATUS_OK)
+		status = lengths_init(&lengths, fact);
+	if (status == STATUS_OK)
+		status = find_all(&view, &ground, &lengths, order, &made);
+	lengths_release(&lengths);
+	memory_free(view.orders);
+	ground_release(&ground);
+	if (status == STATUS_OK)
+		*trial = made;
+	return status;
+}

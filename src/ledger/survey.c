@@ -1,0 +1,41 @@
+#include "ledger/survey.h"
+
+#include "base/memory.h"
+
+void method_fact_release(struct method_fact *method)
+{
+	memory_free(method->reason);
+	findings_release(&method->findings);
+	*method = (struct method_fact){.reason = NULL};
+}
+
+void cell_fact_release(struct cell_fact *cell)
+{
+	memory_free(cell->reason);
+	cell_facts_release(&cell->facts);
+	*cell = (struct cell_fact){.reason = NULL};
+}
+
+void corpus_fact_release(struct corpus_fact *corpus)
+{
+	for (size_t i = 0; i < corpus->method_count; i++)
+		method_fact_release(&corpus->methods[i]);
+	for (size_t i = 0; i < corpus->cell_count; i++)
+		cell_fact_release(&corpus->cells[i]);
+	memory_free(corpus->methods);
+	memory_free(corpus->cells);
+	memory_free(corpus->block_symbols);
+	memory_free(corpus->block_bytes);
+	memory_free(corpus->reason);
+	memory_free(corpus->origin);
+	*corpus = (struct corpus_fact){.reason = NULL};
+}
+
+void survey_release(struct survey *survey)
+{
+	for (size_t i = 0; i < survey->corpus_count; i++)
+		corpus_fact_release(&survey->corpora[i]);
+	memory_free(survey->corpora);
+	memory_free(survey->libraries);
+	*survey = (struct survey){0};
+}

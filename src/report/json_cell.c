@@ -1,0 +1,112 @@
+#include "report/json_parts.h"
+
+#include "ledger/outcome.h"
+#include "report/json_value.h"
+#include "report/paper.h"
+
+static json_t *stack_object(const struct cell_row *row)
+{
+	const struct gap_stack *stack = &row->stack;
+	bool known = row->known && stack->known;
+	struct json_maker made;
+
+	json_begin(&made);
+	json_put_real(&made, "floor", known, stack->floor);
+	json_put_real(&made, "restart", known, stack->restart);
+	json_put_real(&made, "family", known, stack->family);
+	json_put_real(&made, "effort", known, stack->effort);
+	json_put_real(&made, "framing", known, stack->framing);
+	json_put_reason(&made, "best_level", known ? stack->best_level : "");
+	return json_done(&made);
+}
+
+static void put_sizes(struct json_maker *made, const struct cell_row *row)
+{
+	const struct interval *interval = &row->interval;
+	const struct interval *gap = &row->gap_interval;
+	bool known = row->known;
+
+	json_put_known_count(made, "bytes", known, row->fact->facts.bytes);
+	json_put_bool(made, "lossless", row->fact->facts.lossless != 0);
+	json_put_real(made, "bits_per_symbol", known, row->bits_per_symbol);
+	json_put_real(made, "low", known && interval->known, interval->low);
+	json_put_real(made, "high", known && interval->known, interval->high);
+	json_put_real(made, "gap", known, row->gap);
+	json_put_real(made, "gap_low", known && gap->known, gap->low);
+	json_put_real(made, "gap_high", known && gap->known, gap->high);
+	json_put_real(made, "gap_percent", known && row->has_percent,
+		      row->gap_percent);
+	json_put(made, "stack", stack_object(row));
+}
+
+static void put_costs(struct json_maker *made, const struct cell_row *row)
+{
+	const struct cell_facts *facts = &row->fact->facts;
+	bool known = row->known;
+	bool timed = known && row->fact->timed;
+
+	json_put_real(made, "encode_mb_per_s",
+		      timed && row->encode_mb_per_s > 0, row->encode_mb_per_s);
+	json_put_real(made, "decode_mb_per_s",
+		      timed && row->decode_mb_per_s > 0, row->decode_mb_per_s);
+	json_put_known_count(made, "encode_memory_bytes", known,
+			     facts->encode_memory_bytes);
+	json_put_known_count(made, "decode_memory_bytes", known,
+			     facts->decode_memory_bytes);
+	json_put_real(made, "bits_per_record", known && row->has_record,
+		      row->bits_per_record);
+}
+
+/* The interval that says why it is not there, if one does. */
+static const char *interval_reason(const struct cell_row *row)
+{
+	return row->interval.known ? row->gap_interval.reason
+				   : row->interval.reason;
+}
+
+static void put_quality(struct json_maker *made, const struct cell_row *row)
+{
+	const struct cell_facts *facts = &row->fact->facts;
+	bool known = row->known;
+
+	json_put_real(made, "efficiency", known, row->efficiency);
+	/* null, too, where no trusted order does as well: see the next-to-last
+	 * key. */
+	json_put_known_count(made, "effective_order",
+			     known && row->effective_order,
+			     row->effective_order);
+	json_put_real(made, "effective_blocks",
+		      known && row->interval.effective_blocks > 0,
+		      row->interval.effective_blocks);
+	json_put_reason(made, "interval_reason", interval_reason(row));
+	json_put_real(made, "flush_cost", known && facts->flushed.blocks,
+		      row->flush_cost);
+	json_put_text(made, "status",
+		      cell_failed(row->fact)
+			      ? outcome_name(OUTCOME_FAILED)
+			      : outcome_name(row->fact->outcome));
+}
+
+json_t *json_cell(const struct corpus_view *view, const struct cell_row *row)
+{
+	const struct cell_fact *fact = row->fact;
+	struct json_maker made;
+
+	json_begin(&made);
+	json_put_text(&made, "codec", fact->key.codec);
+	json_put_text(&made, "level", fact->key.level);
+	json_put_text(&made, "layout", fact->key.layout);
+	put_sizes(&made, row);
+	put_costs(&made, row);
+	put_quality(&made, row);
+	json_put_reason(&made, "reason", fact->reason);
+	json_put_real(&made, "payload_bits_per_symbol", row->known,
+		      row->payload_bits_per_symbol);
+	json_put_bool(&made, "above_trusted_order",
+		      row->known && view->trusted_order &&
+			      !row->effective_order);
+	json_put_known_count(&made, "framing_bytes",
+			     row->known && fact->facts.framing_known,
+			     fact->facts.framing_bytes);
+	return json_done(&made);
+}

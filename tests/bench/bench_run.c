@@ -1,0 +1,132 @@
+/*
+ * What does the harness cost beside the work it runs, and what do two jobs
+ * gain? usage: bench_run [SET]; prints a ratio a line with its target.
+ */
+#include "ledger/ledger.h"
+#include "run/measure.h"
+#include "run/resident.h"
+#include "run/stopwatch.h"
+#include "run/survey_run.h"
+
+#include <stdio.h>
+#include <stdlib.h>
+#include <sys/resource.h>
+#include <unistd.h>
+
+#define LEDGER "build/bench-run.ledger"
+
+static double process_cpu_seconds(void)
+{
+	struct rusage usage;
+
+	(void)getrusage(RUSAGE_SELF, &usage);
+	return (double)(usage.ru_utime.tv_sec + usage.ru_stime.tv_sec) +
+	       (double)(usage.ru_utime.tv_usec + usage.ru_stime.tv_usec) * 1e-6;
+}
+
+static void fail(const char *what, const struct reason *why)
+{
+	(void)fprintf(stderr, "bench_run: %s: %s\n", what, why->text);
+	exit(1);
+}
+
+/* A whole survey: wall seconds, and CPU of the process through *cpu. */
+static double survey_seconds(const struct plan *plan, unsigned jobs,
+			     double *cpu)
+{
+	struct run_rules rules = {.jobs = jobs,
+				  .orders = 16,
+				  .part = 1,
+				  .parts = 1,
+				  .program = "bench"};
+	struct run_outcome outcome;
+	struct reason why = {""};
+	struct ledger *ledger;
+	struct stopwatch watch;
+	double before = process_cpu_seconds(), seconds;
+
+	(void)unlink(LEDGER);
+	stopwatch_start(&watch);
+	if (ledger_open(LEDGER, LEDGER_WRITE, &ledger, &why) != STATUS_OK ||
+	    survey_run(plan, ledger, &rules, &outcome, &why) != STATUS_OK)
+		fail("survey", &why);
+	ledger_close(ledger);
+	seconds = stopwatch_seconds(&watch);
+	*cpu = process_cpu_seconds() - before;
+	return seconds;
+}
+
+static void drop_method(void *context, const struct plan_item *item,
+			size_t place, const struct method_fact *method)
+{
+	(void)context;
+	(void)item;
+	(void)place;
+	(void)method;
+}
+
+/* The codecs and estimators alone, without ledger, threads or plan. */
+static double bare_cpu(const struct plan *plan)
+{
+	double cpu = 0;
+
+	for (size_t i = 0; i < plan->item_count; i++) {
+		const struct plan_item *item = &plan->items[i];
+		struct resident resident;
+		double before;
+
+		if (resident_init(&resident, &plan->set->corpora[item->corpus],
+				  1) != STATUS_OK)
+			exit(1);
+		if (resident_take(&resident, memory_available()) == STATUS_OK) {
+			const struct measure_rows rows = {
+				.item = item,
+				.sequence = &resident.sequence,
+				.cuts = &resident.cuts,
+				.orders = 16,
+				.put = drop_method,
+			};
+			struct cell_fact cell;
+
+			before = process_cpu_seconds();
+			if (item->rows) {
+				measure_rows(&rows);
+			} else {
+				measure_cell(item->cell, &resident.sequence,
+					     &resident.cuts, &cell);
+				cell_fact_release(&cell);
+			}
+			cpu += process_cpu_seconds() - before;
+		}
+		resident_drop(&resident);
+		resident_release(&resident);
+	}
+	return cpu;
+}
+
+int main(int argc, char **argv)
+{
+	const struct selection all = {.part = 1, .parts = 1};
+	const char *path = argc > 1 ? argv[1] : "corpora/starter.set";
+	struct set set;
+	struct plan plan;
+	struct reason why = {""};
+	double one, two, cpu, cpu_two, bare;
+
+	if (set_load(path, false, &set, &why) != STATUS_OK ||
+	    plan_init(&plan, &set, &all, &why) != STATUS_OK)
+		fail(path, &why);
+	bare = bare_cpu(&plan);
+	one = survey_seconds(&plan, 1, &cpu);
+	two = survey_seconds(&plan, 2, &cpu_two);
+	(void)printf("harness CPU / codec and estimator CPU   %.3f  (at most "
+		     "1.05)  %s\n",
+		     cpu / bare, cpu / bare <= 1.05 ? "ok" : "over");
+	(void)printf("speed of two jobs / one                 %.3f  (at least "
+		     "1.8)  %s\n",
+		     one / two, one / two >= 1.8 ? "ok" : "under");
+	plan_release(&plan);
+	set_release(&set);
+	(void)unlink(LEDGER);
+	return 0;
+}
