@@ -5,12 +5,9 @@
 #include <string.h>
 
 const struct estimator *const estimators[] = {
-	&estimator_uniform,
-	&estimator_ngram,
-	&estimator_match,
-	&estimator_mix,
-	&estimator_mix_deep,
-	NULL,
+	&estimator_uniform,   &estimator_ngram,
+	&estimator_dirichlet, &estimator_mix,
+	&estimator_mix_deep,  NULL,
 };
 
 const struct estimator *estimator_find(const char *name)
