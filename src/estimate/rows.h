@@ -6,6 +6,7 @@
 
 extern const struct estimator estimator_uniform;
 extern const struct estimator estimator_ngram;
+extern const struct estimator estimator_crossfit;
 extern const struct estimator estimator_match;
 extern const struct estimator estimator_dirichlet;
 extern const struct estimator estimator_mix;

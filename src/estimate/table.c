@@ -6,6 +6,7 @@
 
 const struct estimator *const estimators[] = {
 	&estimator_uniform,   &estimator_ngram,
+	&estimator_crossfit,  &estimator_match,
 	&estimator_dirichlet, &estimator_mix,
 	&estimator_mix_deep,  NULL,
 };
