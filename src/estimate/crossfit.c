@@ -183,6 +183,6 @@ const struct estimator estimator_crossfit = {
 	.leans = LEANS_ABOVE,
 	.needs_suffix = true,
 	.reads_words = true,
-	.work = 0.4,
+	.work = 0.2,
 	.measure = crossfit_measure,
 };

@@ -196,6 +196,6 @@ const struct estimator estimator_dirichlet = {
 	.source = "Krichevsky, Trofimov 1981; Rissanen 1984",
 	.leans = LEANS_ABOVE,
 	.is_code = true,
-	.work = 0.3,
+	.work = 0.2,
 	.measure = dirichlet_measure,
 };

@@ -1,6 +1,7 @@
 #include "estimate/dirichlet_grams.h"
 
 #include "estimate/code_at.h"
+#include "estimate/pages.h"
 
 #include <assert.h>
 #include <string.h>
@@ -90,33 +91,6 @@ static MUST_USE enum status make_room(struct gram_chain *chain, bool *full)
 	return grow(chain);
 }
 
-/* The first symbol that begins at this byte or later. */
-static size_t symbol_from(const struct sequence *sequence, size_t byte)
-{
-	size_t low = 0, high = sequence->n;
-
-	while (low < high) {
-		size_t middle = low + (high - low) / 2;
-
-		if (sequence_byte_of(sequence, middle) < byte)
-			low = middle + 1;
-		else
-			high = middle;
-	}
-	return low;
-}
-
-static size_t page_end(const struct gram_chain *chain, size_t begin)
-{
-	const struct sequence *sequence = chain->sequence;
-	size_t page = chain->page_bytes;
-
-	if (page == 0)
-		return sequence->n;
-	return symbol_from(sequence, (sequence_byte_of(sequence, begin) / page +
-				      1) * page);
-}
-
 static uint64_t key_of(const struct gram_chain *chain, uint32_t shorter,
 		       size_t t)
 {
@@ -186,7 +160,7 @@ enum status gram_chain_lengthen(struct gram_chain *chain, bool *full)
 	*full = false;
 	for (size_t begin = 0; begin < chain->sequence->n && !*full;
 	     begin = end) {
-		end = page_end(chain, begin);
+		end = page_end(chain->sequence, chain->page_bytes, begin);
 		TRY(run_page(chain, begin, end, full));
 	}
 	chain->length++;

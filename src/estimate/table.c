@@ -5,10 +5,9 @@
 #include <string.h>
 
 const struct estimator *const estimators[] = {
-	&estimator_uniform,   &estimator_ngram,
-	&estimator_crossfit,  &estimator_match,
-	&estimator_dirichlet, &estimator_mix,
-	&estimator_mix_deep,  NULL,
+	&estimator_uniform, &estimator_ngram,     &estimator_crossfit,
+	&estimator_match,   &estimator_dirichlet, &estimator_ctw,
+	&estimator_mix,     &estimator_mix_deep,  NULL,
 };
 
 const struct estimator *estimator_find(const char *name)

@@ -1,6 +1,7 @@
 /* Do the lengths of all short strings together make exactly one code? */
 #include "support/coded.h"
 
+#include "estimate/ctw_model.h"
 #include "support/near.h"
 
 #include <math.h>
@@ -22,6 +23,18 @@ static const struct {
 } strings[] = {{1, 2}, {5, 2}, {11, 2}, {6, 3}, {5, 4}, {3, 16}};
 
 #define SIZES (sizeof(strings) / sizeof(*strings))
+
+static double ctw_bits(const uint8_t *codes, size_t n, unsigned alphabet,
+		       unsigned depth)
+{
+	struct ctw_model model;
+	double bits;
+
+	assert_int_equal(ctw_model_init(&model, alphabet, depth, 0), STATUS_OK);
+	bits = (double)ctw_model_measure_q32(&model, codes, 0, 0, n) * 0x1p-32;
+	ctw_model_release(&model);
+	return bits;
+}
 
 /* Kraft 1949: a code that wastes nothing has the sum 1. */
 static void dirichlet_at_each_order(void **state)
@@ -52,28 +65,56 @@ static void dirichlet_at_each_order(void **state)
 	}
 }
 
-/* With all choices paid for, no row that calls itself a code may exceed 1. */
-static void the_row_dirichlet(void **state)
+/* The same of weighted context trees: each decision's halves add up to 1. */
+static void context_trees(void **state)
 {
 	(void)state;
 	for (size_t i = 0; i < SIZES; i++) {
-		uint8_t codes[16] = {0};
-		double sum = 0;
+		for (unsigned depth = 0; depth < 8; depth += 3) {
+			uint8_t codes[16] = {0};
+			double sum = 0;
 
-		do {
-			struct sequence sequence = coded_sequence(
-				codes, strings[i].n, strings[i].alphabet);
-			struct findings findings = coded_findings(
-				(struct coded_run){.row = "dirichlet"},
-				&sequence);
+			do {
+				sum += exp2(-ctw_bits(codes, strings[i].n,
+						      strings[i].alphabet,
+						      depth));
+			} while (next_string(codes, strings[i].n,
+					     strings[i].alphabet));
+			assert_near(sum, 1, 1e-7);
+		}
+	}
+}
 
-			sum += exp2(-bits_from_q16(
-				findings.series[0].costs.headline_q16));
-			findings_release(&findings);
-		} while (next_string(codes, strings[i].n, strings[i].alphabet));
-		assert_true(sum <= 1);
+/* Sum of the row over all strings of one size. */
+static double row_sum(const char *row, size_t n, unsigned alphabet)
+{
+	uint8_t codes[16] = {0};
+	double sum = 0;
+
+	do {
+		struct sequence sequence = coded_sequence(codes, n, alphabet);
+		struct findings findings = coded_findings(
+			(struct coded_run){.row = row}, &sequence);
+
+		sum += exp2(
+			-bits_from_q16(findings.series[0].costs.headline_q16));
+		findings_release(&findings);
+	} while (next_string(codes, n, alphabet));
+	return sum;
+}
+
+/* With all choices paid for, no row that calls itself a code may exceed 1. */
+static void whole_rows(void **state)
+{
+	(void)state;
+	for (size_t i = 0; i < SIZES; i++) {
+		size_t n = strings[i].n;
+		double sum = row_sum("dirichlet", n, strings[i].alphabet);
+
 		/* One of twelve ways alone, rounded up to 2^-16. */
-		assert_true(sum > 1. / 12 - 1e-5);
+		assert_true(sum > 1. / 12 - 1e-5 && sum <= 1);
+		/* Half goes to the way without a small alphabet. */
+		assert_true(row_sum("ctw", n, strings[i].alphabet) <= .5);
 	}
 }
 
@@ -81,7 +122,8 @@ int main(void)
 {
 	const struct CMUnitTest tests[] = {
 		cmocka_unit_test(dirichlet_at_each_order),
-		cmocka_unit_test(the_row_dirichlet),
+		cmocka_unit_test(context_trees),
+		cmocka_unit_test(whole_rows),
 	};
 
 	return cmocka_run_group_tests(tests, NULL, NULL);
