@@ -31,11 +31,10 @@ void ctw_model_release(struct ctw_model *model)
 	model->logs = NULL;
 }
 
-static uint64_t mix(uint64_t x)
+static uint64_t mix(uint64_t x, uint64_t multiplier)
 {
-	x = (x ^ x >> 30) * SPREAD;
-	x = (x ^ x >> 27) * SPREAD_MORE;
-	return x ^ x >> 31;
+	x *= multiplier;
+	return x ^ x >> 32;
 }
 
 /* Bit i of the symbol, where it is not the only one possible. */
@@ -56,14 +55,17 @@ static void look_ahead(struct ctw_model *model, const uint8_t *symbols,
 
 	for (unsigned d = 0; d <= model->tree.depth; d++) {
 		if (d > 0)
-			context = mix(context + APART +
-				      (t >= known + d ? symbols[t - d] : 0));
+			context = mix(
+				context + APART +
+					(t >= known + d ? symbols[t - d] : 0),
+				SPREAD);
 		for (unsigned j = 0; j < decisions; j++) {
 			/* A one, then the bits above: a number for each. */
 			uint64_t prefix =
 				(1u << decisions | symbol) >> (decisions - j);
 
-			names[j][d] = mix(context + prefix * APART);
+			names[j][d] =
+				mix(context + prefix * APART, SPREAD_MORE);
 			ctw_tree_ask(&model->tree, names[j][d]);
 		}
 	}
