@@ -5,16 +5,6 @@
 
 /* Alphabets up to this size keep their symbols; others go byte by byte. */
 #define SMALL_MAX 16
-/*
- * Nodes to make room for: twice what there can be up to so many symbols, for
- * pages to lose none. Longer streams meet contexts again: up to 16 a symbol
- * on disordered ones, 2 to 4 on long ones of some order, as measured.
- */
-#define SYMBOLS_PAGE 32768
-#define NODES_A_SYMBOL 16
-#define NODES_SHORT ((size_t)1 << 24)
-#define NODES_A_SYMBOL_LONG 6
-
 /* How a sequence is taken apart. */
 struct ctw_plan {
 	const uint8_t *symbols; /* those coded, each below alphabet */
@@ -154,35 +144,18 @@ static void measure_blocks(struct ctw_run *run, struct costs *costs)
 	costs->headline_q16 = q16_from_q32(total);
 }
 
-static size_t nodes_for(const struct ctw_plan *plan, size_t symbols)
-{
-	size_t decisions = 0, few, many;
-
-	while (1u << decisions < plan->alphabet)
-		decisions++;
-	if (symbols <= SYMBOLS_PAGE)
-		return symbols * decisions * (plan->depth + 1) * 2;
-	if (symbols > CTW_SLOTS_MAX / NODES_A_SYMBOL_LONG)
-		return CTW_SLOTS_MAX;
-	few = symbols * NODES_A_SYMBOL_LONG;
-	many = symbols * NODES_A_SYMBOL;
-	many = many < NODES_SHORT ? many : NODES_SHORT;
-	return few > many ? few : many;
-}
-
 static MUST_USE enum status measure(struct ctw_run *run,
 				    struct findings *findings)
 {
 	const struct ctw_plan *plan = run->plan;
-	size_t most = plan->count;
 
-	if (run->input->page_bytes)
-		most = end_of_page(plan, run->input, 0);
 	TRY(ctw_model_init(&run->model, plan->alphabet, plan->depth,
-			   nodes_for(plan, most)));
+			   CTW_SLOTS_MAX));
 	findings->series[0].order = plan->depth;
 	TRY(costs_init(&findings->series[0].costs, run->input->cuts->blocks));
 	measure_blocks(run, &findings->series[0].costs);
+	if (run->model.tree.exhausted)
+		return STATUS_NO_MEMORY;
 	findings_note(findings, "alphabet", plan->alphabet);
 	findings_note(findings, "charge_q16", q16_from_q32(plan->charge_q32));
 	findings_note(findings, "nodes", (int64_t)run->nodes);
@@ -225,7 +198,8 @@ static enum status ctw_measure(const struct estimate_input *input,
 		return reason_give(why, status,
 				   "out of memory: the context trees may take "
 				   "up to %zu bytes",
-				   CTW_SLOTS_MAX * sizeof(struct ctw_slot));
+				   CTW_SLOTS_MAX / 2 * 3 *
+					   sizeof(struct ctw_slot));
 	return STATUS_OK;
 }
 

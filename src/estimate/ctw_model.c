@@ -8,7 +8,7 @@
 #define APART UINT64_C(0x9E3779B97F4A7C15)
 
 enum status ctw_model_init(struct ctw_model *model, unsigned alphabet,
-			   unsigned depth, size_t nodes)
+			   unsigned depth, size_t slots_max)
 {
 	struct ctw_model made = {.alphabet = alphabet};
 
@@ -16,7 +16,7 @@ enum status ctw_model_init(struct ctw_model *model, unsigned alphabet,
 	while (1u << made.decisions < alphabet)
 		made.decisions++;
 	TRY(quick_log2_new(&made.logs));
-	if (ctw_tree_init(&made.tree, depth, nodes) != STATUS_OK) {
+	if (ctw_tree_init(&made.tree, depth, slots_max) != STATUS_OK) {
 		memory_free(made.logs);
 		return STATUS_NO_MEMORY;
 	}

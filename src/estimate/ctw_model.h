@@ -22,14 +22,15 @@ struct ctw_model {
 	uint64_t names[2][CTW_DECISIONS_MAX][CTW_NODES_MAX];
 };
 
-/* Room for so many nodes, depth in symbols; as ctw_tree_init. */
+/* depth in symbols; slots_max as in ctw_tree_init. STATUS_NO_MEMORY. */
 MUST_USE enum status ctw_model_init(struct ctw_model *model, unsigned alphabet,
-				    unsigned depth, size_t nodes);
+				    unsigned depth, size_t slots_max);
 void ctw_model_release(struct ctw_model *model);
 
 /*
  * Bits of the symbols first … last - 1 in Q32, learning them. Contexts reach
  * back to symbols[known], known <= first; before it all symbols count as 0.
+ * Of no use once tree.exhausted.
  */
 wide_int ctw_model_measure_q32(struct ctw_model *model, const uint8_t *symbols,
 			       size_t known, size_t first, size_t last);

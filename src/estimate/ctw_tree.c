@@ -4,6 +4,11 @@
 #include <string.h>
 
 #define SLOTS_A_LINE 4
+/* A node lies in its line or, where that is full, in one of 7 beside it. */
+#define LINES_TRIED 8
+#define LINES_TRIED_BITS 3
+/* 11: so that the last three bits of a line are always in the tag. */
+#define LINE_BITS_MIN 11
 #define INVERSES 1024
 #define COUNT_MAX ((UINT32_C(1) << 24) - 1)
 #define HALF_Q48 (UINT64_C(1) << 47)
@@ -12,15 +17,24 @@
 #define ONE_Q48 (UINT64_C(1) << 48)
 #define TAG_MASK UINT64_C(0xFFFF)
 
-enum status ctw_tree_init(struct ctw_tree *tree, unsigned depth, size_t nodes)
+static size_t slots_of(unsigned line_bits)
 {
-	struct ctw_tree made = {.depth = depth, .line_bits = 8};
-	size_t slots = (size_t)SLOTS_A_LINE << made.line_bits;
+	return (size_t)SLOTS_A_LINE << line_bits;
+}
+
+enum status ctw_tree_init(struct ctw_tree *tree, unsigned depth,
+			  size_t slots_max)
+{
+	struct ctw_tree made = {.depth = depth,
+				.line_bits = LINE_BITS_MIN,
+				.line_bits_max = LINE_BITS_MIN};
 
 	assert(depth < CTW_NODES_MAX);
-	for (; slots < nodes && slots < CTW_SLOTS_MAX; slots *= 2)
-		made.line_bits++;
-	TRY(memory_new_lines(slots, sizeof(*made.slots), &made.slots));
+	while (slots_of(made.line_bits_max) < slots_max &&
+	       slots_of(made.line_bits_max) < CTW_SLOTS_MAX)
+		made.line_bits_max++;
+	TRY(memory_new_lines(slots_of(made.line_bits), sizeof(*made.slots),
+			     &made.slots));
 	for (uint64_t i = 1; i < INVERSES; i++)
 		made.inverse[i] = (UINT64_C(1) << 63) / i;
 	*tree = made;
@@ -36,34 +50,83 @@ void ctw_tree_release(struct ctw_tree *tree)
 void ctw_tree_restart(struct ctw_tree *tree)
 {
 	memset(tree->slots, 0,
-	       ((size_t)SLOTS_A_LINE << tree->line_bits) *
-		       sizeof(*tree->slots));
+	       slots_of(tree->line_bits) * sizeof(*tree->slots));
 	tree->nodes = 0;
 }
 
-/* In its line or the one beside it; NULL where both are full of others. */
-static struct ctw_slot *find(struct ctw_tree *tree, uint64_t name)
+/* The slot of this name or the first free one; NULL where there is neither. */
+static struct ctw_slot *look(const struct ctw_tree *tree, uint64_t name)
 {
 	size_t line = (size_t)(name >> (64 - tree->line_bits));
-	uint64_t low = name & TAG_MASK, high = name >> 16 & TAG_MASK;
+	uint64_t low = name >> 24 & TAG_MASK, high = name >> 40 & TAG_MASK;
 
-	for (unsigned i = 0; i < 2 * SLOTS_A_LINE; i++) {
+	for (unsigned i = 0; i < LINES_TRIED * SLOTS_A_LINE; i++) {
 		size_t at = (line ^ i / SLOTS_A_LINE) * SLOTS_A_LINE +
 			    i % SLOTS_A_LINE;
 		struct ctw_slot *slot = &tree->slots[at];
 
-		if (!slot->weight) {
-			slot->weight = HALF_Q48 << 16 | low;
-			slot->counts = high;
-			tree->nodes++;
-			return slot;
-		}
-		if ((slot->weight & TAG_MASK) == low &&
-		    (slot->counts & TAG_MASK) == high)
+		if (!slot->weight || ((slot->weight & TAG_MASK) == low &&
+				      (slot->counts & TAG_MASK) == high))
 			return slot;
 	}
-	tree->refused++;
 	return NULL;
+}
+
+static struct ctw_slot *find(struct ctw_tree *tree, uint64_t name)
+{
+	struct ctw_slot *slot = look(tree, name);
+
+	if (!slot) {
+		tree->refused++;
+	} else if (!slot->weight) {
+		slot->weight = HALF_Q48 << 16 | (name >> 24 & TAG_MASK);
+		slot->counts = name >> 40 & TAG_MASK;
+		tree->nodes++;
+	}
+	return slot;
+}
+
+/*
+ * The upper 40 bits of a name. The line gives all its bits but the last three,
+ * since the slot may lie in a line beside; those are in the tag.
+ */
+static uint64_t name_of(const struct ctw_tree *tree, size_t slot)
+{
+	const uint64_t tag_bits = (UINT64_C(1) << 32) - 1;
+	const struct ctw_slot *at = &tree->slots[slot];
+	uint64_t tag = (at->counts & TAG_MASK) << 16 | (at->weight & TAG_MASK);
+	uint64_t line = slot / SLOTS_A_LINE >> LINES_TRIED_BITS;
+
+	return (line << (64 + LINES_TRIED_BITS - tree->line_bits) &
+		~(tag_bits << 24)) |
+	       tag << 24;
+}
+
+/* Twice as many lines; a node that finds no place there is dropped. */
+static void grow(struct ctw_tree *tree)
+{
+	struct ctw_tree larger = *tree;
+	size_t slots = slots_of(tree->line_bits);
+
+	larger.line_bits++;
+	if (memory_new_lines(2 * slots, sizeof(*larger.slots), &larger.slots) !=
+	    STATUS_OK) {
+		tree->exhausted = true;
+		return;
+	}
+	for (size_t i = 0; i < slots; i++) {
+		struct ctw_slot *slot;
+
+		if (!tree->slots[i].weight)
+			continue;
+		slot = look(&larger, name_of(tree, i));
+		if (slot)
+			*slot = tree->slots[i];
+		else
+			larger.nodes--;
+	}
+	memory_free(tree->slots);
+	*tree = larger;
 }
 
 static uint32_t zeros_of(const struct ctw_slot *slot)
@@ -102,6 +165,9 @@ uint32_t ctw_tree_predict(struct ctw_tree *tree, const uint64_t *names)
 	uint32_t deeper = UINT32_C(1) << 31;
 	unsigned length = 0;
 
+	if (tree->nodes > slots_of(tree->line_bits) / 8 * 3 &&
+	    tree->line_bits < tree->line_bits_max && !tree->exhausted)
+		grow(tree);
 	while (length <= tree->depth) {
 		struct ctw_slot *slot = find(tree, names[length]);
 

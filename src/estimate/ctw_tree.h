@@ -21,17 +21,26 @@
 #define CTW_NODES_MAX 32 /* on one path: depth + 1 */
 
 struct ctw_slot {
-	uint64_t weight; /* w, then the low half of a tag; 0: free */
-	uint64_t counts; /* zeros and ones, 24 bits each, the high half */
+	uint64_t weight; /* w, then bits 24 … 39 of the name; 0: free */
+	uint64_t counts; /* zeros and ones, 24 bits each, then 40 … 55 */
 };
 
-/* A table for all nodes of all trees; no pointers, and no nodes are dropped. */
+/* At most this many slots: 1 GiB, and half of it more while growing to it. */
+#define CTW_SLOTS_MAX ((size_t)1 << 26)
+
+/*
+ * A table for all nodes of all trees; no pointers, and no nodes are dropped. It
+ * doubles when three eighths full. Nodes are told apart by 40 bits of their
+ * names.
+ */
 struct ctw_tree {
 	struct ctw_slot *slots; /* owned; lines of four */
-	unsigned line_bits;     /* 2^line_bits lines */
-	unsigned depth;         /* D */
-	uint64_t nodes;         /* made since the last restart */
-	uint64_t refused;       /* not made, since their place was full */
+	unsigned line_bits;     /* 2^line_bits lines, by the name's top bits */
+	unsigned line_bits_max;
+	unsigned depth;   /* D */
+	bool exhausted;   /* the heap said no: nothing since is of use */
+	uint64_t nodes;   /* made since the last restart */
+	uint64_t refused; /* not made, since their place was full */
 	/* The path of the decision in hand, from the root of its tree. */
 	unsigned length;
 	struct ctw_slot *path[CTW_NODES_MAX];
@@ -40,15 +49,12 @@ struct ctw_tree {
 	uint64_t inverse[1024];          /* 2^63 / i */
 };
 
-/* At most this many slots: 1 GiB. */
-#define CTW_SLOTS_MAX ((size_t)1 << 26)
-
 /*
- * Room for this many nodes at least, as far as CTW_SLOTS_MAX allows; depth
- * below CTW_NODES_MAX. STATUS_NO_MEMORY.
+ * slots_max, rounded up to a power of two from 8192 to CTW_SLOTS_MAX, is how
+ * far the table may grow; depth below CTW_NODES_MAX. STATUS_NO_MEMORY.
  */
 MUST_USE enum status ctw_tree_init(struct ctw_tree *tree, unsigned depth,
-				   size_t nodes);
+				   size_t slots_max);
 void ctw_tree_release(struct ctw_tree *tree);
 
 /* Forgets all. */

@@ -150,7 +150,7 @@ static void a_full_table(void **state)
 	bits = (double)ctw_model_measure_q32(&model, symbols, 0, 0, LENGTH) *
 	       0x1p-32;
 	assert_true(model.tree.refused > 0);
-	assert_true(model.tree.nodes <= 1024);
+	assert_true(model.tree.nodes <= 8192);
 	assert_true(bits > 7.99 * LENGTH && bits < 8.2 * LENGTH);
 	ctw_model_release(&model);
 }
