@@ -155,9 +155,9 @@ json_t *json_corpus(const struct corpus_view *view)
 	put_rows(&made, view);
 	json_put(&made, "floor", floor_object(&view->floor));
 	json_put(&made, "bracket", bracket_object(&view->bracket));
-	json_put(&made, "extrapolation",
-		 extrapolation_object(&view->extrapolation));
 	put_cells(&made, view);
 	put_more(&made, view);
+	json_put(&made, "extrapolation",
+		 extrapolation_object(&view->extrapolation));
 	return json_done(&made);
 }
