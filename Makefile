@@ -104,10 +104,12 @@ asan: ## tests and faults under the address and undefined-behaviour sanitizers
 	@$(MAKE) --no-print-directory MODE=asan test faults
 
 VALGRIND := valgrind --quiet --error-exitcode=9 --leak-check=full --errors-for-leak-kinds=definite,indirect
-VALGRIND_TESTS := $(filter $(B)/tests/unit/%,$(TESTS))
+# Those that kill processes by the clock, or take minutes so, are left to asan.
+VALGRIND_SLOW := %/test_ledger_kill %/test_bootstrap %/test_crossfit %/test_cell %/test_codepoint
+VALGRIND_TESTS := $(filter-out $(VALGRIND_SLOW),$(filter $(B)/tests/unit/% %/test_codec_framing,$(TESTS)))
 
-valgrind: $(VALGRIND_TESTS) ## the unit tests under valgrind
-	@RUNNER="$(VALGRIND)" RATEFLOOR_QUICK=1 scripts/run-tests $(B) $(VALGRIND_TESTS)
+valgrind: $(VALGRIND_TESTS) ## the unit tests, and hostile streams, under valgrind
+	@RUNNER="$(VALGRIND)" scripts/run-tests $(B) $(VALGRIND_TESTS)
 
 FUZZ_SECONDS ?= 60
 FUZZERS := $(patsubst tests/fuzz/%.c,build/fuzz/%,$(sort $(wildcard tests/fuzz/fuzz_*.c)))

@@ -1,87 +1,97 @@
-/* Probabilities as whole numbers with an exponent, and their mixing. */
+/* A probability in one word, from 1 down to 2^-1023, relative error 2^-53. */
 #ifndef ESTIMATE_CROSSFIT_SHARE_H
 #define ESTIMATE_CROSSFIT_SHARE_H
 
-#include "estimate/quick_log.h"
+#include "estimate/quick_log2.h"
 
 /*
- * A share is a probability in 64 bits: the low 54 hold a mantissa f with its
- * top bit set, the high 10 an exponent e, and it stands for f 2^-(53 + e). A
- * fixed point would not do: each order can divide a share by nearly 2^31, and
- * one that was cut off would cost less than it should. From 2^-32 on, 32 orders
- * end above 2^-1024. All results are rounded down, so no share passes 1.
+ * A share is m 2^-(64 + e): the upper 54 bits of m, whose highest bit is set,
+ * below e. Fixed point would not do: a symbol that no context of any order has
+ * seen keeps about n^-k at order k. 1 itself is the next number below it.
  */
-#define SHARE_BITS 54
-#define SHARE_MASK ((UINT64_C(1) << SHARE_BITS) - 1)
-#define SHARE_EXPONENT_MAX 1023
+#define SHARE_EXPONENT_BITS 54
 
-/* 1 / d for 1 <= d < 2^63 as inverse 2^(zeros - 127), inverse >= 2^63 - 1. */
-struct reciprocal {
-	uint64_t inverse;
-	unsigned zeros; /* leading zeros of d */
-};
-
-static inline struct reciprocal reciprocal_of(uint64_t d)
+static inline uint64_t share_pack(uint64_t mantissa, uint64_t exponent)
 {
-	unsigned zeros = (unsigned)__builtin_clzll(d);
-	wide_uint almost = ((wide_uint)1 << 127) - 1;
-
-	return (struct reciprocal){(uint64_t)(almost / (d << zeros)), zeros};
+	if (exponent > 1023)
+		exponent = 1023;
+	return exponent << SHARE_EXPONENT_BITS | mantissa >> 10;
 }
 
-/* number / d, number scaled down by 2^scale; number is not 0. */
-static inline uint64_t share_divide(wide_uint number, unsigned scale,
-				    struct reciprocal d)
+/* The parts again. */
+static inline uint64_t share_mantissa(uint64_t share)
 {
-	uint64_t high = (uint64_t)(number >> 64), top, quotient;
-	unsigned zeros, exponent;
+	return share << 10;
+}
 
-	if (high) {
-		unsigned extra = 64 - (unsigned)__builtin_clzll(high);
+static inline unsigned share_exponent(uint64_t share)
+{
+	return (unsigned)(share >> SHARE_EXPONENT_BITS);
+}
 
-		top = (uint64_t)(number >> extra);
-		scale -= extra;
-	} else {
-		zeros = (unsigned)__builtin_clzll((uint64_t)number);
-		top = (uint64_t)number << zeros;
-		scale += zeros;
+/* 1 / alphabet; 1 <= alphabet <= 2^32. */
+static inline uint64_t share_uniform(uint64_t alphabet)
+{
+	uint64_t q64 = UINT64_MAX / alphabet;
+	unsigned exponent = (unsigned)__builtin_clzll(q64);
+
+	return share_pack(q64 << exponent, exponent);
+}
+
+/*
+ * (count + weight share) / total for weight >= 1, through the inverse
+ * 2^64 / total, rounded down; count + weight <= total. Rounds down by less than
+ * 2^-31 of the value: the shares of all symbols never add up to more than 1.
+ */
+static inline uint64_t share_blend(uint64_t share, uint64_t count,
+				   uint64_t weight, uint64_t inverse)
+{
+	uint64_t mantissa = share_mantissa(share);
+	unsigned exponent = share_exponent(share), shift;
+	uint64_t lower =
+		(uint64_t)((wide_uint)(weight * inverse) * mantissa >> 64);
+
+	if (count) {
+		lower = exponent < 64 ? lower >> exponent : 0;
+		lower += count * inverse;
+		exponent = 0;
 	}
-	quotient = (uint64_t)(((wide_uint)top * d.inverse) >> 64);
-	zeros = (unsigned)__builtin_clzll(quotient);
-	exponent = scale + zeros - d.zeros;
-	if (exponent > SHARE_EXPONENT_MAX)
-		exponent = SHARE_EXPONENT_MAX;
-	return (uint64_t)exponent << SHARE_BITS |
-	       (quotient << zeros) >> (64 - SHARE_BITS);
+	shift = (unsigned)__builtin_clzll(lower);
+	return share_pack(lower << shift, exponent + shift);
 }
 
-/* 1 / d, d >= 1. */
-static inline uint64_t share_of_one_in(uint64_t d)
+/* Shares multiplied into one before a logarithm is taken. */
+#define SHARE_RUN 64
+
+/*
+ * Sum of -log2 over count shares in Q32, never below 0. Runs of them are
+ * multiplied first: each product loses less than 2^-62 of its value.
+ */
+static inline int64_t share_bits_q32(const struct quick_log2 *logs,
+				     const uint64_t *share, size_t count)
 {
-	return share_divide(1, 0, reciprocal_of(d));
-}
+	int64_t bits_q32 = 0;
 
-/* (count + weight share) / d, weight >= 1, both below 2^32. */
-static inline uint64_t share_mix(uint64_t share, uint32_t count,
-				 uint32_t weight, struct reciprocal d)
-{
-	wide_uint product = (wide_uint)(share & SHARE_MASK) * weight;
-	unsigned exponent = (unsigned)(share >> SHARE_BITS);
+	for (size_t i = 0; i < count; i += SHARE_RUN) {
+		size_t end = count - i < SHARE_RUN ? count : i + SHARE_RUN;
+		uint64_t product = UINT64_MAX, exponent = 64;
+		int64_t run_q48;
 
-	if (!count)
-		return share_divide(product, SHARE_BITS - 1 + exponent, d);
-	/* beside a count at least 1 nothing below 2^-64 matters */
-	product = exponent < 96 ? (product << 11) >> exponent : 0;
-	return share_divide(((wide_uint)count << 64) + product, 64, d);
-}
+		for (size_t j = i; j < end; j++) {
+			uint64_t mantissa = share_mantissa(share[j]), small;
 
-/* -log2 of a share, in Q32. */
-static inline uint64_t share_loss_q32(const struct quick_log *log,
-				      uint64_t share)
-{
-	uint64_t scale = SHARE_BITS - 1 + (share >> SHARE_BITS);
-
-	return (scale << 32) - quick_log_q32(log, share & SHARE_MASK);
+			product =
+				(uint64_t)((wide_uint)product * mantissa >> 64);
+			small = product >> 63 ^ 1;
+			product <<= small;
+			exponent += share_exponent(share[j]) + small;
+		}
+		run_q48 = (int64_t)((exponent << 48) -
+				    quick_log2_q48(logs, product));
+		if (run_q48 > 0)
+			bits_q32 += (run_q48 + (1 << 15)) >> 16;
+	}
+	return bits_q32;
 }
 
 #endif

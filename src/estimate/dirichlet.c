@@ -1,106 +1,163 @@
-#include "estimate/dirichlet_code.h"
+#include "estimate/dirichlet_lengths.h"
 #include "estimate/rows.h"
-
-#include "base/memory.h"
 
 #include <assert.h>
 #include <stdio.h>
+#include <string.h>
 
-/* What a decoder is told first: an order, and one of two alphabets. */
-#define CHOICES (DIRICHLET_ORDERS * ALPHABET_CHOICES)
+/* One of so many ways to code is named first: log2(12) in 2^-16, rounded up. */
+#define WAYS (DIRICHLET_ORDERS * DIRICHLET_ALPHABETS)
+#define WAY_Q32 ((wide_int)234945 << 16)
 
-/*
- * What naming the alphabet costs: nothing for that of the kind; the number of
- * symbols seen, 1 to A, and which they are.
- */
-static MUST_USE enum status alphabet_bits(const struct sequence *sequence,
-					  wide_int bits_q32[ALPHABET_CHOICES])
-{
-	TRY(subset_bits_q32(sequence->alphabet, sequence->distinct,
-			    &bits_q32[ALPHABET_SEEN]));
-	bits_q32[ALPHABET_SEEN] += (wide_int)log2_q32(sequence->alphabet);
-	bits_q32[ALPHABET_OF_KIND] = 0;
-	return STATUS_OK;
-}
-
-struct choice {
-	unsigned order;
-	enum dirichlet_alphabet alphabet;
+/* What one measurement holds. */
+struct dirichlet {
+	struct gram_chain chain;
+	struct dirichlet_codes codes;
+	wide_int charge_q32[DIRICHLET_ALPHABETS];
+	size_t parts; /* blocks, or 1 for the whole */
+	/* Owned; bits by part, of one order and of the best way so far. */
+	wide_int *sum_q32[DIRICHLET_ALPHABETS];
+	wide_int *best_q32;
+	wide_int best_total_q32;
+	unsigned best_order;
+	enum dirichlet_alphabet best_alphabet;
+	int64_t order_q16[DIRICHLET_ORDERS];
+	unsigned orders; /* measured */
 };
 
-static enum dirichlet_alphabet
-cheaper(const wide_int total_q32[ALPHABET_CHOICES])
+static void dirichlet_release(struct dirichlet *held)
 {
-	return total_q32[ALPHABET_SEEN] < total_q32[ALPHABET_OF_KIND]
-		       ? ALPHABET_SEEN
-		       : ALPHABET_OF_KIND;
+	gram_chain_release(&held->chain);
+	dirichlet_codes_release(&held->codes);
+	for (int i = 0; i < DIRICHLET_ALPHABETS; i++)
+		memory_free(held->sum_q32[i]);
+	memory_free(held->best_q32);
 }
 
-/* Adds the alphabets to the totals; the least of all, the lower order first. */
-static struct choice choose(struct dirichlet_sums *sums,
-			    const wide_int alphabet_q32[ALPHABET_CHOICES],
-			    struct findings *findings)
+static MUST_USE enum status dirichlet_init(struct dirichlet *held,
+					   const struct estimate_input *input)
 {
-	struct choice best = {0, ALPHABET_OF_KIND};
+	const struct sequence *sequence = input->sequence;
 
-	for (unsigned order = 0; order < DIRICHLET_ORDERS; order++) {
-		wide_int *total = sums->total_q32[order];
-		char key[sizeof(findings->notes[0].key)];
-		struct choice here = {order, ALPHABET_OF_KIND};
-
-		for (unsigned a = 0; a < ALPHABET_CHOICES; a++)
-			total[a] += alphabet_q32[a];
-		here.alphabet = cheaper(total);
-		snprintf(key, sizeof(key), "order%u_q16", order);
-		findings_note(findings, key,
-			      q16_from_q32(total[here.alphabet]));
-		if (total[here.alphabet] <
-			    sums->total_q32[best.order][best.alphabet] ||
-		    order == 0)
-			best = here;
-	}
-	return best;
+	held->parts = input->cuts->blocks ? input->cuts->blocks : 1;
+	held->charge_q32[ALPHABET_OF_KIND] = WAY_Q32;
+	held->charge_q32[ALPHABET_SEEN] =
+		WAY_Q32 +
+		dirichlet_subset_q32(sequence->alphabet, sequence->distinct);
+	for (int i = 0; i < DIRICHLET_ALPHABETS; i++)
+		TRY(memory_new(held->parts, sizeof(wide_int),
+			       &held->sum_q32[i]));
+	TRY(memory_new(held->parts, sizeof(wide_int), &held->best_q32));
+	TRY(dirichlet_codes_init(&held->codes, sequence));
+	return gram_chain_init(&held->chain, sequence, input->page_bytes,
+			       GRAM_SLOTS_MAX);
 }
 
-/* The charge for the choice and the alphabet goes to the first block. */
-static MUST_USE enum status fill_costs(const struct dirichlet_sums *sums,
-				       struct choice choice,
-				       wide_int alphabet_q32,
-				       struct series *series)
+/* Keeps the sums of one alphabet if they are the fewest so far. */
+static void compare(struct dirichlet *held, enum dirichlet_alphabet alphabet)
 {
-	wide_int charge_q32 = (wide_int)log2_q32(CHOICES);
-	wide_int total = sums->total_q32[choice.order][choice.alphabet];
+	wide_int *sum_q32 = held->sum_q32[alphabet], total = 0;
+	unsigned order = held->orders;
+	int64_t total_q16;
 
-	series->order = choice.order;
-	TRY(costs_init(&series->costs, sums->blocks));
-	if (sums->blocks) {
-		int64_t *block =
-			dirichlet_blocks(sums, choice.order, choice.alphabet);
+	sum_q32[0] += held->charge_q32[alphabet];
+	for (size_t i = 0; i < held->parts; i++)
+		total += sum_q32[i];
+	total_q16 = q16_from_q32(total);
+	if (alphabet == 0 || total_q16 < held->order_q16[order])
+		held->order_q16[order] = total_q16;
+	if (order + (unsigned)alphabet > 0 && total >= held->best_total_q32)
+		return;
+	held->best_total_q32 = total;
+	held->best_order = order;
+	held->best_alphabet = alphabet;
+	held->sum_q32[alphabet] = held->best_q32;
+	held->best_q32 = sum_q32;
+}
 
-		block[0] += (int64_t)(charge_q32 + alphabet_q32);
-		costs_set_q32(&series->costs, block);
+static void add_order(struct dirichlet *held, const struct cuts *cuts)
+{
+	size_t n = held->chain.sequence->n;
+
+	for (size_t i = 0; i < held->parts; i++) {
+		wide_int sum_q32[DIRICHLET_ALPHABETS] = {0};
+
+		dirichlet_codes_add(&held->codes, &held->chain,
+				    cuts->blocks ? cuts->symbol[i] : 0,
+				    cuts->blocks ? cuts->symbol[i + 1] : n,
+				    sum_q32);
+		for (int j = 0; j < DIRICHLET_ALPHABETS; j++)
+			held->sum_q32[j][i] = sum_q32[j];
 	}
-	series->costs.headline_q16 = q16_from_q32(total + charge_q32);
+	for (int j = 0; j < DIRICHLET_ALPHABETS; j++)
+		compare(held, (enum dirichlet_alphabet)j);
+	held->orders++;
+}
+
+static MUST_USE enum status add_orders(struct dirichlet *held,
+				       const struct estimate_input *input)
+{
+	while (held->orders < DIRICHLET_ORDERS) {
+		bool full;
+
+		TRY(gram_chain_lengthen(&held->chain, &full));
+		if (full)
+			return STATUS_OK;
+		add_order(held, input->cuts);
+	}
 	return STATUS_OK;
 }
 
-static MUST_USE enum status fill(struct dirichlet_sums *sums,
-				 const struct sequence *sequence,
-				 struct findings *findings)
+/* Rounds the running total at every cut, so that the blocks add up. */
+static void set_costs(const struct dirichlet *held, struct costs *costs)
 {
-	wide_int alphabet_q32[ALPHABET_CHOICES];
-	struct findings made;
-	struct choice choice;
+	wide_int running = 0;
+	int64_t before = 0;
 
-	TRY(alphabet_bits(sequence, alphabet_q32));
-	TRY(findings_init(&made, 1, 0));
-	choice = choose(sums, alphabet_q32, &made);
-	if (fill_costs(sums, choice, alphabet_q32[choice.alphabet],
-		       &made.series[0]) != STATUS_OK) {
-		findings_release(&made);
-		return STATUS_NO_MEMORY;
+	for (size_t i = 0; i < costs->blocks; i++) {
+		int64_t now;
+
+		running += held->best_q32[i];
+		now = q16_from_q32(running);
+		costs->block_q16[i] = now - before;
+		before = now;
 	}
-	findings_note(&made, "alphabet_seen", choice.alphabet == ALPHABET_SEEN);
+	costs->headline_q16 = q16_from_q32(held->best_total_q32);
+}
+
+static void take_notes(const struct dirichlet *held, struct findings *findings)
+{
+	findings_note(findings, "alphabet",
+		      (int64_t)held->codes.code[held->best_alphabet].alphabet);
+	findings_note(findings, "charge_q16",
+		      q16_from_q32(held->charge_q32[held->best_alphabet]));
+	findings_note(findings, "orders", held->orders);
+	for (unsigned i = 0; i < held->orders; i++) {
+		char key[] = "order0_q16";
+
+		key[5] = (char)('0' + i);
+		findings_note(findings, key, held->order_q16[i]);
+	}
+}
+
+static MUST_USE enum status measure(struct dirichlet *held,
+				    const struct estimate_input *input,
+				    struct findings *findings)
+{
+	struct findings made;
+	enum status status;
+
+	TRY(dirichlet_init(held, input));
+	TRY(add_orders(held, input));
+	TRY(findings_init(&made, 1, 0));
+	made.series[0].order = held->best_order;
+	status = costs_init(&made.series[0].costs, input->cuts->blocks);
+	if (status != STATUS_OK) {
+		findings_release(&made);
+		return status;
+	}
+	set_costs(held, &made.series[0].costs);
+	take_notes(held, &made);
 	*findings = made;
 	return STATUS_OK;
 }
@@ -109,38 +166,36 @@ static enum status dirichlet_measure(const struct estimate_input *input,
 				     struct findings *findings,
 				     struct reason *why)
 {
-	const struct sequence *sequence = input->sequence;
-	struct dirichlet_input coded = {
-		.sequence = sequence,
-		.cuts = input->cuts,
-		.page_bytes = input->page_bytes,
-		.alphabet = {sequence->alphabet, sequence->distinct},
-	};
-	struct dirichlet_sums sums;
+	size_t n = input->sequence->n;
+	struct dirichlet held = {.parts = 0};
 	enum status status;
 
-	assert(sequence->distinct >= 1);
-	assert(sequence->distinct <= sequence->alphabet);
-	status = dirichlet_code(&coded, &sums);
-	if (status == STATUS_OK) {
-		status = fill(&sums, sequence, findings);
-		dirichlet_sums_release(&sums);
-	}
+	if (n == 0)
+		return reason_give(why, STATUS_TOO_SHORT, "no symbols");
+	if (n > UINT32_MAX)
+		return reason_give(why, STATUS_NO_MEMORY,
+				   "%zu symbols are too many: counts hold at "
+				   "most 4294967295",
+				   n);
+	status = measure(&held, input, findings);
+	dirichlet_release(&held);
 	if (status != STATUS_OK)
 		return reason_give(why, status,
-				   "out of memory: counting the contexts of "
-				   "%zu symbols needs about %zu bytes",
-				   sequence->n, sequence->n * 24);
+				   "out of memory: coding %zu symbols by their "
+				   "contexts needs up to %zu bytes",
+				   n,
+				   n * 12 + GRAM_SLOTS_MAX * 3 / 2 *
+						    sizeof(struct gram_slot));
 	return STATUS_OK;
 }
 
 const struct estimator estimator_dirichlet = {
 	.name = "dirichlet",
-	.summary = "sequential Dirichlet(1/A) code, best of orders 0 to 5",
-	.source = "Krichevsky and Trofimov 1981; Willems, Shtarkov, Tjalkens "
-		  "1995",
+	.summary = "sequential Dirichlet(1/A) code, the best of contexts of 0 "
+		   "to 5 symbols",
+	.source = "Krichevsky, Trofimov 1981; Rissanen 1984",
 	.leans = LEANS_ABOVE,
 	.is_code = true,
-	.work = 0.4,
+	.work = 0.2,
 	.measure = dirichlet_measure,
 };

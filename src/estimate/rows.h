@@ -9,6 +9,7 @@ extern const struct estimator estimator_ngram;
 extern const struct estimator estimator_crossfit;
 extern const struct estimator estimator_match;
 extern const struct estimator estimator_dirichlet;
+extern const struct estimator estimator_ctw;
 extern const struct estimator estimator_mix;
 extern const struct estimator estimator_mix_deep;
 

@@ -4,18 +4,19 @@
 
 #include <string.h>
 
+/* clang-format off */
 const struct estimator *const estimators[] = {
-	/* clang-format off */
 	&estimator_uniform,
 	&estimator_ngram,
 	&estimator_crossfit,
 	&estimator_match,
 	&estimator_dirichlet,
+	&estimator_ctw,
 	&estimator_mix,
 	&estimator_mix_deep,
 	NULL,
-	/* clang-format on */
 };
+/* clang-format on */
 
 const struct estimator *estimator_find(const char *name)
 {

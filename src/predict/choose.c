@@ -12,18 +12,26 @@
 #define SAMPLE_LEAST 6144
 #define SAMPLE_MOST 49152
 
+/* By so much the family of fields must beat the others on samples. */
+#define FIELDS_PERCENT 5
+
 static bool has_stride(enum predict_family family)
 {
-	return family == FAMILY_RECORDS || family == FAMILY_IMAGE;
+	return family == FAMILY_RECORDS || family == FAMILY_FIELDS ||
+	       family == FAMILY_IMAGE;
 }
 
 int64_t plan_charge_q32(const struct predict_plan *plan)
 {
 	uint64_t options = FAMILY_COUNT;
+	int64_t columns = 0;
 
 	if (has_stride(plan->family))
 		options *= STRIDE_MAX;
-	return (int64_t)log2_q32(options);
+	if (plan->family == FAMILY_FIELDS)
+		columns =
+			(int64_t)log2_q32(COLUMN_BASES) * (int64_t)plan->stride;
+	return (int64_t)log2_q32(options) + columns;
 }
 
 /* Share of bytes that text is made of, in percent. */
@@ -60,6 +68,8 @@ try_plan(struct trial *trial, enum predict_family family, unsigned stride)
 	int64_t cost = 0;
 
 	plan.bytes = trial->sample;
+	if (family == FAMILY_FIELDS)
+		fields_choose(&plan, request->bytes, request->count);
 	TRY(predictor_new(&plan, &predictor));
 	for (unsigned i = 1; i < 4; i += 2) {
 		size_t from = room / 4 * i;
@@ -70,6 +80,9 @@ try_plan(struct trial *trial, enum predict_family family, unsigned stride)
 		cost += predictor_measure_q32(predictor, trial->sample);
 	}
 	predictor_free(predictor);
+	/* Samples flatter it: it learns faster, but then contexts catch up. */
+	if (family == FAMILY_FIELDS)
+		cost += cost / 100 * FIELDS_PERCENT;
 	if (cost >= trial->least_q32)
 		return STATUS_OK;
 	trial->least_q32 = cost;
@@ -85,6 +98,8 @@ static MUST_USE enum status try_binary(struct trial *trial)
 
 	TRY(try_plan(trial, FAMILY_BINARY, 1));
 	TRY(try_plan(trial, FAMILY_RECORDS, lag));
+	if (lag <= COLUMNS_MAX)
+		TRY(try_plan(trial, FAMILY_FIELDS, lag));
 	if (lag >= 8)
 		TRY(try_plan(trial, FAMILY_IMAGE, lag));
 	if (record > 1 && record <= STRIDE_MAX && record != lag)

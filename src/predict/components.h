@@ -5,7 +5,7 @@
 #include "predict/parts.h"
 
 /* A trend moves by 1/128 of its error; larger and smaller cost .1%. */
-#define TREND_SHIFT 7
+#define TREND_SHIFT 8
 /* An empty history's trend begins every byte here: it says next to nothing. */
 #define TREND_HALF (1U << (TREND_BITS - 1))
 #define MATCH_LIMIT 1020

@@ -14,6 +14,12 @@ unsigned contexts_binary(const struct past *past, struct view *view);
 unsigned contexts_records(const struct past *past, struct view *view);
 unsigned contexts_image(const struct past *past, struct view *view);
 
+unsigned contexts_fields(const struct past *past, struct view *view);
+
+/* For FAMILY_FIELDS: takes a byte in; the base of the next one. */
+void fields_push(struct past *past, uint8_t byte);
+uint8_t fields_base(const struct past *past);
+
 /* Spreads a context's value; contexts with different ids do not meet. */
 static inline uint32_t context_hash(unsigned id, uint64_t value)
 {

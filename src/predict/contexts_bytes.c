@@ -34,26 +34,29 @@ static unsigned above(const struct past *past, unsigned n)
 
 unsigned contexts_records(const struct past *past, struct view *view)
 {
-	unsigned stride = past->plan.stride;
+	unsigned stride = past->plan.stride, n = 0;
 	uint64_t phase = past->at % stride;
-	uint64_t last = past->last8, last1 = last & 255;
+	uint64_t last1 = past->last8 & 255;
 	uint64_t up = above(past, 1), up2 = above(past, 2);
 	uint64_t up_left = byte_before(past, (size_t)stride + 1);
 	uint64_t risen = (last1 - up_left) & 255;
-	unsigned n = 0;
 
-	for (unsigned order = 1; order <= 4; order++)
-		add(view, &n, last_bytes(past, order));
-	add(view, &n, last_bytes(past, 6));
-	add(view, &n, phase);
-	add(view, &n, phase << 8 | up);
+	view->select[2] = (uint16_t)(phase & 255);
+	add(view, &n, last_bytes(past, 1));
+	add(view, &n, last_bytes(past, 2));
+	add(view, &n, last_bytes(past, 3));
+	add(view, &n, phase << 16 | last_bytes(past, 2));
 	add(view, &n, phase << 16 | up << 8 | up2);
 	add(view, &n, phase << 16 | up << 8 | last1);
-	add(view, &n, phase << 24 | up << 16 | last1 << 8 | up_left);
-	add(view, &n, phase << 16 | up << 8 | risen);
 	add(view, &n, phase << 8 | last1);
-	add(view, &n, phase << 16 | (last & 0xffff));
-	view->select[2] = (uint16_t)(phase & 255);
+	add(view, &n, phase << 24 | up << 16 | last1 << 8 | up_left);
+	if (past->plan.strength == STRENGTH_NIGHTLY)
+		return n;
+	add(view, &n, phase);
+	add(view, &n, phase << 16 | up << 8 | risen);
+	add(view, &n, phase << 8 | up);
+	add(view, &n, last_bytes(past, 4));
+	add(view, &n, last_bytes(past, 6));
 	return n;
 }
 
@@ -68,27 +71,29 @@ unsigned contexts_image(const struct past *past, struct view *view)
 	unsigned k = 0;
 
 	slope = slope < 0 ? 0 : slope > 255 ? 255 : slope;
-	add(view, &k, (uint64_t)(w << 8 | n));
-	add(view, &k, (uint64_t)(w << 8 | nw));
+	view->select[2] = (uint16_t)((slope >> 3) << 3 | (w > n) << 2 |
+				     (n > nw) << 1 | (w > nw));
 	add(view, &k, (uint64_t)(n << 8 | ne));
 	add(view, &k, (uint64_t)(slope << 8 | (w + ne) >> 1));
 	add(view, &k, (uint64_t)(w << 8 | ww));
 	add(view, &k, (uint64_t)(n << 8 | nn));
 	add(view, &k, (uint64_t)slope);
+	add(view, &k,
+	    (uint64_t)((w >> 3) << 20 | (n >> 3) << 15 | (nw >> 3) << 10 |
+		       (ww >> 3) << 5 | nn >> 3));
+	add(view, &k, (uint64_t)(2 * w - ww + 512));
+	add(view, &k, (uint64_t)(2 * n - nn + 512) << 8 | (uint64_t)w >> 2);
+	if (past->plan.strength == STRENGTH_NIGHTLY)
+		return k;
+	add(view, &k, (uint64_t)(w << 8 | n));
+	add(view, &k, (uint64_t)(w << 8 | nw));
 	add(view, &k, (uint64_t)((w + n) >> 1) << 16 | column);
 	add(view, &k,
 	    (uint64_t)((w >> 2) << 18 | (n >> 2) << 12 | (nw >> 2) << 6 |
 		       ne >> 2));
 	add(view, &k,
-	    (uint64_t)((w >> 3) << 20 | (n >> 3) << 15 | (nw >> 3) << 10 |
-		       (ww >> 3) << 5 | nn >> 3));
-	add(view, &k,
 	    (uint64_t)((w + n + nw + ne) >> 2) << 8 |
-		    (uint64_t)(w - nw + n - ne) >> 2);
-	add(view, &k, (uint64_t)(2 * w - ww + 512));
-	add(view, &k, (uint64_t)(2 * n - nn + 512) << 8 | (uint64_t)w >> 2);
-	view->select[2] = (uint16_t)((slope >> 3) << 3 | (w > n) << 2 |
-				     (n > nw) << 1 | (w > nw));
+		    (uint64_t)((w - nw + n - ne + 1024) >> 2));
 	return k;
 }
 
@@ -105,6 +110,9 @@ void contexts_look(const struct past *past, struct view *view)
 		break;
 	case FAMILY_RECORDS:
 		n = contexts_records(past, view);
+		break;
+	case FAMILY_FIELDS:
+		n = contexts_fields(past, view);
 		break;
 	case FAMILY_IMAGE:
 		n = contexts_image(past, view);

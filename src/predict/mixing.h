@@ -77,11 +77,22 @@ ALWAYS_INLINE void set_update(struct mixer *mixer, struct mixing *mixing,
 	lanes_train(mixing->inputs, mixing->weights[i], inputs, (int16_t)step);
 }
 
+/* By the match (none, short, long, doubtful), contexts seen, and bit. */
+ALWAYS_INLINE unsigned match_row(const struct selection *at)
+{
+	unsigned kind = at->step == 0 ? 0 : at->step < 16 ? 1 : 2;
+
+	kind += at->step > 27 ? 1 : 0;
+
+	return (kind * 16 + at->view->hits) * 4 + (at->bit >> 1);
+}
+
 ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
 				   const struct selection *at,
 				   struct mixing *mixing, unsigned inputs)
 {
-	unsigned match = at->step * 8 + at->bit;
+	unsigned match = match_row(at);
+	unsigned row0 = (at->view->last * 256U + at->partial) % STAGE_ROWS;
 	unsigned row =
 		(at->view->hash[1] >> 16 ^ at->partial * 0x9e35u) & 0x3fff;
 	int64_t sum;
@@ -93,7 +104,7 @@ ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
 	sum += set_predict(mixer, mixing, 2, at->view->select[2], inputs);
 	mixing->x = logit_clip((int32_t)(sum >> 16));
 	mixing->p_final = mixer->tables.squash[mixing->x + LOGIT_MAX];
-	stage_predict(mixer, mixing, 0, at->partial, &p0);
+	stage_predict(mixer, mixing, 0, row0, &p0);
 	stage_predict(mixer, mixing, 1, row, &p1);
 	p = (mixing->p_final + p0 + 2 * p1 + 2) >> 2;
 	return p < 1 ? 1 : p > 65535 ? 65535 : p;
@@ -108,8 +119,8 @@ ALWAYS_INLINE void mix_update(struct mixer *mixer, struct mixing *mixing,
 	stage_update(mixing, 0, bit);
 	stage_update(mixing, 1, bit);
 	if (mixer->seen < LEARNING_END && mixer->seen++ % 64 == 0)
-		mixer->rate = RATE_LAST + (int32_t)(RATE_MORE * 2048 /
-						    (2048 + mixer->seen));
+		mixer->rate = RATE_LAST + (int32_t)(RATE_MORE * 16384 /
+						    (16384 + mixer->seen));
 }
 
 /* All eight bits of a byte, given the inputs of each. */

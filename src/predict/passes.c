@@ -12,7 +12,7 @@
 
 /* A chunk under way. */
 struct chunk {
-	const uint8_t *bytes;
+	uint8_t bytes[CHUNK]; /* less their bases */
 	size_t count;
 	struct view *views;
 	uint8_t active[CHUNK]; /* bytes that are coded bit by bit */
@@ -39,7 +39,8 @@ static void look_ahead(struct predictor *p, size_t from, size_t end,
 		past_look(past, view);
 		if (i + WARM < end)
 			past_warm(past, bytes, i + WARM);
-		if (view->lane && view->expected[0] == bytes[i])
+		if (view->lane &&
+		    view->expected[0] == (uint8_t)(bytes[i] - view->base))
 			continue;
 		for (unsigned k = 0; k < p->contexts; k++)
 			__builtin_prefetch(
@@ -129,7 +130,8 @@ ALWAYS_INLINE void run_duo(struct predictor *p, const struct chunk *chunk,
 
 	for (size_t i = 0; i < actives; i++) {
 		unsigned at = chunk->active[i], byte = chunk->bytes[at];
-		const uint32_t *hash = &chunk->views[at].hash[k];
+		struct view *view = &chunk->views[at];
+		const uint32_t *hash = &view->hash[k];
 		struct place a, b;
 
 		duo.trend_a[0] = duo.trend_b[0] = TREND_HALF;
@@ -137,6 +139,8 @@ ALWAYS_INLINE void run_duo(struct predictor *p, const struct chunk *chunk,
 		place_begin(&b, lines_b, lines_log2, hash[1]);
 		duo.a = a.slot;
 		duo.b = b.slot;
+		view->hits = (uint8_t)(view->hits + (a.slot[1] != 0) +
+				       (b.slot[1] != 0));
 		run_nibble(tables, &duo, byte >> 4, inputs, width);
 		inputs += 4 * width;
 		place_middle(&a, byte >> 4);
@@ -264,10 +268,13 @@ int64_t predictor_measure_q32(struct predictor *p, size_t count)
 		return 0;
 	look_ahead(p, from, end, p->views);
 	for (size_t at = from; at < end; at += CHUNK) {
-		struct chunk chunk = {.bytes = p->past.bytes + at};
+		struct chunk chunk;
 
 		chunk.count = end - at < CHUNK ? end - at : CHUNK;
 		chunk.views = p->views + turn * CHUNK;
+		for (size_t i = 0; i < chunk.count; i++)
+			chunk.bytes[i] = (uint8_t)(p->past.bytes[at + i] -
+						   chunk.views[i].base);
 		turn ^= 1;
 		if (at + CHUNK < end)
 			look_ahead(p, at + CHUNK, end, p->views + turn * CHUNK);

@@ -196,8 +196,11 @@ static void push_line(struct past *past, unsigned c)
 
 void past_push(struct past *past)
 {
-	unsigned c = past->bytes[past->at++];
+	unsigned c = past->bytes[past->at];
 
+	if (past->plan.family == FAMILY_FIELDS)
+		fields_push(past, (uint8_t)c);
+	past->at++;
 	past->before8 = past->before8 << 8 | past->last8 >> 56;
 	past->last8 = past->last8 << 8 | c;
 	if (past->plan.family <= FAMILY_BINARY)
@@ -213,10 +216,14 @@ void past_look(const struct past *past, struct view *view)
 {
 	const struct match *match = past->match;
 
+	view->base = past->plan.family == FAMILY_FIELDS ? fields_base(past) : 0;
 	for (unsigned i = 0; i < 2; i++) {
+		uint8_t next = match[i].at ? past->bytes[match[i].at] : 0;
+
 		view->match_step[i] = match_step(&match[i]);
-		view->expected[i] = match[i].at ? past->bytes[match[i].at] : 0;
+		view->expected[i] = (uint8_t)(next - view->base);
 	}
+	view->hits = 0;
 	view->last = (uint8_t)past->last8;
 	view->lane = match[0].at && match[0].length >= LANE_LENGTH;
 	contexts_look(past, view);
@@ -234,8 +241,14 @@ void past_warm(const struct past *past, const uint8_t *bytes, size_t position)
 	__builtin_prefetch(&match->table[match_entry(match, last8)], 1);
 }
 
+/* More where each tells something new; even numbers, taken two by two. */
 unsigned past_contexts(const struct predict_plan *plan)
 {
-	return plan->strength == STRENGTH_DEEP ? CONTEXTS_NIGHTLY + 2
-					       : CONTEXTS_NIGHTLY;
+	static const unsigned nightly[FAMILY_COUNT] = {
+		[FAMILY_PROSE] = 12,  [FAMILY_LINES] = 12, [FAMILY_BINARY] = 10,
+		[FAMILY_RECORDS] = 8, [FAMILY_FIELDS] = 8, [FAMILY_IMAGE] = 8,
+	};
+
+	return plan->strength == STRENGTH_DEEP ? CONTEXTS_DEEP
+					       : nightly[plan->family];
 }

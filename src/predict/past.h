@@ -6,7 +6,7 @@
 
 #include "base/status.h"
 
-#define CONTEXTS_NIGHTLY 12
+#define CONTEXTS_DEEP 14
 #define CONTEXTS_MAX 30
 #define FIELDS_MAX 32
 #define SELECTORS 3
@@ -20,10 +20,13 @@
 /* Everything the predictor asks of the past before a byte. */
 struct view {
 	uint32_t hash[CONTEXTS_MAX];
-	uint8_t expected[2];   /* the bytes that two matches go on with */
+	/* What is coded is the byte less this; so are those expected. */
+	uint8_t base;
+	uint8_t expected[2];   /* what two matches go on with */
 	uint8_t match_step[2]; /* 0: there is no match */
-	uint8_t last;          /* the byte before */
-	bool lane; /* code whether expected[0] comes, before its bits */
+	uint8_t hits; /* contexts seen before; counted as they are looked up */
+	uint8_t last; /* the byte before */
+	bool lane;    /* code whether expected[0] comes, before its bits */
 	uint16_t select[SELECTORS]; /* weight sets, each below 256 */
 };
 
@@ -36,6 +39,9 @@ struct match {
 	uint32_t length; /* bytes that agreed */
 	uint32_t misses; /* since the match was found */
 };
+
+/* Rests of the last records: bytes less their bases. */
+#define RESTS 256
 
 struct past {
 	struct predict_plan plan;
@@ -50,6 +56,8 @@ struct past {
 	size_t field_start[2][FIELDS_MAX + 1];
 	unsigned fields[2]; /* begun in this line, and in that before */
 	uint32_t field_hash, field_hash1;
+	uint8_t rest[RESTS]; /* by position modulo RESTS */
+	int carry;           /* into the next byte: -1, 0, 1 */
 	struct match match[2];
 };
 

@@ -14,6 +14,7 @@ enum predict_family {
 	FAMILY_LINES,   /* text of lines and fields */
 	FAMILY_BINARY,  /* code, tables, mixed content */
 	FAMILY_RECORDS, /* fixed stride */
+	FAMILY_FIELDS,  /* records of numbers, coded as differences */
 	FAMILY_IMAGE,   /* bytes in rows of stride */
 	FAMILY_BASES,   /* nucleotides, one letter a byte */
 	FAMILY_FLAT,    /* nothing to learn: every byte costs 8 bits */
@@ -24,11 +25,22 @@ enum predict_strength { STRENGTH_NIGHTLY, STRENGTH_DEEP };
 
 #define STRIDE_MAX 4096
 
+/* What a column of FAMILY_FIELDS is coded less. */
+enum column_base {
+	COLUMN_PLAIN, /* nothing */
+	COLUMN_ABOVE, /* the byte in the record before */
+	COLUMN_CARRY, /* that and the carry of the byte to the left */
+	COLUMN_BASES
+};
+
+#define COLUMNS_MAX 64
+
 struct predict_plan {
 	enum predict_strength strength;
 	enum predict_family family;
 	unsigned stride; /* 1..STRIDE_MAX; 1 where the family has none */
-	size_t bytes;    /* length of what is predicted: sizes the tables */
+	uint8_t column[COLUMNS_MAX]; /* of FAMILY_FIELDS: enum column_base */
+	size_t bytes; /* length of what is predicted: sizes the tables */
 };
 
 /* Bits that tell a decoder family and stride, in Q32. */
@@ -49,6 +61,10 @@ struct plan_request {
 };
 MUST_USE enum status plan_choose(const struct plan_request *request,
 				 struct predict_plan *plan);
+
+/* Sets the columns of a plan of FAMILY_FIELDS from the bytes (fields.c). */
+void fields_choose(struct predict_plan *plan, const uint8_t *bytes,
+		   size_t count);
 
 /* The lag of 2..most at which bytes most often equal each other (lags.c). */
 unsigned lag_find(const uint8_t *bytes, size_t count, unsigned most);

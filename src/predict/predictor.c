@@ -14,7 +14,7 @@ static unsigned lines_log2_for(const struct predict_plan *plan)
 {
 	unsigned most = plan->strength == STRENGTH_DEEP ? 19 : 18, log2 = 8;
 
-	while (log2 < most && ((size_t)4 << log2) < plan->bytes)
+	while (log2 < most && ((size_t)2 << log2) < plan->bytes)
 		log2++;
 	return log2;
 }
@@ -153,6 +153,9 @@ static void gather(struct predictor *p)
 		if (p->bit == 0)
 			place_begin(place, context_lines(p, i), p->lines_log2,
 				    p->view.hash[i]);
+		if (p->bit == 0)
+			p->view.hits =
+				(uint8_t)(p->view.hits + (place->slot[1] != 0));
 		if (p->bit == 4)
 			place_middle(place, p->partial & 15);
 		trend = p->trend[i]
@@ -187,6 +190,7 @@ unsigned predictor_decision(const struct predictor *p, uint8_t byte)
 {
 	if (p->bases)
 		return bases_decision(p->bases, byte);
+	byte = (uint8_t)(byte - p->view.base);
 	if (p->plan.family != FAMILY_FLAT && p->in_lane)
 		return byte == p->view.expected[0];
 	return byte >> (7 - p->bit) & 1;
@@ -194,6 +198,7 @@ unsigned predictor_decision(const struct predictor *p, uint8_t byte)
 
 static bool complete(struct predictor *p, uint8_t value, uint8_t *byte)
 {
+	value = (uint8_t)(value + p->view.base);
 	p->begun = false;
 	p->pending = true;
 	p->bit = 0;

@@ -159,5 +159,7 @@ json_t *json_corpus(const struct corpus_view *view)
 	json_put(&made, "bracket", bracket_object(&view->bracket));
 	put_cells(&made, view);
 	put_more(&made, view);
+	json_put(&made, "extrapolation",
+		 extrapolation_object(&view->extrapolation));
 	return json_done(&made);
 }

@@ -18,7 +18,7 @@ struct names {
 
 struct selection {
 	struct names corpora, estimators, codecs, levels;
-	bool deep; /* the deep rows of table 1 too */
+	bool deep;            /* the deep rows of table 1 too */
 	unsigned part, parts; /* this part, from 1, of so many; 1 of 1: all */
 };
 

@@ -1,6 +1,6 @@
 /* Controls: sources so plain that their rate needs no trust. */
 #include "source/bytestream.h"
-#include "source/fields.h"
+#include "source/record_fields.h"
 #include "source/source_rows.h"
 #include "source/weights.h"
 

@@ -1,6 +1,6 @@
 /* Gauge frames of Marrow Bay: packed records as telemetry links carry them. */
 #include "source/bytestream.h"
-#include "source/fields.h"
+#include "source/record_fields.h"
 #include "source/source_rows.h"
 #include "source/walk.h"
 

@@ -1,187 +1,181 @@
-/* Does the cross-fit lean above the truth, and by as little as was promised? */
+/* Does cross-fitting lean above the true rate, and by as much as measured? */
+#include "support/coded.h"
+
 #include "base/random.h"
-#include "estimate/estimator.h"
-#include "suffix/suffix.h"
-#include "support/grams.h"
+#include "base/sum.h"
 #include "support/near.h"
 
 #include <math.h>
 #include <stdlib.h>
-#include <string.h>
 
-/* Bits a symbol at one order. */
-static double fitted(const uint8_t *codes, size_t n, uint64_t alphabet,
-		     unsigned order)
+#define LETTERS 256
+#define STATES 256
+#define NEXT 16
+
+/* Draws by cumulative weights, and adds -log2 of what was drawn to *bits. */
+static unsigned draw(struct random_stream *random, const double *cumulative,
+		     unsigned count, double *bits)
 {
-	const struct cuts none = {0};
-	struct sequence sequence = grams_sequence(codes, n, 1);
-	struct suffix suffix;
-	struct estimate_input input = {.sequence = &sequence,
-				       .cuts = &none,
-				       .suffix = &suffix,
-				       .orders = order,
-				       .threads = 1};
-	struct findings findings;
-	double bits;
+	double at = random_unit(random) * cumulative[count - 1];
+	unsigned low = 0, high = count - 1;
 
-	sequence.alphabet = alphabet;
-	assert_int_equal(suffix_init(&suffix, &sequence, order, NULL),
-			 STATUS_OK);
-	assert_int_equal(
-		estimator_find("crossfit")->measure(&input, &findings, NULL),
-		STATUS_OK);
-	assert_int_equal(findings.series_count, order);
-	bits = bits_from_q16(findings.series[order - 1].costs.headline_q16) /
-	       (double)n;
-	findings_release(&findings);
-	suffix_release(&suffix);
-	return bits;
-}
+	while (low < high) {
+		unsigned middle = (low + high) / 2;
 
-static uint8_t draw(const double *shares, size_t count,
-		    struct random_stream *random)
-{
-	double at = random_unit(random);
-	size_t i = 0;
-
-	while (i + 1 < count && at >= shares[i])
-		at -= shares[i++];
-	return (uint8_t)i;
-}
-
-static double entropy(const double *shares, size_t count)
-{
-	double bits = 0;
-
-	for (size_t i = 0; i < count; i++)
-		if (shares[i] > 0)
-			bits -= shares[i] * log2(shares[i]);
-	return bits;
-}
-
-static void scale(double *shares, size_t count)
-{
-	double sum = 0;
-
-	for (size_t i = 0; i < count; i++)
-		sum += shares[i];
-	for (size_t i = 0; i < count; i++)
-		shares[i] /= sum;
+		if (cumulative[middle] > at)
+			high = middle;
+		else
+			low = middle + 1;
+	}
+	*bits -= log2((cumulative[low] - (low ? cumulative[low - 1] : 0)) /
+		      cumulative[count - 1]);
+	return low;
 }
 
 /*
- * Independent bytes, byte i as frequent as 1 / (i + 1): the exact entropy is
- * that of the shares. The excess is about (m - 1) / (2 n ln 2), doubled or so
- * by the held-out loss: some .5% of the rate at 1e4 symbols.
+ * Excess of the order over the bits that the source itself gives the same
+ * symbols, in per cent: the same mean as over the rate, with less scatter.
  */
-static void test_independent_bytes(void **state)
-{
-	size_t n = 10000, replicates = 20;
-	uint8_t *codes = malloc(n);
-	double shares[256], excess = 0, rate;
-	struct random_stream random;
-
-	(void)state;
-	random_init(&random, 77, 0);
-	for (size_t i = 0; i < 256; i++)
-		shares[i] = 1 / (double)(i + 1);
-	scale(shares, 256);
-	rate = entropy(shares, 256);
-	for (size_t i = 0; i < replicates; i++) {
-		for (size_t t = 0; t < n; t++)
-			codes[t] = draw(shares, 256, &random);
-		excess += fitted(codes, n, 256, 1) / rate - 1;
-	}
-	excess /= (double)replicates;
-	assert_true(excess > 0);
-	assert_true(excess < 0.01);
-	free(codes);
-}
-
-#define LETTERS 16
-#define STATES (LETTERS * LETTERS)
-
-/* Order 2 over 16 symbols, rows of a few likely successors. */
-struct chain {
-	double row[STATES][LETTERS];
+struct excess {
+	struct sum percent, squares;
+	unsigned count;
 };
 
-static void chain_init(struct chain *chain, struct random_stream *random)
+static double mean_of(const struct excess *excess)
 {
-	for (size_t s = 0; s < STATES; s++) {
-		for (size_t x = 0; x < LETTERS; x++) {
-			double unit = random_unit(random);
-
-			chain->row[s][x] =
-				random_below(random, 4) ? 0.01 : unit + 0.1;
-		}
-		scale(chain->row[s], LETTERS);
-	}
+	return sum_value(&excess->percent) / excess->count;
 }
 
-/* The stationary mean of the rows' entropies, by iterating the chain. */
-static double chain_rate(const struct chain *chain)
+static double error_of(const struct excess *excess)
 {
-	double now[STATES], next[STATES], rate = 0;
+	double mean = mean_of(excess);
 
-	for (size_t s = 0; s < STATES; s++)
-		now[s] = 1.0 / STATES;
-	for (unsigned i = 0; i < 2000; i++) {
-		memset(next, 0, sizeof(next));
-		for (size_t s = 0; s < STATES; s++)
-			for (size_t x = 0; x < LETTERS; x++)
-				next[s % LETTERS * LETTERS + x] +=
-					now[s] * chain->row[s][x];
-		memcpy(now, next, sizeof(now));
-	}
-	for (size_t s = 0; s < STATES; s++)
-		rate += now[s] * entropy(chain->row[s], LETTERS);
-	return rate;
+	return sqrt(
+		(sum_value(&excess->squares) / excess->count - mean * mean) /
+		(excess->count - 1));
 }
 
-static double chain_excess(const struct chain *chain, size_t n,
-			   struct random_stream *random)
+static void add(struct excess *excess, const uint8_t *codes, size_t n,
+		unsigned order, double own_bits)
 {
-	uint8_t *codes = malloc(n);
-	size_t at = 0;
-	double bits;
+	struct sequence sequence = coded_sequence(codes, n, LETTERS);
+	struct findings findings = coded_findings(
+		(struct coded_run){.row = "crossfit", .orders = order},
+		&sequence);
+	double percent =
+		100 *
+		(bits_from_q16(findings.series[order - 1].costs.headline_q16) /
+			 own_bits -
+		 1);
 
-	for (size_t t = 0; t < n; t++) {
-		codes[t] = draw(chain->row[at], LETTERS, random);
-		at = at % LETTERS * LETTERS + codes[t];
+	assert_int_equal(findings.series_count, order);
+	sum_add(&excess->percent, percent);
+	sum_add(&excess->squares, percent * percent);
+	excess->count++;
+	findings_release(&findings);
+}
+
+/* Independent bytes, the i-th as likely as 1 / i. */
+static struct excess zipf(size_t n, unsigned rounds)
+{
+	struct excess excess = {.count = 0};
+	uint8_t *codes = calloc(n, 1);
+	double cumulative[LETTERS], sum = 0;
+	struct random_stream random;
+
+	for (unsigned i = 0; i < LETTERS; i++)
+		cumulative[i] = sum += 1 / (i + 1.0);
+	random_init(&random, n, 1);
+	for (unsigned round = 0; round < rounds; round++) {
+		double bits = 0;
+
+		for (size_t t = 0; t < n; t++)
+			codes[t] = (uint8_t)draw(&random, cumulative, LETTERS,
+						 &bits);
+		add(&excess, codes, n, 1, bits);
 	}
-	bits = fitted(codes, n, LETTERS, 3);
 	free(codes);
-	return bits / chain_rate(chain) - 1;
+	return excess;
+}
+
+/* Sparse rows: few successors of each pair are at all likely. */
+static void fill_rows(double rows[STATES][NEXT])
+{
+	struct random_stream random;
+
+	random_init(&random, 77, 2);
+	for (unsigned s = 0; s < STATES; s++) {
+		double sum = 0;
+
+		for (unsigned x = 0; x < NEXT; x++) {
+			double weight = -log(1 - random_unit(&random));
+
+			rows[s][x] = sum += weight * weight * weight + 1e-9;
+		}
+	}
+}
+
+/* Order 2 over 16 symbols. */
+static struct excess pairs(size_t n, unsigned rounds)
+{
+	static double rows[STATES][NEXT];
+	struct excess excess = {.count = 0};
+	uint8_t *codes = calloc(n, 1);
+	struct random_stream random;
+
+	fill_rows(rows);
+	random_init(&random, n, 3);
+	for (unsigned round = 0; round < rounds; round++) {
+		double bits = 0;
+		unsigned state = 0;
+
+		for (size_t t = 0; t < n; t++) {
+			codes[t] = (uint8_t)draw(&random, rows[state], NEXT,
+						 &bits);
+			state = (state * NEXT + codes[t]) % STATES;
+		}
+		add(&excess, codes, n, 3, bits);
+	}
+	free(codes);
+	return excess;
 }
 
 /*
- * At the right order, above the rate, and less so with more data: the excess
- * shrinks about as 1 / n.
+ * Measured on 60 to 300 replicates by another program: + .36 % at 1e4 and
+ * + .03 % at 1e5 symbols for a Zipf-like source of 256 letters. In theory
+ * (m - 1) / (2 (7/8) n ln 2) bits are lost on estimating m shares from 7/8.
  */
-static void test_markov_chain(void **state)
+static void bytes_after_zipf(void **state)
 {
-	struct random_stream random;
-	struct chain chain;
-	double small = 0, large;
+	struct excess short_run = zipf(10000, 60), long_run = zipf(100000, 12);
 
 	(void)state;
-	random_init(&random, 1948, 0);
-	chain_init(&chain, &random);
-	for (unsigned i = 0; i < 5; i++)
-		small += chain_excess(&chain, 10000, &random) / 5;
-	large = chain_excess(&chain, 200000, &random);
-	assert_true(small > 0.02);
-	assert_true(small < 0.2);
-	assert_true(large > 0);
-	assert_true(large < small / 6);
+	assert_near(mean_of(&short_run), .36, .05 + 3 * error_of(&short_run));
+	assert_near(mean_of(&long_run), .03, .01 + 3 * error_of(&long_run));
+	assert_true(mean_of(&long_run) > 3 * error_of(&long_run));
+}
+
+/*
+ * Likewise + 10.4 %, + 1.1 % and + .11 % at 1e4, 1e5 and 1e6 symbols on sparse
+ * rows of another draw: the law 1 / n holds for any, the height within a factor
+ * of 2.
+ */
+static void pairs_of_sixteen(void **state)
+{
+	struct excess e4 = pairs(10000, 20), e5 = pairs(100000, 10),
+		      e6 = pairs(1000000, 2);
+
+	(void)state;
+	assert_true(mean_of(&e4) > 5.2 && mean_of(&e4) < 20.8);
+	assert_true(mean_of(&e5) > .55 && mean_of(&e5) < 2.2);
+	assert_true(mean_of(&e6) > .055 && mean_of(&e6) < .22);
 }
 
 int main(void)
 {
 	const struct CMUnitTest tests[] = {
-		cmocka_unit_test(test_independent_bytes),
-		cmocka_unit_test(test_markov_chain),
+		cmocka_unit_test(bytes_after_zipf),
+		cmocka_unit_test(pairs_of_sixteen),
 	};
 
 	return cmocka_run_group_tests(tests, NULL, NULL);

@@ -1,5 +1,5 @@
 /* Are the rates of the source table those of the published formulas? */
-#include "source/fields.h"
+#include "source/record_fields.h"
 #include "source/source.h"
 
 #include "support/near.h"

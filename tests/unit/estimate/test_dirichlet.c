@@ -1,322 +1,257 @@
-/* Is the Dirichlet row the best of its codes, by block and by page? */
-#include "estimate/dirichlet_code.h"
+/* Is the Dirichlet code the one that counting by hand gives? */
+#include "support/coded.h"
 
-#include "base/memory.h"
 #include "base/random.h"
-#include "estimate/estimator.h"
-#include "estimate/quick_log.h"
 #include "support/grams.h"
 #include "support/near.h"
 #include "support/symbols_of.h"
 
 #include <math.h>
-#include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
 
-static int64_t note(const struct findings *findings, const char *key)
+/* Does the gram of so many symbols that ends at t also end at u? */
+static bool same(const struct sequence *sequence, size_t t, size_t u,
+		 unsigned symbols)
 {
-	int64_t value = -1;
+	size_t width = sequence->code_width;
 
-	assert_true(findings_find(findings, key, &value));
-	return value;
+	return memcmp(sequence->codes + (t + 1 - symbols) * width,
+		      sequence->codes + (u + 1 - symbols) * width,
+		      symbols * width) == 0;
 }
 
-static struct findings measure(const struct sequence *sequence,
-			       const struct cuts *cuts, size_t page_bytes)
-{
-	const struct cuts none = {0};
-	struct estimate_input input = {.sequence = sequence,
-				       .cuts = cuts ? cuts : &none,
-				       .orders = 1,
-				       .page_bytes = page_bytes,
-				       .threads = 1};
-	struct findings findings;
-
-	assert_int_equal(
-		estimator_find("dirichlet")->measure(&input, &findings, NULL),
-		STATUS_OK);
-	return findings;
-}
-
-/* Bits of symbols begin … end-1 by the definition, counting all the past. */
-static double bits_by_definition(const struct sequence *sequence, size_t begin,
-				 size_t end, unsigned order, double alphabet)
+/* -log2 of the product of (A c(sx) + 1) / (A c(s) + A), counted from begin. */
+static double by_hand(const struct sequence *sequence, size_t begin, size_t end,
+		      unsigned k, double alphabet)
 {
 	double bits = 0;
 
 	for (size_t t = begin; t < end; t++) {
-		double context = 0, both = 0;
+		double s = 0, sx = 0;
 
-		for (size_t u = begin + order; u < t; u++) {
-			unsigned j = 1;
-
-			while (j <= order && t >= begin + order &&
-			       code_of(sequence, u - j) ==
-				       code_of(sequence, t - j))
-				j++;
-			if (j <= order)
-				continue;
-			context++;
-			both += code_of(sequence, u) == code_of(sequence, t);
+		for (size_t u = begin + k; t >= begin + k && u < t; u++) {
+			s += k == 0 || same(sequence, t - 1, u - 1, k);
+			sx += same(sequence, t, u, k + 1);
 		}
-		bits -= log2((alphabet * both + 1) /
-			     (alphabet * context + alphabet));
+		bits += log2((alphabet * s + alphabet) / (alphabet * sx + 1));
 	}
 	return bits;
 }
 
-/* log2 of the number of subsets of that size, and of the possible sizes. */
-static double subset_bits(double alphabet, double seen)
+static void fill(uint8_t *codes, size_t n, unsigned letters, uint64_t seed)
 {
-	double bits = log2(alphabet);
+	struct random_stream random;
 
-	for (double i = 0; i < seen; i++)
-		bits += log2((alphabet - i) / (seen - i));
-	return bits;
+	random_init(&random, seed, 0);
+	for (size_t i = 0; i < n; i++)
+		codes[i] = (uint8_t)(i && random_below(&random, 3)
+					     ? codes[i / 2]
+					     : random_below(&random, letters));
 }
 
-static double bits_of_pages(const struct sequence *sequence, size_t page,
-			    unsigned order, double alphabet)
+static void every_order_and_page(void **state)
 {
-	double bits = 0;
-	size_t end;
+	uint8_t codes[600];
 
-	for (size_t t = 0; t < sequence->n; t = end) {
-		size_t number = page ? sequence_byte_of(sequence, t) / page : 0;
+	(void)state;
+	for (unsigned round = 0; round < 18; round++) {
+		size_t n = 1 + round * 35, page = round % 3 ? round * 7 : 0;
+		struct sequence sequence;
 
-		for (end = t + 1; end < sequence->n; end++)
-			if (page &&
-			    sequence_byte_of(sequence, end) / page != number)
-				break;
-		bits += bits_by_definition(sequence, t, end, order, alphabet);
+		fill(codes, n, 2 + round % 5, round);
+		sequence = coded_sequence(codes, n, 300);
+		for (unsigned k = 0; k < DIRICHLET_ORDERS; k++) {
+			double kind = 0, seen = 0;
+
+			for (size_t at = 0, end; at < n; at = end) {
+				end = page && at + page < n ? at + page : n;
+				kind += by_hand(&sequence, at, end, k, 300);
+				seen += by_hand(&sequence, at, end, k,
+						sequence.distinct);
+			}
+			assert_near(coded_dirichlet(&sequence, page, k,
+						    ALPHABET_OF_KIND),
+				    kind, 1e-6);
+			assert_near(coded_dirichlet(&sequence, page, k,
+						    ALPHABET_SEEN),
+				    seen, 1e-6);
+		}
 	}
-	return bits;
 }
 
-static void check_by_definition(const struct sequence *sequence, size_t page)
+/* Every kind, whatever the width of its codes; a page of 10 bytes holds the
+ * symbols that begin in it. */
+static void kinds_and_their_pages(void **state)
 {
-	struct findings findings = measure(sequence, NULL, page);
-	double all = (double)sequence->alphabet, best = HUGE_VAL;
-	double seen = (double)sequence->distinct;
-	unsigned chosen = 0;
+	const uint8_t text[] = "ACGTTGCAACGTTACGTTGCATTTACGTACGATTACAGATTACAAC";
+	const struct slice bytes = {text, 44};
+	static const size_t symbol_bits[] = {8, 1, 16, 16, 32, 8};
 
+	(void)state;
+	for (int kind = SYMBOL_BYTE; kind <= SYMBOL_NUCLEOTIDE; kind++) {
+		struct sequence sequence =
+			sequence_of(bytes, (enum symbol_kind)kind);
+		double wanted = 0, all = (double)sequence.alphabet;
+
+		for (size_t at = 0, page = 1, end; at < sequence.n;
+		     at = end, page++) {
+			end = (page * 80 + symbol_bits[kind] - 1) /
+			      symbol_bits[kind];
+			end = end < sequence.n ? end : sequence.n;
+			wanted += by_hand(&sequence, at, end, 1, all);
+		}
+		assert_near(coded_dirichlet(&sequence, 10, 1, ALPHABET_OF_KIND),
+			    wanted, 1e-6);
+		sequence_release(&sequence);
+	}
+}
+
+/* The row is the least of all ways, plus what it costs to name the way. */
+static void the_row_takes_the_best(void **state)
+{
+	const double name = log2(12), half = 0x1p-15;
+	uint8_t codes[9000];
+	struct sequence sequence = {.n = 0};
+	struct findings findings;
+	double best = HUGE_VAL, subset = 8;
+	unsigned order = 9;
+
+	(void)state;
+	grams_pseudo_text(codes, sizeof(codes), 5);
+	sequence = coded_sequence(codes, sizeof(codes), 256);
+	for (unsigned i = 0; i < sequence.distinct; i++)
+		subset += log2((256.0 - i) / (i + 1.0));
+	findings = coded_findings((struct coded_run){.row = "dirichlet"},
+				  &sequence);
 	for (unsigned k = 0; k < DIRICHLET_ORDERS; k++) {
-		double wide = bits_of_pages(sequence, page, k, all);
-		double narrow = bits_of_pages(sequence, page, k, seen) +
-				subset_bits(all, seen);
-		double less = fmin(wide, narrow);
-		char key[24];
+		double kind =
+			coded_dirichlet(&sequence, 0, k, ALPHABET_OF_KIND);
+		double seen = subset +
+			      coded_dirichlet(&sequence, 0, k, ALPHABET_SEEN);
+		double less = fmin(kind, seen) + name;
+		char key[] = "order0_q16";
+		int64_t note;
 
-		snprintf(key, sizeof(key), "order%u_q16", k);
-		assert_near(bits_from_q16(note(&findings, key)), less, 2e-5);
-		if (less < best) {
-			best = less;
-			chosen = k;
-		}
+		key[5] = (char)('0' + k);
+		assert_true(findings_find(&findings, key, &note));
+		assert_near(bits_from_q16(note), less, 3 * half);
+		if (less < best)
+			order = k;
+		best = fmin(best, less);
 	}
 	assert_int_equal(findings.series_count, 1);
-	assert_int_equal(findings.series[0].order, chosen);
-	assert_near(bits_from_q16(findings.series[0].costs.headline_q16),
-		    best + log2(12), 4e-5);
-	assert_null(findings.series[0].costs.block_q16);
+	assert_int_equal(findings.series[0].order, order);
+	assert_near(bits_from_q16(findings.series[0].costs.headline_q16), best,
+		    3 * half);
 	findings_release(&findings);
 }
 
-static void test_definition(void **state)
+/* Blocks add up exactly, and each is the code's own bits of its symbols. */
+static void blocks_of_the_row(void **state)
 {
-	uint8_t text[700], wide[600];
-	struct sequence sequence;
+	uint8_t codes[7000];
+	struct sequence sequence, first;
+	struct findings whole, parts;
+	struct cuts cuts = grams_cuts(sizeof(codes), 7);
+	int64_t charge, alphabet;
 
 	(void)state;
-	grams_pseudo_text(text, sizeof(text), 3);
-	sequence = sequence_of((struct slice){text, sizeof(text)}, SYMBOL_BYTE);
-	check_by_definition(&sequence, 0);
-	check_by_definition(&sequence, 90);
-	check_by_definition(&sequence, 1);
-	sequence_release(&sequence);
-	/* few symbols, far apart in a large alphabet */
-	for (size_t i = 0; i < sizeof(wide); i++)
-		wide[i] = (uint8_t)(i % 4 == 3 ? 200 : text[i / 4] % 5);
-	sequence =
-		sequence_of((struct slice){wide, sizeof(wide)}, SYMBOL_U32LE);
-	check_by_definition(&sequence, 0);
-	check_by_definition(&sequence, 250);
-	sequence_release(&sequence);
-	sequence = sequence_of((struct slice){text, 60}, SYMBOL_BIT);
-	check_by_definition(&sequence, 0);
-	check_by_definition(&sequence, 7);
-	sequence_release(&sequence);
-}
-
-static void test_pages_of_code_points(void **state)
-{
-	static const char text[] =
-		"T\xc3\xa9l\xc3\xa9m\xc3\xa9trie: 3\xe2\x82\xac, \xf0\x9f\x8c"
-		"\x8a \xf0\x9f\x8c\x8a \xc3\xa9\xc3\xa9\xc3\xa9 t\xc3\xa9l";
-	struct sequence sequence = sequence_of(LITERAL(text), SYMBOL_CODEPOINT);
-
-	(void)state;
-	for (size_t page = 0; page < 20; page++)
-		check_by_definition(&sequence, page);
-	sequence_release(&sequence);
-}
-
-static void test_blocks_add_up(void **state)
-{
-	size_t n = 50000, blocks[] = {1, 7, 100};
-	uint8_t *text = malloc(n);
-	struct sequence sequence;
-
-	(void)state;
-	grams_pseudo_text(text, n, 8);
-	sequence = sequence_of((struct slice){text, n}, SYMBOL_BYTE);
-	for (size_t page = 0; page <= 4096; page += 4096) {
-		struct findings whole = measure(&sequence, NULL, page);
-
-		for (size_t i = 0; i < 3; i++) {
-			struct cuts cuts = grams_cuts(n, blocks[i]);
-			struct findings cut = measure(&sequence, &cuts, page);
-			const struct costs *costs = &cut.series[0].costs;
-
-			assert_int_equal(costs->blocks, blocks[i]);
-			assert_int_equal(costs_block_total(costs),
-					 costs->headline_q16);
-			assert_int_equal(costs->headline_q16,
-					 whole.series[0].costs.headline_q16);
-			findings_release(&cut);
-			free(cuts.symbol);
-		}
-		findings_release(&whole);
-	}
-	sequence_release(&sequence);
-	free(text);
-}
-
-/* A block's bits are those of its symbols after all that came before. */
-static void test_blocks_hold_their_own(void **state)
-{
-	uint8_t text[900];
-	struct sequence sequence, head;
-	struct cuts cuts = grams_cuts(sizeof(text), 3);
-	struct dirichlet_input input = {.cuts = &cuts, .alphabet = {256, 256}};
-	struct dirichlet_sums sums;
-
-	(void)state;
-	grams_pseudo_text(text, sizeof(text), 5);
-	sequence = grams_sequence(text, sizeof(text), 1);
-	input.sequence = &sequence;
-	assert_int_equal(dirichlet_code(&input, &sums), STATUS_OK);
-	for (unsigned k = 0; k < DIRICHLET_ORDERS; k++) {
-		double before = 0;
-
-		for (size_t i = 0; i < 3; i++) {
-			double bits;
-
-			head = grams_sequence(text, cuts.symbol[i + 1], 1);
-			bits = bits_by_definition(&head, 0, head.n, k, 256);
-			assert_near(
-				ldexp((double)dirichlet_blocks(&sums, k, 0)[i],
-				      -32),
-				bits - before, 1e-6);
-			before = bits;
-		}
-	}
-	dirichlet_sums_release(&sums);
+	grams_pseudo_text(codes, sizeof(codes), 6);
+	sequence = coded_sequence(codes, sizeof(codes), 256);
+	cuts.byte = cuts.symbol;
+	whole = coded_findings((struct coded_run){.row = "dirichlet"},
+			       &sequence);
+	parts = coded_findings(
+		(struct coded_run){.row = "dirichlet", .cuts = &cuts},
+		&sequence);
+	assert_int_equal(parts.series[0].costs.blocks, 7);
+	assert_int_equal(costs_block_total(&parts.series[0].costs),
+			 whole.series[0].costs.headline_q16);
+	first = sequence;
+	first.n = cuts.symbol[1];
+	assert_true(findings_find(&parts, "charge_q16", &charge));
+	assert_true(findings_find(&parts, "alphabet", &alphabet));
+	assert_near(bits_from_q16(parts.series[0].costs.block_q16[0] - charge),
+		    coded_dirichlet(&first, 0, parts.series[0].order,
+				    alphabet == 256 ? ALPHABET_OF_KIND
+						    : ALPHABET_SEEN),
+		    0x1p-14);
+	findings_release(&whole);
+	findings_release(&parts);
 	free(cuts.symbol);
 }
 
-/*
- * 16 of 256 bytes, almost any after any: naming them once is cheaper than a
- * surprise at each pair. With all 256 seen it cannot be.
- */
-static void test_alphabet(void **state)
+/* A symbol of 32 bits each time another one: nothing can be learnt. */
+static void wide_symbols(void **state)
 {
-	uint8_t bytes[4096];
-	struct random_stream random;
+	uint8_t bytes[4 * 1000];
 	struct sequence sequence;
 	struct findings findings;
 
 	(void)state;
-	random_init(&random, 1, 0);
-	bytes[0] = 0;
-	for (size_t i = 1; i < sizeof(bytes); i++)
-		bytes[i] = (uint8_t)(random_below(&random, 4)
-					     ? (bytes[i - 1] * 5U + 1) % 16
-					     : random_below(&random, 16));
-	sequence = grams_sequence(bytes, sizeof(bytes), 1);
-	findings = measure(&sequence, NULL, 0);
-	assert_int_equal(note(&findings, "alphabet_seen"), 1);
-	assert_int_equal(findings.series[0].order, 1);
+	for (size_t i = 0; i < 1000; i++) {
+		const uint32_t value = (uint32_t)i * UINT32_C(4000037);
+
+		memcpy(bytes + 4 * i, &value, 4);
+	}
+	sequence =
+		sequence_of((struct slice){bytes, sizeof(bytes)}, SYMBOL_U32LE);
+	assert_int_equal(sequence.distinct, 1000);
+	assert_near(coded_dirichlet(&sequence, 0, 5, ALPHABET_OF_KIND), 32000,
+		    1e-6);
+	findings = coded_findings((struct coded_run){.row = "dirichlet"},
+				  &sequence);
+	assert_int_equal(findings.series[0].costs.headline_q16,
+			 32000 * BIT_Q16 + 234945);
 	findings_release(&findings);
-	for (size_t i = 0; i < sizeof(bytes); i++)
-		bytes[i] = (uint8_t)i;
-	sequence = grams_sequence(bytes, sizeof(bytes), 1);
-	findings = measure(&sequence, NULL, 0);
-	assert_int_equal(note(&findings, "alphabet_seen"), 0);
-	assert_int_equal(findings.series[0].order, 1);
+	sequence_release(&sequence);
+}
+
+/* One letter only: its name among 256 and their number, then nothing. */
+static void one_letter(void **state)
+{
+	uint8_t codes[5000] = {0};
+	struct sequence sequence = coded_sequence(codes, sizeof(codes), 256);
+	struct findings findings = coded_findings(
+		(struct coded_run){.row = "dirichlet"}, &sequence);
+
+	(void)state;
+	assert_int_equal(findings.series[0].order, 0);
+	assert_near(bits_from_q16(findings.series[0].costs.headline_q16),
+		    16 + log2(12), 0x1p-15);
 	findings_release(&findings);
 }
 
-/* One symbol over and over: naming it is nearly all there is to say. */
-static void test_one_symbol(void **state)
+/* A table that may not grow ends the chain, but never at single symbols. */
+static void a_full_table(void **state)
 {
-	uint8_t bytes[1000];
-	struct sequence sequence;
-	struct findings findings;
+	uint8_t codes[20000] = {0};
+	struct sequence sequence = coded_sequence(codes, sizeof(codes), 256);
+	struct gram_chain chain;
+	bool full = true;
 
 	(void)state;
-	memset(bytes, 77, sizeof(bytes));
-	sequence = grams_sequence(bytes, sizeof(bytes), 1);
-	for (size_t n = 1; n <= sizeof(bytes); n = n * 7) {
-		double wide = 0;
-
-		sequence.n = n;
-		findings = measure(&sequence, NULL, 0);
-		/* -log2 prod (256 i + 1) / (256 i + 256) */
-		for (size_t i = 0; i < n; i++)
-			wide -= log2((256 * (double)i + 1) /
-				     (256 * (double)i + 256));
-		assert_near(
-			bits_from_q16(findings.series[0].costs.headline_q16),
-			log2(12) + fmin(16, wide), 1e-4);
-		findings_release(&findings);
-	}
-}
-
-static void test_quick_log(void **state)
-{
-	struct random_stream random;
-	struct quick_log *log;
-
-	(void)state;
-	random_init(&random, 9, 0);
-	assert_int_equal(quick_log_new(&log), STATUS_OK);
-	for (unsigned e = 0; e < 64; e++)
-		assert_true(quick_log_q32(log, UINT64_C(1) << e) ==
-			    (uint64_t)e << 32);
-	for (uint64_t i = 0; i < 400000; i++) {
-		uint64_t any = random_u64(&random) >> i % 64 | 1;
-		uint64_t x = i < 5000 ? i + 1 : any;
-		/* libm's logarithm of the nearest long double */
-		long double wanted = ldexpl(log2l((long double)x), 32);
-
-		assert_true(fabsl((long double)quick_log_q32(log, x) - wanted) <
-			    0.52L);
-	}
-	memory_free(log);
+	for (size_t i = 0; i < sizeof(codes); i++)
+		codes[i] = (uint8_t)(i * i >> 7);
+	assert_int_equal(gram_chain_init(&chain, &sequence, 0, 1), STATUS_OK);
+	assert_int_equal(gram_chain_lengthen(&chain, &full), STATUS_OK);
+	assert_false(full);
+	assert_int_equal(gram_chain_lengthen(&chain, &full), STATUS_OK);
+	assert_true(full);
+	gram_chain_release(&chain);
 }
 
 int main(void)
 {
 	const struct CMUnitTest tests[] = {
-		cmocka_unit_test(test_definition),
-		cmocka_unit_test(test_pages_of_code_points),
-		cmocka_unit_test(test_blocks_add_up),
-		cmocka_unit_test(test_blocks_hold_their_own),
-		cmocka_unit_test(test_alphabet),
-		cmocka_unit_test(test_one_symbol),
-		cmocka_unit_test(test_quick_log),
+		cmocka_unit_test(every_order_and_page),
+		cmocka_unit_test(kinds_and_their_pages),
+		cmocka_unit_test(the_row_takes_the_best),
+		cmocka_unit_test(blocks_of_the_row),
+		cmocka_unit_test(wide_symbols),
+		cmocka_unit_test(one_letter),
+		cmocka_unit_test(a_full_table),
 	};
 
 	return cmocka_run_group_tests(tests, NULL, NULL);

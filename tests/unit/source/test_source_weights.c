@@ -1,5 +1,5 @@
 /* Do whole-number weights draw what they say and tell their entropy? */
-#include "source/fields.h"
+#include "source/record_fields.h"
 #include "source/walk.h"
 #include "source/weights.h"
 

@@ -1,4 +1,4 @@
-#include "source/fields.h"
+#include "source/record_fields.h"
 
 #include "source/weights.h"
 

@@ -1,6 +1,6 @@
 /* Fields that packed records are made of, with their rates. */
-#ifndef SOURCE_FIELDS_H
-#define SOURCE_FIELDS_H
+#ifndef SOURCE_RECORD_FIELDS_H
+#define SOURCE_RECORD_FIELDS_H
 
 #include "base/random.h"
 
