@@ -156,7 +156,7 @@ const struct command command_calibrate = {
 		"drift was seen. The promises stand first, each with what was\n"
 		"measured and its own Monte-Carlo error.",
 	.examples = "  ratefloor calibrate --jobs 2 --out calibration.txt\n"
-		    "  ratefloor calibrate --source chain --symbols 10000 "
+		    "  ratefloor calibrate --source two-state --symbols 10000 "
 		    "--replicates 200",
 	.options = options,
 	.run = calibrate_run,
