@@ -36,7 +36,7 @@ static enum status read_lengths(const struct words *words,
 	TRY(words_number(words, "thin", 1, 20, &thin, why));
 	*rules = (struct calibration_rules){
 		.symbols = {10000, 100000, 400000},
-		.runs = {2000, 300, 40},
+		.runs = {2000, 300, 200},
 		.alphabet_least = {0, 0, 16},
 		.length_count = 3,
 		.orders = ORDERS_DEFAULT,
@@ -133,7 +133,7 @@ static const struct option_row options[] = {
 	 "length of a sample, from 6400; by default 10000, 100000 and "
 	 "400000"},
 	{"replicates", "R",
-	 "samples of each source; by default 2000, 300 and 40"},
+	 "samples of each source; by default 2000, 300 and 200"},
 	{"thin", "N",
 	 "one in N of the default samples; 1 by default, at most 20"},
 	{"source", "NAME", "only this source of the list"},

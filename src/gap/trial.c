@@ -104,27 +104,40 @@ static enum status find_codes(const struct ground *ground,
 	return STATUS_OK;
 }
 
-static enum status find_gap(const struct ground *ground,
-			    const struct lengths *lengths, struct trial *trial)
+/* The corrected entropy with its plug-in blocks: no learning to drift by. */
+static bool corrected_floor(const struct corpus_view *view, unsigned order,
+			    struct contribution *floor)
+{
+	const struct method_fact *method = method_done(view->fact, "ngram");
+	const struct series *series =
+		method ? series_of_order(&method->findings, order) : NULL;
+
+	if (!series || order > view->order_count)
+		return false;
+	*floor = contribution_of_series(series,
+					view->orders[order - 1].h_corrected *
+						(double)view->fact->n);
+	return true;
+}
+
+static enum status find_gap(const struct corpus_view *view,
+			    const struct ground *ground, unsigned order,
+			    struct trial *trial)
 {
 	const struct corpus_fact *fact = ground->fact;
-	const struct length *floor = lengths_lowest(lengths, 0);
 	struct interval paired, achieved, reference;
-	struct contribution cell;
+	struct contribution cell, floor;
 
-	if (!fact->cell_count || !floor || floor->cell ||
-	    !cell_is_sound(&fact->cells[0]))
+	if (!fact->cell_count || !cell_is_sound(&fact->cells[0]) ||
+	    !corrected_floor(view, order, &floor))
 		return STATUS_OK;
 	cell = contribution_of_cell(&fact->cells[0],
 				    8 * (double)fact->cells[0].facts.bytes);
-	TRY(ground_interval(ground, &cell, &floor->contribution, &paired,
-			    NULL));
+	TRY(ground_interval(ground, &cell, &floor, &paired, NULL));
 	TRY(ground_interval(ground, &cell, NULL, &achieved, NULL));
-	TRY(ground_interval(ground, &floor->contribution, NULL, &reference,
-			    NULL));
+	TRY(ground_interval(ground, &floor, NULL, &reference, NULL));
 	trial->gap_known = paired.known && achieved.known && reference.known;
-	trial->gap = (cell.total_bits - floor->contribution.total_bits) /
-		     (double)fact->n;
+	trial->gap = (cell.total_bits - floor.total_bits) / (double)fact->n;
 	trial->gap_low = paired.low;
 	trial->gap_high = paired.high;
 	trial->unpaired_width = 2 * hypot(interval_half_width(&achieved),
@@ -142,7 +155,7 @@ static enum status find_all(struct corpus_view *view,
 	TRY(find_grams(view, ground, order, trial));
 	TRY(find_crossfit(ground, order, trial));
 	TRY(find_codes(ground, lengths, trial));
-	TRY(find_gap(ground, lengths, trial));
+	TRY(find_gap(view, ground, order, trial));
 	TRY(bracket_find(view, ground, lengths, &bracket));
 	trial->trusted_order = view->trusted_order;
 	trial->bracket_known = bracket.known;

@@ -23,7 +23,8 @@ struct trial {
 	bool bracket_known, open_below, not_calibrated;
 	unsigned bracket_order;
 	double bracket_low, bracket_high; /* low is 0 where open below */
-	bool gap_known; /* first cell against the floor, both with blocks */
+	/* First cell against the corrected entropy, both with blocks. */
+	bool gap_known;
 	double gap, gap_low, gap_high;
 	double unpaired_width; /* root of the sum of squared widths */
 };

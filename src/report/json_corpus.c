@@ -138,6 +138,8 @@ static void put_more(struct json_maker *made, const struct corpus_view *view)
 	json_put_count(made, "canonical_bytes", fact->canonical_bytes);
 	json_put_reason(made, "licence", fact->licence);
 	json_put_reason(made, "origin", fact->origin);
+	json_put(made, "extrapolation",
+		 extrapolation_object(&view->extrapolation));
 }
 
 json_t *json_corpus(const struct corpus_view *view)

@@ -168,6 +168,9 @@ static double distance(const struct proportion *share,
 	double low = wanted->least - share->value;
 	double high = share->value - wanted->most;
 
+	/* All of them is never too many. */
+	if (wanted->most >= 1)
+		return low;
 	return low > high ? low : high;
 }
 
