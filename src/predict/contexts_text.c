@@ -36,14 +36,10 @@ unsigned contexts_prose(const struct past *past, struct view *view)
 	view->select[2] = (uint16_t)c1;
 	if (past->plan.strength == STRENGTH_NIGHTLY)
 		return n;
-	add(view, &n, last_bytes(past, 4) & 0xff00ffff);
-	add(view, &n, last_bytes(past, 7));
-	add(view, &n, pair(past->last8, past->before8 & 0xffffffff));
-	return n;
+	return contexts_deep_text(past, view, n);
 }
 
-/* The byte of the same field in the line before, if it is that long. */
-static unsigned field_above(const struct past *past)
+unsigned field_above(const struct past *past)
 {
 	unsigned field = past->fields[0];
 	size_t from, offset = past->at - past->field_start[0][field];
@@ -56,8 +52,7 @@ static unsigned field_above(const struct past *past)
 	return past->bytes[from];
 }
 
-/* The byte of the same column in the line before, likewise. */
-static unsigned column_above(const struct past *past)
+unsigned column_above(const struct past *past)
 {
 	size_t from = past->line_before + (past->at - past->line);
 
@@ -82,6 +77,5 @@ unsigned contexts_lines(const struct past *past, struct view *view)
 	view->select[2] = (uint16_t)((field * 8 + kind) % SET_ROWS);
 	if (past->plan.strength == STRENGTH_NIGHTLY)
 		return n;
-	add(view, &n, pair(past->first, past->line_hash));
-	return n;
+	return contexts_deep_text(past, view, n);
 }

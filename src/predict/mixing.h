@@ -81,10 +81,12 @@ ALWAYS_INLINE void set_update(struct mixer *mixer, struct mixing *mixing,
 ALWAYS_INLINE unsigned match_row(const struct selection *at)
 {
 	unsigned kind = at->step == 0 ? 0 : at->step < 16 ? 1 : 2;
+	/* Of 28 contexts every second counts. */
+	unsigned hits = at->view->hits > 14 ? 14 + (at->view->hits > 21)
+					    : at->view->hits;
 
 	kind += at->step > 27 ? 1 : 0;
-
-	return (kind * 16 + at->view->hits) * 4 + (at->bit >> 1);
+	return (kind * 16 + hits) * 4 + (at->bit >> 1);
 }
 
 ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,

@@ -184,6 +184,8 @@ ALWAYS_INLINE void run_common(struct predictor *p, const struct chunk *chunk,
 			      size_t width)
 {
 	const int16_t *stretch = p->mixer.tables.stretch;
+	/* Without a second match its input is 0 from the beginning. */
+	bool second = p->past.match[1].table != NULL;
 	int16_t *inputs = p->chunk_inputs + width - COMMON;
 
 	for (size_t i = 0; i < chunk->actives; i++) {
@@ -193,7 +195,8 @@ ALWAYS_INLINE void run_common(struct predictor *p, const struct chunk *chunk,
 		bool failed = chunk->lane_failed[at];
 
 		run_match(p, view, 0, byte, failed, inputs + 2, width);
-		run_match(p, view, 1, byte, failed, inputs + 4, width);
+		if (second)
+			run_match(p, view, 1, byte, failed, inputs + 4, width);
 		for (unsigned bit = 0; bit < 8; bit++) {
 			unsigned partial = (byte | 256) >> (8 - bit);
 			unsigned value = byte >> (7 - bit) & 1;

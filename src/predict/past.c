@@ -8,6 +8,7 @@
 
 /* Matches this long have their next byte coded in one decision. */
 #define LANE_LENGTH 20
+#define LANE_LENGTH_DEEP 40
 /* A match shorter than this gives way to a longer one. */
 #define FIRM_LENGTH 16
 #define MISSES_MAX 8
@@ -203,9 +204,12 @@ void past_push(struct past *past)
 	past->at++;
 	past->before8 = past->before8 << 8 | past->last8 >> 56;
 	past->last8 = past->last8 << 8 | c;
-	if (past->plan.family <= FAMILY_BINARY)
+	if (past->plan.family <= FAMILY_BINARY ||
+	    past->plan.strength == STRENGTH_DEEP)
 		push_word(past, c);
-	if (past->plan.family == FAMILY_LINES)
+	if (past->plan.family == FAMILY_LINES ||
+	    (past->plan.family == FAMILY_PROSE &&
+	     past->plan.strength == STRENGTH_DEEP))
 		push_line(past, c);
 	match_push(&past->match[0], past->bytes, past->at, past->last8);
 	if (past->match[1].table)
@@ -215,6 +219,7 @@ void past_push(struct past *past)
 void past_look(const struct past *past, struct view *view)
 {
 	const struct match *match = past->match;
+	bool deep = past->plan.strength == STRENGTH_DEEP;
 
 	view->base = past->plan.family == FAMILY_FIELDS ? fields_base(past) : 0;
 	for (unsigned i = 0; i < 2; i++) {
@@ -225,7 +230,8 @@ void past_look(const struct past *past, struct view *view)
 	}
 	view->hits = 0;
 	view->last = (uint8_t)past->last8;
-	view->lane = match[0].at && match[0].length >= LANE_LENGTH;
+	view->lane = match[0].at &&
+		     match[0].length >= (deep ? LANE_LENGTH_DEEP : LANE_LENGTH);
 	contexts_look(past, view);
 }
 
@@ -244,11 +250,12 @@ void past_warm(const struct past *past, const uint8_t *bytes, size_t position)
 /* More where each tells something new; even numbers, taken two by two. */
 unsigned past_contexts(const struct predict_plan *plan)
 {
-	static const unsigned nightly[FAMILY_COUNT] = {
-		[FAMILY_PROSE] = 12,  [FAMILY_LINES] = 12, [FAMILY_BINARY] = 10,
-		[FAMILY_RECORDS] = 8, [FAMILY_FIELDS] = 8, [FAMILY_IMAGE] = 8,
+	static const unsigned counts[FAMILY_COUNT][2] = {
+		[FAMILY_PROSE] = {12, 28},  [FAMILY_LINES] = {12, 28},
+		[FAMILY_BINARY] = {10, 28}, [FAMILY_RECORDS] = {8, 28},
+		[FAMILY_FIELDS] = {8, 8},   [FAMILY_IMAGE] = {8, 14},
+		[FAMILY_FLAT] = {2, 2},
 	};
 
-	return plan->strength == STRENGTH_DEEP ? CONTEXTS_DEEP
-					       : nightly[plan->family];
+	return counts[plan->family][plan->strength == STRENGTH_DEEP];
 }

@@ -6,7 +6,6 @@
 
 #include "base/status.h"
 
-#define CONTEXTS_DEEP 14
 #define CONTEXTS_MAX 30
 #define FIELDS_MAX 32
 #define SELECTORS 3

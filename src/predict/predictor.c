@@ -9,6 +9,10 @@
 
 #include <assert.h>
 
+/* Sums of the weights that contexts start with, in 2^-14. */
+#define FIRST_WEIGHTS 36000U
+#define FIRST_SHARES 6000U
+
 /* Lines of a context: enough for the bytes at hand, within the memory given. */
 static unsigned lines_log2_for(const struct predict_plan *plan)
 {
@@ -42,6 +46,8 @@ enum status predictor_new(const struct predict_plan *plan,
 
 	TRY(memory_new_lines(1, sizeof(*made), &made));
 	made->plan = *plan;
+	if (made->plan.stride == 0)
+		made->plan.stride = 1;
 	made->contexts = past_contexts(plan);
 	made->lines_log2 = lines_log2_for(plan);
 	made->mixer.inputs =
@@ -94,7 +100,10 @@ void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 	memset(predictor->lines, 0,
 	       ((size_t)predictor->contexts << predictor->lines_log2) *
 		       LINE_BYTES);
-	mixer_restart(&predictor->mixer, 3600, 512);
+	/* The more contexts, the less each says at first. */
+	mixer_restart(&predictor->mixer,
+		      (int16_t)(FIRST_WEIGHTS / predictor->contexts),
+		      (int16_t)(FIRST_SHARES / predictor->contexts));
 	for (unsigned i = 0; i < CONTEXTS_MAX; i++)
 		memcpy(predictor->trend[i], tables->start,
 		       sizeof(tables->start));
