@@ -67,27 +67,27 @@ static enum status read_rules(const struct words *words,
 	return STATUS_OK;
 }
 
-static enum status write_report(const struct calibration *calibration,
-				const struct calibration_format *format,
-				const char *path, struct reason *why)
+static enum status run_and_write(const struct calibration_rules *rules,
+				 const struct calibration_format *format,
+				 FILE *out, struct reason *why)
 {
-	const struct calibration_report report = {
+	struct calibration_report report = {
 		.program = "ratefloor " RATEFLOOR_VERSION,
-		.seed = calibration->rules.seed,
-		.orders = calibration->rules.orders,
-		.cases = calibration->cases,
-		.case_count = calibration->case_count,
+		.seed = rules->seed,
+		.orders = rules->orders,
 	};
-	struct output output;
+	struct calibration calibration;
 	enum status status;
 
-	TRY(output_open(&output, path, why));
-	status = format->write(output.file, &report, why);
-	if (status != STATUS_OK) {
-		output_drop(&output);
-		return status;
-	}
-	return output_keep(&output, why);
+	TRY(calibration_run(rules, &calibration, why));
+	(void)fprintf(stderr, "%s%zu sources and lengths in %.1f s\n",
+		      rules->watch ? "\r" : "", calibration.case_count,
+		      calibration.seconds);
+	report.cases = calibration.cases;
+	report.case_count = calibration.case_count;
+	status = format->write(out, &report, why);
+	calibration_release(&calibration);
+	return status;
 }
 
 static enum status calibrate(const struct words *words, struct reason *why)
@@ -96,7 +96,7 @@ static enum status calibrate(const struct words *words, struct reason *why)
 	const struct calibration_format *format =
 		calibration_format_find(as ? as : "text");
 	struct calibration_rules rules;
-	struct calibration calibration;
+	struct output output;
 	double shown = 0;
 	enum status status;
 
@@ -109,14 +109,14 @@ static enum status calibrate(const struct words *words, struct reason *why)
 		rules.watch = show_share;
 		rules.context = &shown;
 	}
-	TRY(calibration_run(&rules, &calibration, why));
-	(void)fprintf(stderr, "%s%zu sources and lengths in %.1f s\n",
-		      rules.watch ? "\r" : "", calibration.case_count,
-		      calibration.seconds);
-	status = write_report(&calibration, format, words_get(words, "out"),
-			      why);
-	calibration_release(&calibration);
-	return status;
+	/* Before minutes of work, not after them. */
+	TRY(output_open(&output, words_get(words, "out"), why));
+	status = run_and_write(&rules, format, output.file, why);
+	if (status != STATUS_OK) {
+		output_drop(&output);
+		return status;
+	}
+	return output_keep(&output, why);
 }
 
 static enum exit_code calibrate_run(const struct words *words)

@@ -87,6 +87,13 @@ static void explain_limit(struct corpus_view *view, const struct trust *trust)
 {
 	const char *remedy = "about ten times as much data would add an order";
 
+	if (trust->failed == TRUST_ALL_PASSED &&
+	    trust->order < view->order_count) {
+		(void)snprintf(view->trust_limit, sizeof(view->trust_limit),
+			       "order %u could not be cross-fitted; %s",
+			       trust->order + 1, remedy);
+		return;
+	}
 	if (trust->failed == TRUST_ALL_PASSED) {
 		(void)snprintf(view->trust_limit, sizeof(view->trust_limit),
 			       "every order up to %u passes; ask for more with "

@@ -15,7 +15,8 @@ static struct trial_row *add_row(struct trial *trial, const char *name,
 
 	if (trial->row_count == TRIAL_ROWS_MAX)
 		return NULL;
-	*row = (struct trial_row){.bits_per_symbol = bits_per_symbol};
+	*row = (struct trial_row){.known = true,
+				  .bits_per_symbol = bits_per_symbol};
 	(void)snprintf(row->name, sizeof(row->name), "%s", name);
 	trial->row_count++;
 	return row;
@@ -35,6 +36,15 @@ static void add_shifted(struct trial *trial, const char *name,
 	row->high = interval->high + (bits_per_symbol - from);
 }
 
+/* Keeps the place of a row that has nothing to say. */
+static void add_unknown(struct trial *trial, const char *name)
+{
+	struct trial_row *row = add_row(trial, name, 0);
+
+	if (row)
+		row->known = false;
+}
+
 static enum status find_grams(const struct corpus_view *view,
 			      const struct ground *ground, unsigned order,
 			      struct trial *trial)
@@ -46,8 +56,12 @@ static enum status find_grams(const struct corpus_view *view,
 	struct contribution contribution;
 	struct interval interval;
 
-	if (!series || order > view->order_count)
+	if (!series || order > view->order_count) {
+		add_unknown(trial, "plug-in");
+		add_unknown(trial, "grassberger");
+		add_unknown(trial, "chao-wang-jost");
 		return STATUS_OK;
+	}
 	row = &view->orders[order - 1];
 	contribution = contribution_of_series(
 		series, row->h_plugin * (double)view->fact->n);
@@ -83,8 +97,10 @@ static enum status find_crossfit(const struct ground *ground, unsigned order,
 		method ? series_of_order(&method->findings, order) : NULL;
 	struct contribution contribution;
 
-	if (!series)
+	if (!series) {
+		add_unknown(trial, "crossfit");
 		return STATUS_OK;
+	}
 	contribution = contribution_of_series(
 		series, bits_from_q16(series->costs.headline_q16));
 	return find_series(ground, "crossfit", &contribution, trial);

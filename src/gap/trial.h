@@ -10,6 +10,7 @@
 /* One estimator at the order that suits the source, bits per symbol. */
 struct trial_row {
 	char name[TRIAL_NAME_BYTES];
+	bool known; /* false: declined on this sample; nothing below is set */
 	double bits_per_symbol;
 	bool has_interval;
 	double low, high;
@@ -31,8 +32,8 @@ struct trial {
 
 /*
  * order: of the grams at which plug-in, Grassberger, Chao-Wang-Jost and
- * crossfit are read. The rows: those four, then every code row. A row that did
- * not run is left out, so that trials of the same methods have the same rows.
+ * crossfit are read. The rows: those four, known or not, then every code row
+ * that ran, so that trials of the same methods have the same rows.
  * seed names the draws. STATUS_NO_MEMORY.
  */
 MUST_USE enum status trial_find(const struct corpus_fact *fact, uint64_t seed,

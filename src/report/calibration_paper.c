@@ -7,7 +7,7 @@
 #define COUNT(array) (sizeof(array) / sizeof((array)[0]))
 
 static const struct column goal_columns[] = {
-	{"promise", 46, true},  {"decided by", 14, true}, {"wanted", 13, true},
+	{"promise", 48, true},  {"decided by", 14, true}, {"wanted", 13, true},
 	{"measured", 8, false}, {"99%", 15, true},        {"met", 3, true},
 };
 

@@ -155,7 +155,8 @@ static void plain_cell(const struct writer *writer, const struct grid *grid,
 
 static void plain_grid(const struct writer *writer, const struct grid *grid)
 {
-	static const char rule[] = "----------------------------------------";
+	static const char rule[] =
+		"------------------------------------------------------------";
 	size_t widths[COLUMNS_MAX] = {0};
 	size_t columns = grid->column_count;
 
@@ -165,7 +166,10 @@ static void plain_grid(const struct writer *writer, const struct grid *grid)
 		plain_cell(writer, grid, c, widths[c], grid->columns[c].title);
 	for (size_t c = 0; c < columns; c++)
 		plain_cell(writer, grid, c, widths[c],
-			   rule + sizeof(rule) - 1 - widths[c]);
+			   rule + sizeof(rule) - 1 -
+				   (widths[c] < sizeof(rule)
+					    ? widths[c]
+					    : sizeof(rule) - 1));
 	for (size_t i = 0; i < grid->count; i++)
 		plain_cell(writer, grid, i % columns, widths[i % columns],
 			   grid->cells[i]);

@@ -13,9 +13,11 @@ static const struct analysis_rules interval_rules = {1999, 0.95};
 
 #define GAP_SYMBOLS_MIN 262144
 
-/* Rows that are run, where the program has them. */
-static const char *const row_names[] = {"ngram", "crossfit", "dirichlet",
-					"ctw"};
+/*
+ * Rows that are run. ctw and mix would take more time than all else together,
+ * and on these sources the cross-fit is the shorter of the upper edges.
+ */
+static const char *const row_names[] = {"ngram", "crossfit", "dirichlet"};
 #define ROW_COUNT (sizeof(row_names) / sizeof(row_names[0]))
 
 /* Everything made of one sample; released whole. */

@@ -30,30 +30,42 @@ static struct measured median_of(double *values, size_t count)
 	};
 }
 
-static double mean_estimate(const struct trial *trials, size_t count, size_t r)
+/* Mean over the samples on which the row is known; how many they are. */
+static double mean_estimate(const struct trial *trials, size_t count, size_t r,
+			    size_t *known)
 {
 	struct sum sum = {0};
 
-	for (size_t i = 0; i < count; i++)
+	*known = 0;
+	for (size_t i = 0; i < count; i++) {
+		if (!trials[i].rows[r].known)
+			continue;
 		sum_add(&sum, trials[i].rows[r].bits_per_symbol);
-	return sum_value(&sum) / (double)count;
+		++*known;
+	}
+	return *known ? sum_value(&sum) / (double)*known : 0;
 }
 
 static void judge_errors(const struct trial *trials, size_t count, size_t r,
 			 double known_rate, struct calibration_row *row)
 {
-	double n = (double)count, mean = mean_estimate(trials, count, r);
 	struct sum spread = {0}, second = {0}, fourth = {0};
-	double mse;
+	size_t known;
+	double mean = mean_estimate(trials, count, r, &known);
+	double n = (double)known, mse;
 
 	for (size_t i = 0; i < count; i++) {
 		double x = trials[i].rows[r].bits_per_symbol;
 		double error = (x - known_rate) * (x - known_rate);
 
+		if (!trials[i].rows[r].known)
+			continue;
 		sum_add(&spread, (x - mean) * (x - mean));
 		sum_add(&second, error);
 		sum_add(&fourth, error * error);
 	}
+	if (known < 2)
+		return;
 	mse = sum_value(&second) / n;
 	row->bias.value = mean - known_rate;
 	row->bias.error = sqrt(sum_value(&spread) / (n - 1) / n);
@@ -76,7 +88,8 @@ static void judge_row(const struct trial *trials, size_t count, size_t r,
 		      double *scratch, struct calibration_row *row)
 {
 	double known_rate = subject->known_rate;
-	double mean = mean_estimate(trials, count, r);
+	size_t known;
+	double mean = mean_estimate(trials, count, r, &known);
 	size_t told = 0, own = 0, truth = 0, trusted = 0, trusted_truth = 0;
 
 	memcpy(row->name, trials[0].rows[r].name, sizeof(row->name));

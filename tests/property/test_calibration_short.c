@@ -118,6 +118,27 @@ static void an_unknown_source_is_refused(void **state)
 	assert_non_null(strstr(why.text, "no-such-source"));
 }
 
+static void a_stop_is_heeded(void **state)
+{
+	static const volatile sig_atomic_t stop = 1;
+	const struct calibration_rules rules = {
+		.symbols = {10000},
+		.runs = {2},
+		.length_count = 1,
+		.source = "two-state",
+		.orders = 16,
+		.jobs = 1,
+		.stop = &stop,
+	};
+	struct calibration made;
+	struct reason why = {""};
+
+	(void)state;
+	assert_int_equal(calibration_run(&rules, &made, &why),
+			 STATUS_CANCELLED);
+	assert_string_equal(why.text, "stopped on request");
+}
+
 int main(void)
 {
 	const struct CMUnitTest tests[] = {
@@ -126,6 +147,7 @@ int main(void)
 		cmocka_unit_test(more_data_narrows_the_bracket),
 		cmocka_unit_test(jobs_change_nothing),
 		cmocka_unit_test(an_unknown_source_is_refused),
+		cmocka_unit_test(a_stop_is_heeded),
 	};
 
 	return cmocka_run_group_tests(tests, NULL, NULL);

@@ -33,6 +33,7 @@ static struct trial trial_of(double estimate)
 	};
 
 	(void)snprintf(trial.rows[0].name, TRIAL_NAME_BYTES, "grassberger");
+	trial.rows[0].known = true;
 	trial.rows[0].bits_per_symbol = estimate;
 	trial.rows[0].has_interval = true;
 	trial.rows[0].low = estimate - .5;
@@ -78,6 +79,22 @@ static void errors_and_coverage(void **state)
 	/* The mean gap 2.5 is in [1.4,2.4]? no; [2.4,3.4] yes. */
 	assert_int_equal(made.gap.hits, 1);
 	assert_near(made.gap_width_ratio.value, .25, 1e-12);
+}
+
+/* Where a row declined, its empty place is no estimate of 0. */
+static void an_unknown_row_is_left_out(void **state)
+{
+	struct trial trials[3] = {trial_of(1), trial_of(2), trial_of(3)};
+	struct calibration_case made;
+
+	(void)state;
+	trials[2].rows[0] = (struct trial_row){.name = "grassberger"};
+	assert_int_equal(calibration_judge(&subject, trials, 3, &made),
+			 STATUS_OK);
+	assert_near(made.rows[0].bias.value, -.5, 1e-12);
+	assert_near(made.rows[0].rmse.value, sqrt(.5), 1e-12);
+	assert_int_equal(made.rows[0].told.hits, 2);
+	assert_int_equal(made.rows[0].own_mean.trials, 2);
 }
 
 static void what_was_not_told_does_not_count(void **state)
@@ -211,6 +228,7 @@ int main(void)
 {
 	const struct CMUnitTest tests[] = {
 		cmocka_unit_test(errors_and_coverage),
+		cmocka_unit_test(an_unknown_row_is_left_out),
 		cmocka_unit_test(what_was_not_told_does_not_count),
 		cmocka_unit_test(goals_name_who_decides),
 		cmocka_unit_test(no_cases_no_goals),
