@@ -110,7 +110,9 @@ struct predictor {
 	const struct lanes *lanes;
 	struct past past;
 	unsigned contexts;
-	uint8_t *lines; /* owned; contexts x lines_each lines */
+	uint8_t *lines_block; /* owned; holds lines */
+	uint8_t *lines;       /* contexts x lines_each, aligned */
+	bool fresh;           /* lines are zero as they came */
 	unsigned lines_log2;
 	uint32_t trend[CONTEXTS_MAX][256]; /* by bit history */
 	uint16_t order0[256];
