@@ -12,26 +12,32 @@ static void add(struct view *view, unsigned *n, uint64_t value)
 	(*n)++;
 }
 
-/* Orders 1 to 6 and 8, shared by both families of text. */
-static unsigned look_orders(const struct past *past, struct view *view)
+/* Orders 1 to most, 6 and 8, shared by both families of text. */
+static unsigned look_orders(const struct past *past, struct view *view,
+			    unsigned most)
 {
 	unsigned n = 0;
 
-	for (unsigned order = 1; order <= 6; order++)
+	for (unsigned order = 1; order <= most; order++)
 		add(view, &n, last_bytes(past, order));
+	add(view, &n, last_bytes(past, 6));
 	add(view, &n, past->last8);
 	return n;
 }
 
 unsigned contexts_prose(const struct past *past, struct view *view)
 {
-	unsigned n = look_orders(past, view);
+	unsigned n = look_orders(past, view, 5);
 	unsigned c1 = past->last8 & 255;
 
 	add(view, &n, pair(past->word, c1));
 	add(view, &n, pair(past->word, past->word1) + c1);
 	add(view, &n, pair(pair(past->word, past->word1), past->word2) + c1);
-	add(view, &n, pair(past->word, past->word2) + c1);
+	/* Letters of two bytes and more want twice the order. */
+	if (past->last8 & 0x80808080)
+		add(view, &n, pair(past->last8, past->before8 & 0xffffffff));
+	else
+		add(view, &n, pair(past->word, past->word2) + c1);
 	add(view, &n, pair(view->expected[0] * 32U + view->match_step[0], c1));
 	view->select[2] = (uint16_t)c1;
 	if (past->plan.strength == STRENGTH_NIGHTLY)
@@ -61,13 +67,12 @@ unsigned column_above(const struct past *past)
 
 unsigned contexts_lines(const struct past *past, struct view *view)
 {
-	unsigned n = look_orders(past, view);
+	unsigned n = look_orders(past, view, 4);
 	unsigned c1 = past->last8 & 255;
 	unsigned field = past->fields[0], above = field_above(past), kind;
 	uint64_t in_field = pair(past->field_hash, field);
 
 	add(view, &n, pair(past->word, c1));
-	add(view, &n, pair(past->word, past->word1) + c1);
 	add(view, &n, pair(column_above(past), last_bytes(past, 2)));
 	add(view, &n, in_field);
 	add(view, &n, pair(in_field, past->field_hash1));

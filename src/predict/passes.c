@@ -23,6 +23,21 @@ struct chunk {
 /* How far ahead of the past its match table is called for. */
 #define WARM 24
 
+/* Calls for the rows of the final stages that a byte's bits go through. */
+static void warm_stages(const struct predictor *p, const struct view *view,
+			unsigned byte)
+{
+	for (unsigned bit = 0; bit < 8; bit++) {
+		unsigned partial = (byte | 256) >> (8 - bit);
+
+		for (unsigned i = 0; i < 2; i++)
+			__builtin_prefetch(
+				&p->mixer.stage[i][stage_row(view, i, partial) *
+						   STAGE_ROOM],
+				1);
+	}
+}
+
 /* Takes the views of the bytes at hand, and calls for their lines. */
 static void look_ahead(struct predictor *p, size_t from, size_t end,
 		       struct view *views)
@@ -42,6 +57,7 @@ static void look_ahead(struct predictor *p, size_t from, size_t end,
 		if (view->lane &&
 		    view->expected[0] == (uint8_t)(bytes[i] - view->base))
 			continue;
+		warm_stages(p, view, (uint8_t)(bytes[i] - view->base));
 		for (unsigned k = 0; k < p->contexts; k++)
 			__builtin_prefetch(
 				context_lines(p, k) +

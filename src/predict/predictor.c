@@ -28,8 +28,13 @@ static MUST_USE enum status predictor_allocate(struct predictor *made)
 	size_t inputs = made->mixer.inputs;
 
 	TRY(past_init(&made->past, &made->plan));
-	TRY(memory_new_lines((size_t)made->contexts << made->lines_log2,
-			     LINE_BYTES, &made->lines));
+	/* One line more than used, to begin at a multiple of their size. */
+	TRY(memory_new_zeroed(((size_t)made->contexts << made->lines_log2) + 1,
+			      LINE_BYTES, &made->lines_block));
+	made->lines =
+		(uint8_t *)(((uintptr_t)made->lines_block + LINE_BYTES - 1) &
+			    ~(uintptr_t)(LINE_BYTES - 1));
+	made->fresh = true;
 	TRY(memory_new_lines((size_t)SETS * SET_ROWS * inputs, sizeof(int16_t),
 			     &made->mixer.weights));
 	TRY(memory_new_lines(65536, sizeof(uint16_t), &made->order1));
@@ -71,7 +76,7 @@ void predictor_free(struct predictor *predictor)
 		return;
 	bases_free(predictor->bases);
 	past_release(&predictor->past);
-	memory_free(predictor->lines);
+	memory_free(predictor->lines_block);
 	memory_free(predictor->mixer.weights);
 	memory_free(predictor->order1);
 	memory_free(predictor->views);
@@ -97,9 +102,12 @@ void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 		return;
 	}
 	past_restart(&predictor->past, bytes);
-	memset(predictor->lines, 0,
-	       ((size_t)predictor->contexts << predictor->lines_log2) *
-		       LINE_BYTES);
+	/* New ones are zeroed, and not yet touched. */
+	if (!predictor->fresh)
+		memset(predictor->lines, 0,
+		       ((size_t)predictor->contexts << predictor->lines_log2) *
+			       LINE_BYTES);
+	predictor->fresh = false;
 	/* The more contexts, the less each says at first. */
 	mixer_restart(&predictor->mixer,
 		      (int16_t)(FIRST_WEIGHTS / predictor->contexts),
