@@ -17,8 +17,7 @@
 
 static bool has_stride(enum predict_family family)
 {
-	return family == FAMILY_RECORDS || family == FAMILY_FIELDS ||
-	       family == FAMILY_IMAGE;
+	return family >= FAMILY_BINARY && family <= FAMILY_IMAGE;
 }
 
 int64_t plan_charge_q32(const struct predict_plan *plan)
@@ -96,7 +95,7 @@ static MUST_USE enum status try_binary(struct trial *trial)
 	size_t record = request->record_bytes;
 	unsigned lag = lag_find(request->bytes, request->count, STRIDE_MAX);
 
-	TRY(try_plan(trial, FAMILY_BINARY, 1));
+	TRY(try_plan(trial, FAMILY_BINARY, lag));
 	TRY(try_plan(trial, FAMILY_RECORDS, lag));
 	if (lag <= COLUMNS_MAX)
 		TRY(try_plan(trial, FAMILY_FIELDS, lag));

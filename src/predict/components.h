@@ -33,6 +33,15 @@ ALWAYS_INLINE uint32_t trend_moved(uint32_t trend, unsigned bit)
 	return trend + (uint32_t)(error >> TREND_SHIFT);
 }
 
+/* Rows of the final stages: by the last byte, and by the last two. */
+ALWAYS_INLINE size_t stage_row(const struct view *view, unsigned i,
+			       unsigned partial)
+{
+	if (i == 0)
+		return (view->last * 256U + partial) % STAGE_ROWS;
+	return (view->hash[1] >> 16 ^ partial * 0x9e35U) % STAGE_ROWS;
+}
+
 /* The slot of a context at the beginning of a byte, and in its middle. */
 ALWAYS_INLINE void place_begin(struct place *place, uint8_t *lines,
 			       unsigned lines_log2, uint32_t hash)

@@ -16,6 +16,19 @@ unsigned contexts_image(const struct past *past, struct view *view);
 
 unsigned contexts_fields(const struct past *past, struct view *view);
 
+/* More of them for reviews, from n on. */
+unsigned contexts_deep_text(const struct past *past, struct view *view,
+			    unsigned n);
+unsigned contexts_deep_bytes(const struct past *past, struct view *view,
+			     unsigned n);
+
+/*
+ * In the line before: the byte of the same field, 256 and more where that is
+ * shorter; the byte of the same column, likewise.
+ */
+unsigned field_above(const struct past *past);
+unsigned column_above(const struct past *past);
+
 /* For FAMILY_FIELDS: takes a byte in; the base of the next one. */
 void fields_push(struct past *past, uint8_t byte);
 uint8_t fields_base(const struct past *past);

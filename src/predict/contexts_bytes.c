@@ -23,6 +23,8 @@ unsigned contexts_binary(const struct past *past, struct view *view)
 	add(view, &n, (last & UINT64_C(0xf8f8f8f8ff)) << 8 | phase);
 	add(view, &n, past->word);
 	view->select[2] = (uint16_t)(last & 255);
+	if (past->plan.strength == STRENGTH_DEEP)
+		return contexts_deep_bytes(past, view, n);
 	return n;
 }
 
@@ -57,7 +59,7 @@ unsigned contexts_records(const struct past *past, struct view *view)
 	add(view, &n, phase << 8 | up);
 	add(view, &n, last_bytes(past, 4));
 	add(view, &n, last_bytes(past, 6));
-	return n;
+	return contexts_deep_bytes(past, view, n);
 }
 
 unsigned contexts_image(const struct past *past, struct view *view)

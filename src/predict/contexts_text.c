@@ -12,38 +12,40 @@ static void add(struct view *view, unsigned *n, uint64_t value)
 	(*n)++;
 }
 
-/* Orders 1 to 6 and 8, shared by both families of text. */
-static unsigned look_orders(const struct past *past, struct view *view)
+/* Orders 1 to most, 6 and 8, shared by both families of text. */
+static unsigned look_orders(const struct past *past, struct view *view,
+			    unsigned most)
 {
 	unsigned n = 0;
 
-	for (unsigned order = 1; order <= 6; order++)
+	for (unsigned order = 1; order <= most; order++)
 		add(view, &n, last_bytes(past, order));
+	add(view, &n, last_bytes(past, 6));
 	add(view, &n, past->last8);
 	return n;
 }
 
 unsigned contexts_prose(const struct past *past, struct view *view)
 {
-	unsigned n = look_orders(past, view);
+	unsigned n = look_orders(past, view, 5);
 	unsigned c1 = past->last8 & 255;
 
 	add(view, &n, pair(past->word, c1));
 	add(view, &n, pair(past->word, past->word1) + c1);
 	add(view, &n, pair(pair(past->word, past->word1), past->word2) + c1);
-	add(view, &n, pair(past->word, past->word2) + c1);
+	/* Letters of two bytes and more want twice the order. */
+	if (past->last8 & 0x80808080)
+		add(view, &n, pair(past->last8, past->before8 & 0xffffffff));
+	else
+		add(view, &n, pair(past->word, past->word2) + c1);
 	add(view, &n, pair(view->expected[0] * 32U + view->match_step[0], c1));
 	view->select[2] = (uint16_t)c1;
 	if (past->plan.strength == STRENGTH_NIGHTLY)
 		return n;
-	add(view, &n, last_bytes(past, 4) & 0xff00ffff);
-	add(view, &n, last_bytes(past, 7));
-	add(view, &n, pair(past->last8, past->before8 & 0xffffffff));
-	return n;
+	return contexts_deep_text(past, view, n);
 }
 
-/* The byte of the same field in the line before, if it is that long. */
-static unsigned field_above(const struct past *past)
+unsigned field_above(const struct past *past)
 {
 	unsigned field = past->fields[0];
 	size_t from, offset = past->at - past->field_start[0][field];
@@ -56,8 +58,7 @@ static unsigned field_above(const struct past *past)
 	return past->bytes[from];
 }
 
-/* The byte of the same column in the line before, likewise. */
-static unsigned column_above(const struct past *past)
+unsigned column_above(const struct past *past)
 {
 	size_t from = past->line_before + (past->at - past->line);
 
@@ -66,13 +67,12 @@ static unsigned column_above(const struct past *past)
 
 unsigned contexts_lines(const struct past *past, struct view *view)
 {
-	unsigned n = look_orders(past, view);
+	unsigned n = look_orders(past, view, 4);
 	unsigned c1 = past->last8 & 255;
 	unsigned field = past->fields[0], above = field_above(past), kind;
 	uint64_t in_field = pair(past->field_hash, field);
 
 	add(view, &n, pair(past->word, c1));
-	add(view, &n, pair(past->word, past->word1) + c1);
 	add(view, &n, pair(column_above(past), last_bytes(past, 2)));
 	add(view, &n, in_field);
 	add(view, &n, pair(in_field, past->field_hash1));
@@ -82,6 +82,5 @@ unsigned contexts_lines(const struct past *past, struct view *view)
 	view->select[2] = (uint16_t)((field * 8 + kind) % SET_ROWS);
 	if (past->plan.strength == STRENGTH_NIGHTLY)
 		return n;
-	add(view, &n, pair(past->first, past->line_hash));
-	return n;
+	return contexts_deep_text(past, view, n);
 }

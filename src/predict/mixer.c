@@ -5,6 +5,7 @@
 void mixer_restart(struct mixer *mixer, int16_t even, int16_t odd)
 {
 	size_t rows = (size_t)SETS * SET_ROWS;
+	uint16_t first[STAGE_ROOM] = {0};
 
 	for (size_t row = 0; row < rows; row++) {
 		int16_t *w = mixer->weights + row * mixer->inputs;
@@ -17,18 +18,18 @@ void mixer_restart(struct mixer *mixer, int16_t even, int16_t odd)
 		for (unsigned i = 0; i < SETS; i++)
 			mixer->final[row][i] = 65536 / SETS;
 	}
-	for (size_t row = 0; row < STAGE_ROWS; row++) {
-		for (int i = 0; i < STAGE_ROOM; i++) {
-			int x = (i - STAGE_ROOM / 2) * STAGE_STEP;
-			size_t at = row * STAGE_ROOM + (size_t)i;
-			uint32_t p;
+	for (int i = 0; i < STAGE_USED; i++) {
+		int x = (i - STAGE_USED / 2) * STAGE_STEP;
 
-			x = x > LOGIT_MAX ? LOGIT_MAX : x;
-			x = x < -LOGIT_MAX ? -LOGIT_MAX : x;
-			p = (uint32_t)mixer->tables.squash[x + LOGIT_MAX];
-			mixer->stage[0][at] = p << 16;
-			mixer->stage[1][at] = p << 16;
-		}
+		x = x > LOGIT_MAX ? LOGIT_MAX : x;
+		x = x < -LOGIT_MAX ? -LOGIT_MAX : x;
+		first[i] = mixer->tables.squash[x + LOGIT_MAX];
+	}
+	for (size_t row = 0; row < STAGE_ROWS; row++) {
+		memcpy(&mixer->stage[0][row * STAGE_ROOM], first,
+		       sizeof(first));
+		memcpy(&mixer->stage[1][row * STAGE_ROOM], first,
+		       sizeof(first));
 	}
 	mixer->seen = 0;
 	mixer->rate = 160;

@@ -15,6 +15,10 @@
 #define RATE_MORE 120
 #define LEARNING_END (1U << 20)
 
+/* Entries of the final stages move by 1/64 of their error. */
+#define STAGE_RATE 6
+#define STAGE_ROUND 63U
+
 ALWAYS_INLINE int32_t logit_clip(int32_t x)
 {
 	if (x > LOGIT_MAX)
@@ -28,28 +32,26 @@ ALWAYS_INLINE int32_t error_of(unsigned p, unsigned bit)
 	return (int32_t)(bit << 16) - (int32_t)p;
 }
 
-ALWAYS_INLINE void stage_predict(struct mixer *mixer, struct mixing *mixing,
-				 unsigned i, unsigned row, unsigned *p)
+ALWAYS_INLINE unsigned stage_predict(struct mixer *mixer, struct mixing *mixing,
+				     unsigned i, size_t row)
 {
-	unsigned at = (unsigned)(mixing->x + STAGE_STEP * (STAGE_ROOM / 2));
+	unsigned at = (unsigned)(mixing->x + STAGE_STEP * (STAGE_USED / 2));
 	unsigned low = at / STAGE_STEP, part = at % STAGE_STEP;
-	uint32_t *entry = &mixer->stage[i][row * STAGE_ROOM + low];
-	uint64_t sum = (uint64_t)entry[0] * (STAGE_STEP - part) +
-		       (uint64_t)entry[1] * part;
+	uint16_t *entry = &mixer->stage[i][row * STAGE_ROOM + low];
 
 	mixing->stage[i] = entry;
 	mixing->nearer[i] = part >= STAGE_STEP / 2;
-	*p = (unsigned)(sum / STAGE_STEP >> 16);
+	return (entry[0] * (STAGE_STEP - part) + entry[1] * part) / STAGE_STEP;
 }
 
+/* Rounded away, so that it gets to the ends. */
 ALWAYS_INLINE void stage_update(struct mixing *mixing, unsigned i, unsigned bit)
 {
-	uint32_t *entry = mixing->stage[i] + mixing->nearer[i];
+	uint16_t *entry = mixing->stage[i] + mixing->nearer[i];
+	unsigned p = *entry;
 
-	if (bit)
-		*entry += (UINT32_MAX - *entry) >> 6;
-	else
-		*entry -= *entry >> 6;
+	*entry = (uint16_t)(bit ? p + ((65535 - p + STAGE_ROUND) >> STAGE_RATE)
+				: p - ((p + STAGE_ROUND) >> STAGE_RATE));
 }
 
 /* Set i with the weights of a row of it. */
@@ -81,10 +83,12 @@ ALWAYS_INLINE void set_update(struct mixer *mixer, struct mixing *mixing,
 ALWAYS_INLINE unsigned match_row(const struct selection *at)
 {
 	unsigned kind = at->step == 0 ? 0 : at->step < 16 ? 1 : 2;
+	/* Of 28 contexts every second counts. */
+	unsigned hits = at->view->hits > 14 ? 14 + (at->view->hits > 21)
+					    : at->view->hits;
 
 	kind += at->step > 27 ? 1 : 0;
-
-	return (kind * 16 + at->view->hits) * 4 + (at->bit >> 1);
+	return (kind * 16 + hits) * 4 + (at->bit >> 1);
 }
 
 ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
@@ -92,9 +96,6 @@ ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
 				   struct mixing *mixing, unsigned inputs)
 {
 	unsigned match = match_row(at);
-	unsigned row0 = (at->view->last * 256U + at->partial) % STAGE_ROWS;
-	unsigned row =
-		(at->view->hash[1] >> 16 ^ at->partial * 0x9e35u) & 0x3fff;
 	int64_t sum;
 	unsigned p0, p1, p;
 
@@ -104,8 +105,10 @@ ALWAYS_INLINE unsigned mix_predict(struct mixer *mixer,
 	sum += set_predict(mixer, mixing, 2, at->view->select[2], inputs);
 	mixing->x = logit_clip((int32_t)(sum >> 16));
 	mixing->p_final = mixer->tables.squash[mixing->x + LOGIT_MAX];
-	stage_predict(mixer, mixing, 0, row0, &p0);
-	stage_predict(mixer, mixing, 1, row, &p1);
+	p0 = stage_predict(mixer, mixing, 0,
+			   stage_row(at->view, 0, at->partial));
+	p1 = stage_predict(mixer, mixing, 1,
+			   stage_row(at->view, 1, at->partial));
 	p = (mixing->p_final + p0 + 2 * p1 + 2) >> 2;
 	return p < 1 ? 1 : p > 65535 ? 65535 : p;
 }

@@ -14,10 +14,14 @@
 
 #define SETS 3
 
-/* Final stages: interpolated tables over the logistic domain. */
+/*
+ * Final stages: interpolated tables over the logistic domain, a row a cache
+ * line; 25 of its 32 entries are used.
+ */
 #define STAGE_STEP 256
-#define STAGE_ROOM 25
-#define STAGE_ROWS 16384
+#define STAGE_USED 25
+#define STAGE_ROOM 32
+#define STAGE_ROWS 4096
 
 /* Bytes between which the passes of predictor_measure_q32 alternate. */
 #define CHUNK 16
@@ -30,7 +34,7 @@ struct mixing {
 	int32_t dot[SETS];
 	int32_t x; /* of the final mixer */
 	unsigned p[SETS], p_final;
-	uint32_t *stage[2]; /* lower of the two entries used */
+	uint16_t *stage[2]; /* lower of the two entries used */
 	unsigned nearer[2]; /* which of them is nearer */
 };
 
@@ -49,7 +53,7 @@ struct mixer {
 	unsigned inputs;
 	int16_t *weights; /* owned; SETS x SET_ROWS x inputs */
 	int32_t final[SET_ROWS][SETS];
-	uint32_t stage[2][STAGE_ROWS * STAGE_ROOM];
+	_Alignas(64) uint16_t stage[2][STAGE_ROWS * STAGE_ROOM];
 	uint32_t seen; /* decisions, up to the end of fast learning */
 	int32_t rate;  /* of learning, by seen */
 };
@@ -106,7 +110,9 @@ struct predictor {
 	const struct lanes *lanes;
 	struct past past;
 	unsigned contexts;
-	uint8_t *lines; /* owned; contexts x lines_each lines */
+	uint8_t *lines_block; /* owned; holds lines */
+	uint8_t *lines;       /* contexts x lines_each, aligned */
+	bool fresh;           /* lines are zero as they came */
 	unsigned lines_log2;
 	uint32_t trend[CONTEXTS_MAX][256]; /* by bit history */
 	uint16_t order0[256];

@@ -23,6 +23,21 @@ struct chunk {
 /* How far ahead of the past its match table is called for. */
 #define WARM 24
 
+/* Calls for the rows of the final stages that a byte's bits go through. */
+static void warm_stages(const struct predictor *p, const struct view *view,
+			unsigned byte)
+{
+	for (unsigned bit = 0; bit < 8; bit++) {
+		unsigned partial = (byte | 256) >> (8 - bit);
+
+		for (unsigned i = 0; i < 2; i++)
+			__builtin_prefetch(
+				&p->mixer.stage[i][stage_row(view, i, partial) *
+						   STAGE_ROOM],
+				1);
+	}
+}
+
 /* Takes the views of the bytes at hand, and calls for their lines. */
 static void look_ahead(struct predictor *p, size_t from, size_t end,
 		       struct view *views)
@@ -42,6 +57,7 @@ static void look_ahead(struct predictor *p, size_t from, size_t end,
 		if (view->lane &&
 		    view->expected[0] == (uint8_t)(bytes[i] - view->base))
 			continue;
+		warm_stages(p, view, (uint8_t)(bytes[i] - view->base));
 		for (unsigned k = 0; k < p->contexts; k++)
 			__builtin_prefetch(
 				context_lines(p, k) +
@@ -184,6 +200,8 @@ ALWAYS_INLINE void run_common(struct predictor *p, const struct chunk *chunk,
 			      size_t width)
 {
 	const int16_t *stretch = p->mixer.tables.stretch;
+	/* Without a second match its input is 0 from the beginning. */
+	bool second = p->past.match[1].table != NULL;
 	int16_t *inputs = p->chunk_inputs + width - COMMON;
 
 	for (size_t i = 0; i < chunk->actives; i++) {
@@ -193,7 +211,8 @@ ALWAYS_INLINE void run_common(struct predictor *p, const struct chunk *chunk,
 		bool failed = chunk->lane_failed[at];
 
 		run_match(p, view, 0, byte, failed, inputs + 2, width);
-		run_match(p, view, 1, byte, failed, inputs + 4, width);
+		if (second)
+			run_match(p, view, 1, byte, failed, inputs + 4, width);
 		for (unsigned bit = 0; bit < 8; bit++) {
 			unsigned partial = (byte | 256) >> (8 - bit);
 			unsigned value = byte >> (7 - bit) & 1;

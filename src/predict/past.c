@@ -6,8 +6,13 @@
 
 #include <string.h>
 
-/* Matches this long have their next byte coded in one decision. */
+/*
+ * Matches this long have their next byte coded in one decision: quick, and
+ * the costlier the shorter they are.
+ */
 #define LANE_LENGTH 20
+#define LANE_LENGTH_BINARY 24
+#define LANE_LENGTH_DEEP 40
 /* A match shorter than this gives way to a longer one. */
 #define FIRM_LENGTH 16
 #define MISSES_MAX 8
@@ -57,9 +62,18 @@ static void match_restart(struct match *match)
 	match->length = match->misses = 0;
 }
 
+static uint32_t lane_length(const struct predict_plan *plan)
+{
+	if (plan->strength == STRENGTH_DEEP)
+		return LANE_LENGTH_DEEP;
+	return plan->family == FAMILY_BINARY ? LANE_LENGTH_BINARY : LANE_LENGTH;
+}
+
 void past_restart(struct past *past, const uint8_t *bytes)
 {
-	struct past fresh = {.plan = past->plan, .bytes = bytes};
+	struct past fresh = {.plan = past->plan,
+			     .bytes = bytes,
+			     .lane_length = lane_length(&past->plan)};
 
 	match_restart(&past->match[0]);
 	match_restart(&past->match[1]);
@@ -203,9 +217,12 @@ void past_push(struct past *past)
 	past->at++;
 	past->before8 = past->before8 << 8 | past->last8 >> 56;
 	past->last8 = past->last8 << 8 | c;
-	if (past->plan.family <= FAMILY_BINARY)
+	if (past->plan.family <= FAMILY_BINARY ||
+	    past->plan.strength == STRENGTH_DEEP)
 		push_word(past, c);
-	if (past->plan.family == FAMILY_LINES)
+	if (past->plan.family == FAMILY_LINES ||
+	    (past->plan.family == FAMILY_PROSE &&
+	     past->plan.strength == STRENGTH_DEEP))
 		push_line(past, c);
 	match_push(&past->match[0], past->bytes, past->at, past->last8);
 	if (past->match[1].table)
@@ -225,7 +242,7 @@ void past_look(const struct past *past, struct view *view)
 	}
 	view->hits = 0;
 	view->last = (uint8_t)past->last8;
-	view->lane = match[0].at && match[0].length >= LANE_LENGTH;
+	view->lane = match[0].at && match[0].length >= past->lane_length;
 	contexts_look(past, view);
 }
 
@@ -244,11 +261,12 @@ void past_warm(const struct past *past, const uint8_t *bytes, size_t position)
 /* More where each tells something new; even numbers, taken two by two. */
 unsigned past_contexts(const struct predict_plan *plan)
 {
-	static const unsigned nightly[FAMILY_COUNT] = {
-		[FAMILY_PROSE] = 12,  [FAMILY_LINES] = 12, [FAMILY_BINARY] = 10,
-		[FAMILY_RECORDS] = 8, [FAMILY_FIELDS] = 8, [FAMILY_IMAGE] = 8,
+	static const unsigned counts[FAMILY_COUNT][2] = {
+		[FAMILY_PROSE] = {12, 28},  [FAMILY_LINES] = {10, 28},
+		[FAMILY_BINARY] = {10, 28}, [FAMILY_RECORDS] = {8, 28},
+		[FAMILY_FIELDS] = {8, 8},   [FAMILY_IMAGE] = {8, 14},
+		[FAMILY_FLAT] = {2, 2},
 	};
 
-	return plan->strength == STRENGTH_DEEP ? CONTEXTS_DEEP
-					       : nightly[plan->family];
+	return counts[plan->family][plan->strength == STRENGTH_DEEP];
 }

@@ -6,7 +6,6 @@
 
 #include "base/status.h"
 
-#define CONTEXTS_DEEP 14
 #define CONTEXTS_MAX 30
 #define FIELDS_MAX 32
 #define SELECTORS 3
@@ -59,6 +58,7 @@ struct past {
 	uint8_t rest[RESTS]; /* by position modulo RESTS */
 	int carry;           /* into the next byte: -1, 0, 1 */
 	struct match match[2];
+	uint32_t lane_length; /* of a match that makes a lane */
 };
 
 MUST_USE enum status past_init(struct past *past,

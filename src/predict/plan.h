@@ -62,7 +62,8 @@ struct plan_request {
 MUST_USE enum status plan_choose(const struct plan_request *request,
 				 struct predict_plan *plan);
 
-/* Sets the columns of a plan of FAMILY_FIELDS from the bytes (fields.c). */
+/* Sets the columns of a plan of FAMILY_FIELDS from the bytes
+ * (contexts_fields.c). */
 void fields_choose(struct predict_plan *plan, const uint8_t *bytes,
 		   size_t count);
 

@@ -9,6 +9,10 @@
 
 #include <assert.h>
 
+/* Sums of the weights that contexts start with, in 2^-14. */
+#define FIRST_WEIGHTS 36000U
+#define FIRST_SHARES 6000U
+
 /* Lines of a context: enough for the bytes at hand, within the memory given. */
 static unsigned lines_log2_for(const struct predict_plan *plan)
 {
@@ -24,8 +28,13 @@ static MUST_USE enum status predictor_allocate(struct predictor *made)
 	size_t inputs = made->mixer.inputs;
 
 	TRY(past_init(&made->past, &made->plan));
-	TRY(memory_new_lines((size_t)made->contexts << made->lines_log2,
-			     LINE_BYTES, &made->lines));
+	/* One line more than used, to begin at a multiple of their size. */
+	TRY(memory_new_zeroed(((size_t)made->contexts << made->lines_log2) + 1,
+			      LINE_BYTES, &made->lines_block));
+	made->lines =
+		(uint8_t *)(((uintptr_t)made->lines_block + LINE_BYTES - 1) &
+			    ~(uintptr_t)(LINE_BYTES - 1));
+	made->fresh = true;
 	TRY(memory_new_lines((size_t)SETS * SET_ROWS * inputs, sizeof(int16_t),
 			     &made->mixer.weights));
 	TRY(memory_new_lines(65536, sizeof(uint16_t), &made->order1));
@@ -42,6 +51,8 @@ enum status predictor_new(const struct predict_plan *plan,
 
 	TRY(memory_new_lines(1, sizeof(*made), &made));
 	made->plan = *plan;
+	if (made->plan.stride == 0)
+		made->plan.stride = 1;
 	made->contexts = past_contexts(plan);
 	made->lines_log2 = lines_log2_for(plan);
 	made->mixer.inputs =
@@ -65,7 +76,7 @@ void predictor_free(struct predictor *predictor)
 		return;
 	bases_free(predictor->bases);
 	past_release(&predictor->past);
-	memory_free(predictor->lines);
+	memory_free(predictor->lines_block);
 	memory_free(predictor->mixer.weights);
 	memory_free(predictor->order1);
 	memory_free(predictor->views);
@@ -91,10 +102,16 @@ void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 		return;
 	}
 	past_restart(&predictor->past, bytes);
-	memset(predictor->lines, 0,
-	       ((size_t)predictor->contexts << predictor->lines_log2) *
-		       LINE_BYTES);
-	mixer_restart(&predictor->mixer, 3600, 512);
+	/* New ones are zeroed, and not yet touched. */
+	if (!predictor->fresh)
+		memset(predictor->lines, 0,
+		       ((size_t)predictor->contexts << predictor->lines_log2) *
+			       LINE_BYTES);
+	predictor->fresh = false;
+	/* The more contexts, the less each says at first. */
+	mixer_restart(&predictor->mixer,
+		      (int16_t)(FIRST_WEIGHTS / predictor->contexts),
+		      (int16_t)(FIRST_SHARES / predictor->contexts));
 	for (unsigned i = 0; i < CONTEXTS_MAX; i++)
 		memcpy(predictor->trend[i], tables->start,
 		       sizeof(tables->start));
