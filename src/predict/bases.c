@@ -253,7 +253,7 @@ static void gather_inputs(struct bases *b)
 		b->trend_at[i] = trend;
 		*input++ = tables->stretch[*trend >> 4];
 		*input++ =
-			count ? (int16_t)(tables->stretch[cell >> 4] / 2) : 0;
+			(int16_t)(count ? tables->stretch[cell >> 4] / 2 : 0);
 	}
 	for (unsigned i = 0; i < DENSE; i++)
 		*input++ = tables->stretch[b->dense_at[i][b->node] >> 20];
