@@ -1,7 +1,7 @@
 #include "predict/plan.h"
 
-#include "predict/bases.h"
 #include "predict/predictor.h"
+#include "predict/strands.h"
 
 #include "base/log2.h"
 
