@@ -398,13 +398,3 @@ int64_t bases_measure_q32(struct bases *b, size_t count)
 	}
 	return tally_q32(&b->tally) - before;
 }
-
-bool bases_only(const uint8_t *bytes, size_t count)
-{
-	for (size_t i = 0; i < count; i++) {
-		if (bytes[i] != 'A' && bytes[i] != 'C' && bytes[i] != 'G' &&
-		    bytes[i] != 'T')
-			return false;
-	}
-	return true;
-}

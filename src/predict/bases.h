@@ -23,7 +23,4 @@ bool bases_update(struct bases *bases, unsigned decision, uint8_t *byte);
 int64_t bases_measure_q32(struct bases *bases, size_t count);
 void bases_set_plain(struct bases *bases, bool plain);
 
-/* True where every byte is one of A, C, G, T. */
-bool bases_only(const uint8_t *bytes, size_t count);
-
 #endif

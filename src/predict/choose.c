@@ -1,19 +1,26 @@
 #include "predict/plan.h"
 
-#include "predict/bases.h"
 #include "predict/predictor.h"
+#include "predict/strands.h"
 
 #include "base/log2.h"
 
 #include <string.h>
 
 /* Samples are this share of the bytes, within limits. */
-#define SAMPLE_SHARE 128
-#define SAMPLE_LEAST 6144
-#define SAMPLE_MOST 49152
+#define SAMPLE_SHARE 64
+#define SAMPLE_LEAST 8192
+#define SAMPLE_MOST 98304
 
-/* By so much the family of fields must beat the others on samples. */
-#define FIELDS_PERCENT 5
+/*
+ * In percent, by how much a family must beat the others on samples. Fields
+ * learn faster than others, which catch up; lines are for numbers, and prose
+ * is for letters, as far as samples do not tell them apart.
+ */
+#define FIELDS_HANDICAP 5
+#define TEXT_HANDICAP 4
+/* Digits in percent of bytes from which text is one of numbers. */
+#define DIGITS_MANY 20
 
 static bool has_stride(enum predict_family family)
 {
@@ -49,12 +56,22 @@ static unsigned text_percent(const uint64_t histogram[256], size_t count)
 	return (unsigned)(text * 100 / count);
 }
 
+static unsigned digits_percent(const uint64_t histogram[256], size_t count)
+{
+	uint64_t digits = 0;
+
+	for (unsigned c = '0'; c <= '9'; c++)
+		digits += histogram[c];
+	return (unsigned)(digits * 100 / count);
+}
+
 /* A plan on trial: how much its sample costs. */
 struct trial {
 	const struct plan_request *request;
 	struct predict_plan best;
 	int64_t least_q32;
 	size_t sample;
+	unsigned handicap[FAMILY_COUNT];
 };
 
 static MUST_USE enum status
@@ -79,9 +96,7 @@ try_plan(struct trial *trial, enum predict_family family, unsigned stride)
 		cost += predictor_measure_q32(predictor, trial->sample);
 	}
 	predictor_free(predictor);
-	/* Samples flatter it: it learns faster, but then contexts catch up. */
-	if (family == FAMILY_FIELDS)
-		cost += cost / 100 * FIELDS_PERCENT;
+	cost += cost / 100 * trial->handicap[family];
 	if (cost >= trial->least_q32)
 		return STATUS_OK;
 	trial->least_q32 = cost;
@@ -109,7 +124,8 @@ static MUST_USE enum status try_binary(struct trial *trial)
 enum status plan_choose(const struct plan_request *request,
 			struct predict_plan *plan)
 {
-	struct trial trial = {.request = request};
+	struct trial trial = {.request = request,
+			      .handicap[FAMILY_FIELDS] = FIELDS_HANDICAP};
 	uint64_t histogram[256] = {0};
 	size_t sample = request->count / SAMPLE_SHARE;
 	bool text;
@@ -126,6 +142,10 @@ enum status plan_choose(const struct plan_request *request,
 	if (bases_only(request->bytes, request->count)) {
 		trial.best.family = FAMILY_BASES;
 	} else if (text) {
+		trial.handicap[digits_percent(histogram, request->count) >
+					       DIGITS_MANY
+				       ? FAMILY_PROSE
+				       : FAMILY_LINES] = TEXT_HANDICAP;
 		TRY(try_plan(&trial, FAMILY_PROSE, 1));
 		TRY(try_plan(&trial, FAMILY_LINES, 1));
 	} else {

@@ -49,10 +49,10 @@ static inline uint64_t last_bytes(const struct past *past, unsigned n)
 	return past->last8 & (~UINT64_C(0) >> (64 - 8 * n));
 }
 
-/* The byte n before the next one, 1..; 0 before the beginning. */
+/* The byte n before the next one; 0 before the beginning, and for n of 0. */
 static inline unsigned byte_before(const struct past *past, size_t n)
 {
-	return n <= past->at ? past->bytes[past->at - n] : 0;
+	return n - 1 < past->at ? past->bytes[past->at - n] : 0;
 }
 
 static inline bool is_word_byte(unsigned c)

@@ -37,12 +37,12 @@ unsigned contexts_deep_text(const struct past *past, struct view *view,
 	add(view, &n, pair(past->word, last & 0xffff));
 	add(view, &n, pair(past->first, past->word) + c1);
 	add(view, &n, pair(column_above(past), c1));
-	add(view, &n, pair(past->field_hash, past->field_hash1) + field);
-	add(view, &n, pair(field * 512 + field_above(past), last & 0xffff));
 	if (past->plan.family == FAMILY_LINES)
-		add(view, &n, pair(expectation(view, 0), c1));
+		add(view, &n, pair(past->at - past->line, c1));
 	else
-		add(view, &n, pair(field_above(past), past->field_hash));
+		add(view, &n, pair(past->at - past->line, past->word));
+	add(view, &n, pair(field * 512 + field_above(past), last & 0xffff));
+	add(view, &n, pair(expectation(view, 0), c1));
 	return n;
 }
 

@@ -56,7 +56,7 @@ void fields_push(struct past *past, uint8_t byte)
 
 static uint64_t rest_before(const struct past *past, size_t n)
 {
-	return n <= past->at ? past->rest[(past->at - n) % RESTS] : 0;
+	return n - 1 < past->at ? past->rest[(past->at - n) % RESTS] : 0;
 }
 
 static void add(struct view *view, unsigned *n, unsigned phase, uint64_t value)

@@ -33,12 +33,18 @@ unsigned contexts_prose(const struct past *past, struct view *view)
 	add(view, &n, pair(past->word, c1));
 	add(view, &n, pair(past->word, past->word1) + c1);
 	add(view, &n, pair(pair(past->word, past->word1), past->word2) + c1);
-	/* Letters of two bytes and more want twice the order. */
-	if (past->last8 & 0x80808080)
+	if (past->last8 & 0x80808080) {
+		/* Letters of two bytes and more want twice the order. */
+		view->hash[4] = context_hash(
+			4, pair(past->last8, past->before8 & 0xffff));
 		add(view, &n, pair(past->last8, past->before8 & 0xffffffff));
-	else
+		add(view, &n,
+		    pair(view->expected[0] * 32U + view->match_step[0], c1));
+	} else {
 		add(view, &n, pair(past->word, past->word2) + c1);
-	add(view, &n, pair(view->expected[0] * 32U + view->match_step[0], c1));
+		/* Where a line is likely to end. */
+		add(view, &n, pair(past->at - past->line, c1));
+	}
 	view->select[2] = (uint16_t)c1;
 	if (past->plan.strength == STRENGTH_NIGHTLY)
 		return n;

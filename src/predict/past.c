@@ -220,9 +220,7 @@ void past_push(struct past *past)
 	if (past->plan.family <= FAMILY_BINARY ||
 	    past->plan.strength == STRENGTH_DEEP)
 		push_word(past, c);
-	if (past->plan.family == FAMILY_LINES ||
-	    (past->plan.family == FAMILY_PROSE &&
-	     past->plan.strength == STRENGTH_DEEP))
+	if (past->plan.family <= FAMILY_LINES)
 		push_line(past, c);
 	match_push(&past->match[0], past->bytes, past->at, past->last8);
 	if (past->match[1].table)

@@ -150,3 +150,13 @@ void repeats_warm(const struct repeats *repeats, const struct strands *strands)
 	__builtin_prefetch(entry(
 		repeats, strands_opposite(strands, REPEAT_ORDER), &check));
 }
+
+bool bases_only(const uint8_t *bytes, size_t count)
+{
+	for (size_t i = 0; i < count; i++) {
+		if (bytes[i] != 'A' && bytes[i] != 'C' && bytes[i] != 'G' &&
+		    bytes[i] != 'T')
+			return false;
+	}
+	return true;
+}

@@ -76,4 +76,7 @@ unsigned repeats_step(const struct repeats *repeats, unsigned i);
 /* Warms the cache for a push with these strands. */
 void repeats_warm(const struct repeats *repeats, const struct strands *strands);
 
+/* True where every byte is one of A, C, G, T. */
+bool bases_only(const uint8_t *bytes, size_t count);
+
 #endif
