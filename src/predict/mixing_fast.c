@@ -53,7 +53,7 @@ ALWAYS_INLINE void lanes_train(const int16_t *inputs, int16_t *weights,
 #define LANES_PREDICT fast_predict
 #define LANES_UPDATE fast_update
 #define LANES_BYTE fast_byte
-#include "predict/mixing.h"
+#include "predict/mixing.inc"
 
 #ifdef __clang__
 #pragma clang attribute pop

@@ -25,7 +25,7 @@ ALWAYS_INLINE void lanes_train(const int16_t *inputs, int16_t *weights,
 #define LANES_PREDICT plain_predict
 #define LANES_UPDATE plain_update
 #define LANES_BYTE plain_byte
-#include "predict/mixing.h"
+#include "predict/mixing.inc"
 
 const struct lanes lanes_plain = {
 	.predict = plain_predict,
