@@ -2,6 +2,8 @@
 
 #include "base/memory.h"
 
+#include <string.h>
+
 void method_fact_release(struct method_fact *method)
 {
 	memory_free(method->reason);
@@ -29,6 +31,16 @@ void corpus_fact_release(struct corpus_fact *corpus)
 	memory_free(corpus->reason);
 	memory_free(corpus->origin);
 	*corpus = (struct corpus_fact){.reason = NULL};
+}
+
+const struct corpus_fact *survey_corpus(const struct survey *survey,
+					const char *name)
+{
+	for (size_t i = 0; i < survey->corpus_count; i++) {
+		if (strcmp(survey->corpora[i].name, name) == 0)
+			return &survey->corpora[i];
+	}
+	return NULL;
 }
 
 void survey_release(struct survey *survey)

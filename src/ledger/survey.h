@@ -78,6 +78,10 @@ struct survey {
 	size_t corpus_count;
 };
 
+/* The corpus of that name; NULL where the survey has none. */
+const struct corpus_fact *survey_corpus(const struct survey *survey,
+					const char *name);
+
 /* Each accepts an initialised-empty one. */
 void method_fact_release(struct method_fact *method);
 void cell_fact_release(struct cell_fact *cell);

@@ -39,30 +39,6 @@ enum status resume_digest(const struct plan *plan,
 	return status;
 }
 
-static const struct corpus_fact *corpus_of(const struct survey *survey,
-					   const char *name)
-{
-	for (size_t i = 0; i < survey->corpus_count; i++) {
-		if (strcmp(survey->corpora[i].name, name) == 0)
-			return &survey->corpora[i];
-	}
-	return NULL;
-}
-
-static bool holds_cell(const struct corpus_fact *corpus,
-		       const struct plan_cell *cell)
-{
-	for (size_t i = 0; i < corpus->cell_count; i++) {
-		const struct cell_fact *fact = &corpus->cells[i];
-
-		if (strcmp(fact->key.codec, cell->codec->name) == 0 &&
-		    strcmp(fact->key.level, cell->setting.text) == 0 &&
-		    fact->page_bytes == cell->page_bytes)
-			return true;
-	}
-	return false;
-}
-
 static bool holds_rows(const struct corpus_fact *corpus,
 		       const struct plan_rows *rows)
 {
@@ -82,11 +58,11 @@ bool resume_holds(const struct survey *held, const struct plan *plan,
 		  const struct plan_item *item)
 {
 	const struct corpus_fact *corpus =
-		corpus_of(held, plan->set->corpora[item->corpus].name);
+		survey_corpus(held, plan->set->corpora[item->corpus].name);
 
 	if (!corpus || corpus->outcome != OUTCOME_DONE)
 		return false;
-	return item->cell ? holds_cell(corpus, item->cell)
+	return item->cell ? plan_cell_held(corpus, item->cell) != NULL
 			  : holds_rows(corpus, item->rows);
 }
 

@@ -19,20 +19,6 @@ struct timed {
 static const struct cell_clock clock_of_thread = {thread_cpu_seconds,
 						  wall_seconds};
 
-static const struct cell_fact *find_cell(const struct corpus_fact *corpus,
-					 const struct plan_cell *cell)
-{
-	for (size_t i = 0; i < corpus->cell_count; i++) {
-		const struct cell_fact *fact = &corpus->cells[i];
-
-		if (strcmp(fact->key.codec, cell->codec->name) == 0 &&
-		    strcmp(fact->key.level, cell->setting.text) == 0 &&
-		    fact->page_bytes == cell->page_bytes)
-			return fact;
-	}
-	return NULL;
-}
-
 /* The cells of a corpus that are good and not timed yet. */
 static size_t choose(const struct timing_job *job, size_t corpus,
 		     const struct corpus_fact *held, struct timed *timed)
@@ -45,7 +31,7 @@ static size_t choose(const struct timing_job *job, size_t corpus,
 
 		if (item->corpus != corpus || !item->cell)
 			continue;
-		fact = find_cell(held, item->cell);
+		fact = plan_cell_held(held, item->cell);
 		if (!fact || fact->outcome != OUTCOME_DONE || fact->timed)
 			continue;
 		timed[count++] = (struct timed){.item = item};
@@ -161,23 +147,13 @@ static MUST_USE enum status time_cells(const struct timing_job *job,
 	return STATUS_OK;
 }
 
-static const struct corpus_fact *find_corpus(const struct survey *held,
-					     const char *name)
-{
-	for (size_t i = 0; i < held->corpus_count; i++) {
-		if (strcmp(held->corpora[i].name, name) == 0)
-			return &held->corpora[i];
-	}
-	return NULL;
-}
-
 static MUST_USE enum status time_corpus(const struct timing_job *job,
 					size_t corpus,
 					const struct survey *held,
 					struct timed *timed, struct reason *why)
 {
 	const struct set_corpus *declared = &job->plan->set->corpora[corpus];
-	const struct corpus_fact *fact = find_corpus(held, declared->name);
+	const struct corpus_fact *fact = survey_corpus(held, declared->name);
 	struct resident resident;
 	size_t count;
 	enum status status;

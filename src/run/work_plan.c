@@ -345,3 +345,17 @@ void plan_release(struct plan *plan)
 	memory_free(plan->items);
 	*plan = (struct plan){0};
 }
+
+const struct cell_fact *plan_cell_held(const struct corpus_fact *corpus,
+				       const struct plan_cell *cell)
+{
+	for (size_t i = 0; i < corpus->cell_count; i++) {
+		const struct cell_fact *fact = &corpus->cells[i];
+
+		if (strcmp(fact->key.codec, cell->codec->name) == 0 &&
+		    strcmp(fact->key.level, cell->setting.text) == 0 &&
+		    fact->page_bytes == cell->page_bytes)
+			return fact;
+	}
+	return NULL;
+}

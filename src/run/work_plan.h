@@ -6,6 +6,7 @@
 #include "codec/codec.h"
 #include "corpus/set_file.h"
 #include "estimate/estimator.h"
+#include "ledger/survey.h"
 
 #define PLAN_ROWS_MAX 8
 #define PLAN_NAMES_MAX 64
@@ -67,5 +68,9 @@ MUST_USE enum status plan_init(struct plan *plan, const struct set *set,
 			       const struct selection *selection,
 			       struct reason *why);
 void plan_release(struct plan *plan);
+
+/* What a survey holds of a planned cell; NULL where it is not there yet. */
+const struct cell_fact *plan_cell_held(const struct corpus_fact *corpus,
+				       const struct plan_cell *cell);
 
 #endif
