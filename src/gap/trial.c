@@ -17,7 +17,8 @@ static struct trial_row *add_row(struct trial *trial, const char *name,
 		return NULL;
 	*row = (struct trial_row){.known = true,
 				  .bits_per_symbol = bits_per_symbol};
-	(void)snprintf(row->name, sizeof(row->name), "%s", name);
+	(void)snprintf(row->name, sizeof(row->name), "%.*s",
+		       (int)sizeof(row->name) - 1, name);
 	trial->row_count++;
 	return row;
 }
