@@ -46,6 +46,10 @@ unsigned contexts_prose(const struct past *past, struct view *view)
 		add(view, &n, pair(past->at - past->line, c1));
 	}
 	view->select[2] = (uint16_t)c1;
+	if (c1 >= 0xc0 && c1 < 0xe0) {
+		view->select[2] = 0xc0 | (past->last8 >> 8 & 63);
+		view->last = (uint8_t)view->select[2];
+	}
 	if (past->plan.strength == STRENGTH_NIGHTLY)
 		return n;
 	return contexts_deep_text(past, view, n);

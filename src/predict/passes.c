@@ -22,6 +22,8 @@ struct chunk {
 
 /* How far ahead of the past its match table is called for. */
 #define WARM 24
+/* Bytes of a chunk by which the final stages' rows are called for. */
+#define AHEAD 2
 
 /* Calls for the rows of the final stages that a byte's bits go through. */
 static void warm_stages(const struct predictor *p, const struct view *view,
@@ -57,7 +59,6 @@ static void look_ahead(struct predictor *p, size_t from, size_t end,
 		if (view->lane &&
 		    view->expected[0] == (uint8_t)(bytes[i] - view->base))
 			continue;
-		warm_stages(p, view, (uint8_t)(bytes[i] - view->base));
 		for (unsigned k = 0; k < p->contexts; k++)
 			__builtin_prefetch(
 				context_lines(p, k) +
@@ -261,9 +262,17 @@ static void run_chunk(struct predictor *p, struct chunk *chunk)
 	for (unsigned k = 0; k < p->contexts; k += 2)
 		deep ? duo_deep(p, chunk, k) : duo_nightly(p, chunk, k);
 	deep ? common_deep(p, chunk) : common_nightly(p, chunk);
+	for (size_t i = 0; i < AHEAD && i < chunk->actives; i++)
+		warm_stages(p, &chunk->views[chunk->active[i]],
+			    chunk->bytes[chunk->active[i]]);
 	for (size_t i = 0; i < chunk->actives; i++) {
 		unsigned at = chunk->active[i];
 
+		if (i + AHEAD < chunk->actives) {
+			unsigned next = chunk->active[i + AHEAD];
+
+			warm_stages(p, &chunk->views[next], chunk->bytes[next]);
+		}
 		p->lanes->byte(&p->mixer, &chunk->views[at], chunk->bytes[at],
 			       chunk->lane_failed[at],
 			       p->chunk_inputs + i * 8 * width, &p->tally);

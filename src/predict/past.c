@@ -240,7 +240,7 @@ void past_look(const struct past *past, struct view *view)
 	}
 	view->hits = 0;
 	view->last = (uint8_t)past->last8;
-	view->lane = match[0].at && match[0].length >= past->lane_length;
+	view->lane = match[0].at && match[0].length >= past->lane_length + ((past->last8 & 0x80808080) && past->plan.family <= FAMILY_LINES ? 8 : 0);
 	contexts_look(past, view);
 }
 

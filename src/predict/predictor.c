@@ -18,7 +18,7 @@ static unsigned lines_log2_for(const struct predict_plan *plan)
 {
 	unsigned most = plan->strength == STRENGTH_DEEP ? 19 : 18, log2 = 8;
 
-	while (log2 < most && ((size_t)2 << log2) < plan->bytes)
+	while (log2 < most && ((size_t)4 << log2) < plan->bytes)
 		log2++;
 	return log2;
 }
