@@ -123,6 +123,10 @@ void contexts_look(const struct past *past, struct view *view)
 		n = contexts_binary(past, view);
 		break;
 	}
+	if (past->plan.strength == STRENGTH_DEEP) {
+		view->select[3] = (uint16_t)(past->last8 >> 8 & 255);
+		view->select[4] = (uint16_t)((past->last8 >> 5 & 7) | (past->last8 >> 10 & 0x38) | (past->last8 >> 15 & 0xc0));
+	}
 	while (n < all)
 		view->hash[n++] = 0;
 }

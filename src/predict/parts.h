@@ -12,7 +12,10 @@
 #define INPUTS_MAX INPUTS_DEEP
 #define COMMON 6 /* order 0, order 1, match (2), second match, constant */
 
-#define SETS 3
+/* Weight sets of a mixer: as many as select them (past.h). */
+#define SETS_NIGHTLY 3
+#define SETS_DEEP 5
+#define SETS_MAX SETS_DEEP
 
 /*
  * Final stages: interpolated tables over the logistic domain, a row a cache
@@ -29,11 +32,11 @@
 /* One decision's way through the mixer, from prediction to update. */
 struct mixing {
 	const int16_t *inputs;
-	int16_t *weights[SETS];
+	int16_t *weights[SETS_MAX];
 	int32_t *final;
-	int32_t dot[SETS];
+	int32_t dot[SETS_MAX];
 	int32_t x; /* of the final mixer */
-	unsigned p[SETS], p_final;
+	unsigned p[SETS_MAX], p_final;
 	uint16_t *stage[2]; /* lower of the two entries used */
 	unsigned nearer[2]; /* which of them is nearer */
 };
@@ -50,9 +53,9 @@ struct selection {
 /* The mixer's weights and final stages. */
 struct mixer {
 	struct predict_tables tables;
-	unsigned inputs;
-	int16_t *weights; /* owned; SETS x SET_ROWS x inputs */
-	int32_t final[SET_ROWS][SETS];
+	unsigned inputs, sets;
+	int16_t *weights; /* owned; sets x SET_ROWS x inputs */
+	int32_t final[SET_ROWS][SETS_MAX];
 	_Alignas(64) uint16_t stage[2][STAGE_ROWS * STAGE_ROOM];
 	uint32_t seen; /* decisions, up to the end of fast learning */
 	int32_t rate;  /* of learning, by seen */

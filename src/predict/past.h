@@ -8,7 +8,7 @@
 
 #define CONTEXTS_MAX 30
 #define FIELDS_MAX 32
-#define SELECTORS 3
+#define SELECTORS 5
 /* Weight sets by partial byte, by match and bit, by the family: so many each.
  */
 #define SET_ROWS 256

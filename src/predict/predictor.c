@@ -18,7 +18,7 @@ static unsigned lines_log2_for(const struct predict_plan *plan)
 {
 	unsigned most = plan->strength == STRENGTH_DEEP ? 19 : 18, log2 = 8;
 
-	while (log2 < most && ((size_t)4 << log2) < plan->bytes)
+	while (log2 < most && ((plan->strength == STRENGTH_DEEP ? (size_t)2 : (size_t)4) << log2) < plan->bytes)
 		log2++;
 	return log2;
 }
@@ -35,7 +35,7 @@ static MUST_USE enum status predictor_allocate(struct predictor *made)
 		(uint8_t *)(((uintptr_t)made->lines_block + LINE_BYTES - 1) &
 			    ~(uintptr_t)(LINE_BYTES - 1));
 	made->fresh = true;
-	TRY(memory_new_lines((size_t)SETS * SET_ROWS * inputs, sizeof(int16_t),
+	TRY(memory_new_lines((size_t)made->mixer.sets * SET_ROWS * inputs, sizeof(int16_t),
 			     &made->mixer.weights));
 	TRY(memory_new_lines(65536, sizeof(uint16_t), &made->order1));
 	TRY(memory_new(2 * CHUNK, sizeof(*made->views), &made->views));
@@ -57,6 +57,8 @@ enum status predictor_new(const struct predict_plan *plan,
 	made->lines_log2 = lines_log2_for(plan);
 	made->mixer.inputs =
 		plan->strength == STRENGTH_DEEP ? INPUTS_DEEP : INPUTS_NIGHTLY;
+	made->mixer.sets =
+		plan->strength == STRENGTH_DEEP ? SETS_DEEP : SETS_NIGHTLY;
 	assert(2 * made->contexts + COMMON <= made->mixer.inputs);
 	tables_build(&made->mixer.tables);
 	predictor_set_lanes(made, LANES_BEST);
