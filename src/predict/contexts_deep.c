@@ -37,8 +37,12 @@ unsigned contexts_deep_text(const struct past *past, struct view *view,
 	add(view, &n, pair(past->word, last & 0xffff));
 	add(view, &n, pair(past->first, past->word) + c1);
 	add(view, &n, pair(column_above(past), c1));
-	if (past->plan.family == FAMILY_LINES)
+	if (past->plan.family == FAMILY_LINES) {
+		unsigned next = forecast_byte(past) * 2 + past->forecast.holds;
+
 		add(view, &n, pair(past->at - past->line, c1));
+		add(view, &n, pair(field * 1024 + next, field_above(past)));
+	}
 	else
 		add(view, &n, pair(past->at - past->line, past->word));
 	add(view, &n, pair(field * 512 + field_above(past), last & 0xffff));

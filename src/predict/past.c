@@ -180,8 +180,9 @@ static void begin_line(struct past *past)
 {
 	unsigned fields = past->fields[0];
 
-	memcpy(past->field_start[1], past->field_start[0],
-	       sizeof(past->field_start[0]));
+	memmove(past->field_start[1], past->field_start[0],
+		(LINES_KEPT - 1) * sizeof(past->field_start[0]));
+	past->fields[2] = past->fields[1];
 	past->fields[1] = fields;
 	past->fields[0] = 0;
 	past->field_start[0][0] = past->at;
@@ -190,6 +191,7 @@ static void begin_line(struct past *past)
 	past->first = 0;
 	past->line_hash = 0;
 	past->field_hash = past->field_hash1 = 0;
+	forecast_begin(past);
 }
 
 static void push_line(struct past *past, unsigned c)
@@ -204,6 +206,7 @@ static void push_line(struct past *past, unsigned c)
 		past->first = indent << 8 | c;
 	}
 	past->line_hash = (past->line_hash + c + 1) * UINT32_C(0x2c9277b5);
+	forecast_push(past, c);
 	if (!is_field_end(c)) {
 		past->field_hash =
 			(past->field_hash + c + 1) * UINT32_C(0x2c9277b5);
@@ -213,6 +216,7 @@ static void push_line(struct past *past, unsigned c)
 		past->field_start[0][++past->fields[0]] = past->at;
 	past->field_hash1 = past->field_hash;
 	past->field_hash = 0;
+	forecast_begin(past);
 }
 
 void past_push(struct past *past)

@@ -42,6 +42,16 @@ struct match {
 /* Rests of the last records: bytes less their bases. */
 #define RESTS 256
 
+#define LINES_KEPT 3
+#define FORECAST_MAX 24
+
+/* The field under way, as the numbers in the two lines before go on. */
+struct forecast {
+	unsigned length; /* 0: none */
+	bool holds;      /* so far the field is as forecast */
+	uint8_t text[FORECAST_MAX];
+};
+
 struct past {
 	struct predict_plan plan;
 	const uint8_t *bytes; /* borrowed; the first at are read, no more */
@@ -52,8 +62,10 @@ struct past {
 	size_t line, line_before;    /* where this line and that before begin */
 	uint32_t line_hash;
 	uint32_t first; /* first byte that is no blank, and indent */
-	size_t field_start[2][FIELDS_MAX + 1];
-	unsigned fields[2]; /* begun in this line, and in that before */
+	/* this line, that before, and that before it */
+	size_t field_start[LINES_KEPT][FIELDS_MAX + 1];
+	unsigned fields[LINES_KEPT]; /* begun in each */
+	struct forecast forecast;
 	uint32_t field_hash, field_hash1;
 	uint8_t rest[RESTS]; /* by position modulo RESTS */
 	int carry;           /* into the next byte: -1, 0, 1 */
