@@ -35,7 +35,7 @@ unsigned column_above(const struct past *past);
  */
 void forecast_begin(struct past *past);
 void forecast_push(struct past *past, unsigned c);
-unsigned forecast_byte(const struct past *past);
+unsigned forecast_byte(const struct past *past, unsigned i);
 
 /* For FAMILY_FIELDS: takes a byte in; the base of the next one. */
 void fields_push(struct past *past, uint8_t byte);

@@ -43,53 +43,63 @@ static bool number_read(const struct past *past, unsigned line, unsigned field,
 	return number->digits != 0;
 }
 
+/* Writes value in the way that the number above stands. */
+static void forecast_write(struct forecast *forecast, struct number number,
+			   int64_t value)
+{
+	if (value < 0)
+		return;
+	forecast->length = number.length;
+	memcpy(forecast->text, number.text, number.length);
+	for (unsigned i = number.length; i-- > 0 && (value || number.digits);) {
+		unsigned c = number.text[i];
+		bool digit = c >= '0' && c <= '9';
+
+		/* A digit more goes where the line had a blank. */
+		if (!digit && (c != ' ' || number.digits))
+			continue;
+		forecast->text[i] = (uint8_t)('0' + value % 10);
+		value /= 10;
+		number.digits -= digit;
+	}
+}
+
 void forecast_begin(struct past *past)
 {
-	struct forecast *forecast = &past->forecast;
+	struct forecast *forecast = past->forecast;
 	unsigned field = past->fields[0];
 	struct number one, two;
-	int64_t next;
 
-	forecast->length = 0;
-	forecast->holds = true;
-	if (!number_read(past, 1, field, &one) ||
-	    !number_read(past, 2, field, &two) || one.length != two.length)
-		return;
-	next = 2 * one.value - two.value;
-	if (next < 0)
-		return;
-	forecast->length = one.length;
-	memcpy(forecast->text, one.text, one.length);
-	for (unsigned i = one.length; i-- > 0 && (next || one.digits);) {
-		unsigned c = one.text[i];
-
-		if (c >= '0' && c <= '9') {
-			forecast->text[i] = (uint8_t)('0' + next % 10);
-			next /= 10;
-			one.digits--;
-		} else if (c == ' ' && !one.digits) {
-			/* A digit more goes where the line had a blank. */
-			forecast->text[i] = (uint8_t)('0' + next % 10);
-			next /= 10;
-		}
+	for (unsigned i = 0; i < FORECASTS; i++) {
+		forecast[i].length = 0;
+		forecast[i].holds = true;
 	}
+	if (!number_read(past, 1, field, &one))
+		return;
+	if (number_read(past, 2, field, &two) && one.length == two.length)
+		forecast_write(&forecast[0], one, 2 * one.value - two.value);
+	if (number_read(past, 1, field + 1, &two))
+		forecast_write(&forecast[1], one, one.value + two.value);
 }
 
 void forecast_push(struct past *past, unsigned c)
 {
-	struct forecast *forecast = &past->forecast;
 	size_t offset = past->at - 1 - past->field_start[0][past->fields[0]];
 
-	if (offset < forecast->length && forecast->text[offset] != c)
-		forecast->holds = false;
+	for (unsigned i = 0; i < FORECASTS; i++) {
+		struct forecast *forecast = &past->forecast[i];
+
+		if (offset < forecast->length && forecast->text[offset] != c)
+			forecast->holds = false;
+	}
 }
 
-unsigned forecast_byte(const struct past *past)
+unsigned forecast_byte(const struct past *past, unsigned i)
 {
-	const struct forecast *forecast = &past->forecast;
+	const struct forecast *forecast = &past->forecast[i];
 	size_t offset = past->at - past->field_start[0][past->fields[0]];
 
 	if (offset >= forecast->length)
-		return 256;
-	return forecast->text[offset];
+		return 512;
+	return forecast->text[offset] * 2U + forecast->holds;
 }

@@ -44,6 +44,7 @@ struct match {
 
 #define LINES_KEPT 3
 #define FORECAST_MAX 24
+#define FORECASTS 2
 
 /* The field under way, as the numbers in the two lines before go on. */
 struct forecast {
@@ -65,7 +66,7 @@ struct past {
 	/* this line, that before, and that before it */
 	size_t field_start[LINES_KEPT][FIELDS_MAX + 1];
 	unsigned fields[LINES_KEPT]; /* begun in each */
-	struct forecast forecast;
+	struct forecast forecast[FORECASTS];
 	uint32_t field_hash, field_hash1;
 	uint8_t rest[RESTS]; /* by position modulo RESTS */
 	int carry;           /* into the next byte: -1, 0, 1 */
