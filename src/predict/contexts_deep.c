@@ -39,11 +39,10 @@ unsigned contexts_deep_text(const struct past *past, struct view *view,
 	add(view, &n, pair(column_above(past), c1));
 	if (past->plan.family == FAMILY_LINES) {
 		unsigned next = forecast_byte(past, 0);
-		unsigned other = forecast_byte(past, 1);
 
 		add(view, &n, pair(past->at - past->line, c1));
 		add(view, &n, pair(field * 1024 + next, field_above(past)));
-		view->hash[n - 3] = context_hash(n - 3, pair(field * 1024 + other, next));
+		view->hash[n - 3] = context_hash(n - 3, last_bytes(past, 4));
 	}
 	else
 		add(view, &n, pair(past->at - past->line, past->word));
