@@ -145,6 +145,7 @@ enum status bases_new(const struct predict_plan *plan, struct bases **bases)
 	tables_build(&made->mixer.tables);
 	made->mixer.inputs = INPUTS_NIGHTLY;
 	made->mixer.sets = SETS_NIGHTLY;
+	made->mixer.rate_last = 40;
 	bases_set_plain(made, false);
 	status = bases_allocate(made, plan->bytes);
 	if (status != STATUS_OK) {

@@ -32,7 +32,7 @@ void mixer_restart(struct mixer *mixer, int16_t even, int16_t odd)
 		       sizeof(first));
 	}
 	mixer->seen = 0;
-	mixer->rate = 160;
+	mixer->rate = mixer->rate_last + RATE_MORE;
 }
 
 int64_t tally_q32(const struct tally *tally)

@@ -50,6 +50,9 @@ struct selection {
 	const struct view *view;
 };
 
+/* By so much larger are the steps of the weights at first. */
+#define RATE_MORE 120
+
 /* The mixer's weights and final stages. */
 struct mixer {
 	struct predict_tables tables;
@@ -58,7 +61,11 @@ struct mixer {
 	int32_t final[SET_ROWS][SETS_MAX];
 	_Alignas(64) uint16_t stage[2][STAGE_ROWS * STAGE_ROOM];
 	uint32_t seen; /* decisions, up to the end of fast learning */
-	int32_t rate;  /* of learning, by seen */
+	/*
+	 * Steps of the weights, in 2^-10 of error times input: now, and in the
+	 * end.
+	 */
+	int32_t rate, rate_last;
 };
 
 /* Decisions whose product of probabilities has yet to be turned into bits. */

@@ -23,6 +23,14 @@ static unsigned lines_log2_for(const struct predict_plan *plan)
 	return log2;
 }
 
+/* Prose changes least as it goes on, and deep mixers have most to weigh. */
+static int32_t rate_last_for(const struct predict_plan *plan)
+{
+	if (plan->family != FAMILY_PROSE)
+		return plan->strength == STRENGTH_DEEP ? 60 : 90;
+	return plan->strength == STRENGTH_DEEP ? 28 : 40;
+}
+
 static MUST_USE enum status predictor_allocate(struct predictor *made)
 {
 	size_t inputs = made->mixer.inputs;
@@ -59,6 +67,7 @@ enum status predictor_new(const struct predict_plan *plan,
 		plan->strength == STRENGTH_DEEP ? INPUTS_DEEP : INPUTS_NIGHTLY;
 	made->mixer.sets =
 		plan->strength == STRENGTH_DEEP ? SETS_DEEP : SETS_NIGHTLY;
+	made->mixer.rate_last = rate_last_for(plan);
 	assert(2 * made->contexts + COMMON <= made->mixer.inputs);
 	tables_build(&made->mixer.tables);
 	predictor_set_lanes(made, LANES_BEST);
