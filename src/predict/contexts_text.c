@@ -81,8 +81,8 @@ unsigned contexts_lines(const struct past *past, struct view *view)
 	unsigned c1 = past->last8 & 255;
 	unsigned field = past->fields[0], above = field_above(past), kind;
 	uint64_t in_field = pair(past->field_hash, field);
-	uint64_t forecasts = pair(forecast_byte(past, 0) * 1024U +
-					  forecast_byte(past, 1), field);
+	uint64_t forecasts = pair(
+		forecast_byte(past, 0) * 1024U + forecast_byte(past, 1), field);
 
 	/* In the place of order 4, which lanes ask as well. */
 	view->hash[3] = context_hash(3, pair(forecasts, above));

@@ -141,9 +141,11 @@ struct predictor {
 	unsigned partial, bit;
 	_Alignas(64) int16_t inputs[INPUTS_MAX];
 	/* passes */
-	struct tally tally;
-	struct view *views;    /* owned; 2 x CHUNK */
-	int16_t *chunk_inputs; /* owned; CHUNK x 8 x inputs */
+	struct tally tally, lane_tally;
+	unsigned threads;
+	struct journal *journal; /* owned; NULL: nothing to go back to */
+	struct view *views;      /* owned; 2 x CHUNK */
+	int16_t *chunk_inputs;   /* owned; CHUNK x 8 x inputs */
 };
 
 static inline void tally_add(struct tally *tally, unsigned p16)

@@ -253,8 +253,22 @@ void past_look(const struct past *past, struct view *view)
 	}
 	view->hits = 0;
 	view->last = (uint8_t)past->last8;
-	view->lane = match[0].at && match[0].length >= past->lane_length + ((past->last8 & 0x80808080) && past->plan.family <= FAMILY_LINES ? 8 : 0);
+	view->lane =
+		match[0].at &&
+		match[0].length >= past->lane_length +
+					   ((past->last8 & 0x80808080) &&
+							    past->plan.family <=
+								    FAMILY_LINES
+						    ? 8
+						    : 0);
 	contexts_look(past, view);
+}
+
+size_t past_match_entry(const struct past *past, unsigned i)
+{
+	return match_entry(&past->match[i],
+			   past->last8 << 8 | past->bytes[past->at],
+			   past->before8 << 8 | past->last8 >> 56);
 }
 
 void past_warm(const struct past *past, const uint8_t *bytes, size_t position)

@@ -85,6 +85,9 @@ void past_look(const struct past *past, struct view *view);
 /* Contexts that the plan has. */
 unsigned past_contexts(const struct predict_plan *plan);
 
+/* The entry of match i that past_push will set for the byte at bytes[at]. */
+size_t past_match_entry(const struct past *past, unsigned i);
+
 /* Warms the cache for a push of the byte at position; changes nothing. */
 void past_warm(const struct past *past, const uint8_t *bytes, size_t position);
 

@@ -2,6 +2,7 @@
 
 #include "predict/bases.h"
 #include "predict/components.h"
+#include "predict/journal.h"
 #include "predict/steps.h"
 
 #include "base/log2.h"
@@ -18,7 +19,9 @@ static unsigned lines_log2_for(const struct predict_plan *plan)
 {
 	unsigned most = plan->strength == STRENGTH_DEEP ? 19 : 18, log2 = 8;
 
-	while (log2 < most && ((plan->strength == STRENGTH_DEEP ? (size_t)2 : (size_t)4) << log2) < plan->bytes)
+	while (log2 < most &&
+	       ((plan->strength == STRENGTH_DEEP ? (size_t)2 : (size_t)4)
+		<< log2) < plan->bytes)
 		log2++;
 	return log2;
 }
@@ -43,8 +46,8 @@ static MUST_USE enum status predictor_allocate(struct predictor *made)
 		(uint8_t *)(((uintptr_t)made->lines_block + LINE_BYTES - 1) &
 			    ~(uintptr_t)(LINE_BYTES - 1));
 	made->fresh = true;
-	TRY(memory_new_lines((size_t)made->mixer.sets * SET_ROWS * inputs, sizeof(int16_t),
-			     &made->mixer.weights));
+	TRY(memory_new_lines((size_t)made->mixer.sets * SET_ROWS * inputs,
+			     sizeof(int16_t), &made->mixer.weights));
 	TRY(memory_new_lines(65536, sizeof(uint16_t), &made->order1));
 	TRY(memory_new(2 * CHUNK, sizeof(*made->views), &made->views));
 	return memory_new_lines(CHUNK * 8 * inputs, sizeof(int16_t),
@@ -86,6 +89,7 @@ void predictor_free(struct predictor *predictor)
 	if (!predictor)
 		return;
 	bases_free(predictor->bases);
+	journal_free(predictor->journal);
 	past_release(&predictor->past);
 	memory_free(predictor->lines_block);
 	memory_free(predictor->mixer.weights);
@@ -104,6 +108,11 @@ void predictor_set_lanes(struct predictor *predictor, enum predict_lanes lanes)
 	predictor->lanes = lanes == LANES_BEST && fast ? fast : &lanes_plain;
 }
 
+void predictor_set_threads(struct predictor *predictor, unsigned threads)
+{
+	predictor->threads = threads;
+}
+
 void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 {
 	const struct predict_tables *tables = &predictor->mixer.tables;
@@ -112,6 +121,8 @@ void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 		bases_restart(predictor->bases, bytes);
 		return;
 	}
+	journal_free(predictor->journal);
+	predictor->journal = NULL;
 	past_restart(&predictor->past, bytes);
 	/* New ones are zeroed, and not yet touched. */
 	if (!predictor->fresh)
@@ -148,9 +159,31 @@ void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 				(UINT32_MAX / 16 * 15 & ~1023U) | 2;
 	}
 	predictor->tally = (struct tally){.mantissa = UINT64_C(1) << 63};
+	predictor->lane_tally = predictor->tally;
 	predictor->begun = predictor->pending = false;
 	predictor->bit = 0;
 	predictor->partial = 1;
+}
+
+enum status predictor_remember(struct predictor *predictor, size_t bytes)
+{
+	struct journal *journal;
+
+	if (predictor->bases || predictor->plan.family == FAMILY_FLAT)
+		return STATUS_BAD_USAGE;
+	journal_free(predictor->journal);
+	predictor->journal = NULL;
+	TRY(journal_new(predictor, bytes, &journal));
+	predictor->journal = journal;
+	return STATUS_OK;
+}
+
+void predictor_rewind(struct predictor *predictor)
+{
+	struct journal *journal = predictor->journal;
+
+	journal_rewind(journal, predictor);
+	predictor->journal = journal;
 }
 
 static void begin_byte(struct predictor *p)
