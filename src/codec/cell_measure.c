@@ -86,7 +86,7 @@ static MUST_USE enum status count_stream(struct cell_work *work,
 		work->facts->framing_known = 0;
 		return STATUS_OK;
 	}
-	status = work->codec->framing(stream, &framing);
+	status = work->codec->framing(work->setting, stream, &framing);
 	if (status == STATUS_NO_MEMORY)
 		return out_of_memory(why);
 	if (status != STATUS_OK)

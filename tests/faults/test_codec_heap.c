@@ -73,6 +73,7 @@ static enum status count_framing(void *context)
 	const struct fixture *fixture = context;
 	uint64_t framing = 7;
 	enum status status = fixture->codec->framing(
+		&fixture->setting,
 		(struct slice){fixture->packed.bytes, fixture->packed.length},
 		&framing);
 
