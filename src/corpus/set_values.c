@@ -101,6 +101,17 @@ enum status value_feed(const char *text, bool *rolling, struct reason *why)
 	return STATUS_OK;
 }
 
+enum status value_unit(const char *text, size_t *bytes, struct reason *why)
+{
+	if (strcmp(text, "512") != 0 && strcmp(text, "4096") != 0)
+		return reason_give(why, STATUS_BAD_USAGE,
+				   "\"%s\" is no unit of storage; write 512 or "
+				   "4096, in bytes",
+				   text);
+	*bytes = text[0] == '5' ? 512 : 4096;
+	return STATUS_OK;
+}
+
 enum status value_name(const char *text, char name[SET_NAME_BYTES],
 		       struct reason *why)
 {

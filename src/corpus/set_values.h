@@ -24,6 +24,9 @@ MUST_USE enum status value_records(const char *text, struct symbol_rules *rules,
 /* "fixed" or "rolling". */
 MUST_USE enum status value_feed(const char *text, bool *rolling,
 				struct reason *why);
+/* "512" or "4096" bytes, the units of disks and pages. */
+MUST_USE enum status value_unit(const char *text, size_t *bytes,
+				struct reason *why);
 /* Letters, digits, - _ and ., at most SET_NAME_BYTES - 1. */
 MUST_USE enum status value_name(const char *text, char name[SET_NAME_BYTES],
 				struct reason *why);

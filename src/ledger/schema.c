@@ -76,6 +76,8 @@ const char *const schema_sql[] = {
 	"flushed_q16 INTEGER NOT NULL, block_q16 BLOB NOT NULL,"
 	"encode_memory_bytes INTEGER NOT NULL,"
 	"decode_memory_bytes INTEGER NOT NULL,"
+	"dictionary_bytes INTEGER NOT NULL, storage_unit INTEGER NOT NULL,"
+	"stored_bytes INTEGER NOT NULL,"
 	"PRIMARY KEY (survey, corpus, codec, level, layout)," OF_CORPUS
 		TABLE_END,
 
