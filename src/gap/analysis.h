@@ -14,6 +14,7 @@
 struct interval {
 	bool known;
 	double low, high;        /* bits per symbol */
+	double standard_error;   /* likewise; 0 where not known */
 	double effective_blocks; /* blocks / automatic block length, after the
 				    AR(1) guard; also set on a refusal */
 	unsigned block_length; /* of the circular block bootstrap, in blocks */

@@ -147,6 +147,7 @@ static struct interval shown(const struct bootstrap_result *result,
 {
 	struct interval interval = {
 		.known = result->known,
+		.standard_error = result->known ? result->standard_error : 0,
 		.effective_blocks = result->effective_blocks,
 		.block_length = (unsigned)result->block_length,
 	};

@@ -118,6 +118,12 @@ static enum status identify(struct ledger *ledger, bool *empty,
 				   "ratefloor, or another file",
 				   ledger->path, (long long)schema,
 				   SCHEMA_NUMBER);
+	if (schema >= 1 && schema < SCHEMA_NUMBER)
+		return reason_give(why, STATUS_LEDGER,
+				   "%s: written with ledger schema %lld, this "
+				   "ratefloor keeps %d: survey into a new file",
+				   ledger->path, (long long)schema,
+				   SCHEMA_NUMBER);
 	if (schema < 1)
 		return reason_give(why, STATUS_LEDGER,
 				   "%s: damaged: its schema number is %lld; "

@@ -21,7 +21,7 @@ enum ledger_mode { LEDGER_READ, LEDGER_WRITE };
 /*
  * Opens, and with LEDGER_WRITE creates, the file. STATUS_NOT_FOUND: nothing
  * there to read; STATUS_IO: folder read-only, disk full; STATUS_LEDGER: not a
- * ledger, a newer schema (both numbers named), or in use by another process.
+ * ledger, another schema (both numbers named), or in use by another process.
  * A file that is refused stays as it was. LEDGER_READ works in a folder that
  * cannot be written to.
  */

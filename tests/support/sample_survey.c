@@ -151,6 +151,7 @@ static void sample_done(struct corpus_fact *corpus)
 	corpus->origin = sample_text("ratefloor synth gauge-frames --seed 7");
 	corpus->rate_known = true;
 	corpus->known_rate = 1.5100372;
+	corpus->rolling = true;
 	corpus->blocks = 100;
 	sample_blocks(&corpus->block_symbols, 100, 41943);
 	sample_blocks(&corpus->block_bytes, 100, 83886);
@@ -176,7 +177,10 @@ void sample_survey(struct survey *survey)
 				  .seed = UINT64_C(0xfedcba9876543210),
 				  .orders = 16,
 				  .gap_limit = 0.385,
-				  .yardstick = "zstd 3"};
+				  .yardstick = "zstd 3",
+				  .tolerance = 0.0035,
+				  .speed_tolerance = 0.175,
+				  .set_path = "bay/night.set"};
 	survey->library_count = 2;
 	survey->libraries = sample_array(2, sizeof(*survey->libraries));
 	survey->libraries[0] = (struct library_fact){"zlib", "1.2.13"};
@@ -321,6 +325,7 @@ static void equal_corpora(const struct corpus_fact *got,
 	assert_string_equal(got->origin, wanted->origin);
 	assert_int_equal(got->rate_known, wanted->rate_known);
 	assert_near(got->known_rate, wanted->known_rate, 0);
+	assert_int_equal(got->rolling, wanted->rolling);
 	assert_int_equal(got->blocks, wanted->blocks);
 	for (size_t i = 0; i < wanted->blocks; i++) {
 		assert_int_equal(got->block_symbols[i],
@@ -343,6 +348,9 @@ void sample_assert_equal(const struct survey *got, const struct survey *wanted)
 	assert_int_equal(got->orders, wanted->orders);
 	assert_near(got->gap_limit, wanted->gap_limit, 0);
 	assert_string_equal(got->yardstick, wanted->yardstick);
+	assert_near(got->tolerance, wanted->tolerance, 0);
+	assert_near(got->speed_tolerance, wanted->speed_tolerance, 0);
+	assert_string_equal(got->set_path, wanted->set_path);
 	assert_int_equal(got->library_count, wanted->library_count);
 	for (size_t i = 0; i < wanted->library_count; i++) {
 		assert_string_equal(got->libraries[i].name,
