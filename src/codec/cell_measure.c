@@ -25,6 +25,11 @@ static MUST_USE enum status out_of_memory(struct reason *why)
 	return reason_give(why, STATUS_NO_MEMORY, "out of memory");
 }
 
+static bool flushes(const struct cell_work *work)
+{
+	return work->codec->flushes && !work->setting->never_flushes;
+}
+
 static MUST_USE enum status encode(struct cell_work *work, struct slice input,
 				   const size_t *cuts, size_t cut_count,
 				   uint64_t *piece_bytes, struct reason *why)
@@ -308,7 +313,7 @@ static MUST_USE enum status measure_pages(struct cell_work *work,
 	size_t blocks = work->cuts->blocks;
 	bool small = !blocks || work->page_bytes <= bytes / blocks / 4;
 
-	if (!small && !work->codec->flushes)
+	if (!small && !flushes(work))
 		costs_release(&work->facts->flushed);
 	for (size_t start = 0; start < bytes; start += work->page_bytes) {
 		enum status status = measure_page(work, start, small, why);
@@ -329,7 +334,7 @@ static MUST_USE enum status measure(struct cell_work *work, struct reason *why)
 {
 	const struct slice input = {work->sequence->canonical,
 				    work->sequence->canonical_bytes};
-	bool spread = work->codec->flushes || work->page_bytes;
+	bool spread = flushes(work) || work->page_bytes;
 
 	work->facts->storage_unit = work->setting->storage_unit;
 	work->facts->lossless = 1;

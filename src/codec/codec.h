@@ -22,11 +22,12 @@ struct codec_setting {
 	unsigned threads;                /* zstd: workers of the library */
 	unsigned container;              /* place in the row's list */
 	unsigned memory_level, strategy; /* zlib */
-	unsigned branch_filter;          /* xz: for machine code */
-	unsigned delta_bytes;            /* xz: distance */
-	size_t dictionary_bytes;         /* at most; pages only */
-	size_t storage_unit; /* what is kept takes whole units of so many
-				bytes; 0: as it is. No codec looks at it. */
+	bool never_flushes;      /* where the row does: a filter cannot */
+	unsigned branch_filter;  /* xz: for machine code */
+	unsigned delta_bytes;    /* xz: distance */
+	size_t dictionary_bytes; /* at most; pages only */
+	size_t storage_unit;     /* what is kept takes whole units of so many
+				    bytes; 0: as it is. No codec looks at it. */
 };
 
 /* The words of a set file that make a setting; NULL or "": not given. */

@@ -64,6 +64,8 @@ enum status xz_option(const char *word, struct codec_setting *setting,
 					   "filter",
 					   word, lzma_version_string());
 		setting->branch_filter = i + 1;
+		/* It looks ahead for whole instructions. */
+		setting->never_flushes = true;
 		return STATUS_OK;
 	}
 	return reason_give(why, STATUS_BAD_USAGE, "option '%s': xz has %s",
