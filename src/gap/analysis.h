@@ -79,11 +79,18 @@ struct extrapolation_row {
 	char reason[ANALYSIS_REASON_BYTES];
 };
 
-/* achieved = floor + restart + family + effort + framing, signed. */
+/*
+ * achieved = floor + restart + family + effort + framing, signed. The floor's
+ * own interval is that of struct floor_row; the other terms are differences of
+ * two runs, each with the interval of the paired block series of those two.
+ * A term between a run and itself is 0, exactly; framing is counted, so exact.
+ */
 struct gap_stack {
 	bool known;
 	double floor, restart, family, effort, framing;
 	char best_level[CELL_NAME_BYTES]; /* of this codec at this layout */
+	struct interval restart_interval, family_interval, effort_interval,
+		framing_interval; /* of no meaning unless known */
 };
 
 struct cell_row {

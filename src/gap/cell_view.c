@@ -92,7 +92,7 @@ static enum status fill(const struct corpus_view *view,
 	}
 	fill_figures(view, row);
 	fill_against_floor(&view->floor, row);
-	row->stack = gap_stack_of(view->fact, lengths, row->fact);
+	TRY(gap_stack_find(ground, lengths, row->fact, &row->stack));
 	return fill_intervals(ground, lengths_lowest(lengths, 0), row);
 }
 

@@ -1,8 +1,24 @@
 #include "report/json_parts.h"
 
+#include <stdio.h>
+
 #include "ledger/outcome.h"
 #include "report/json_value.h"
 #include "report/paper.h"
+
+/* name_low, name_high and name_reason of one term. */
+static void put_term_interval(struct json_maker *made, const char *name,
+			      bool known, const struct interval *interval)
+{
+	char key[32];
+
+	(void)snprintf(key, sizeof(key), "%s_low", name);
+	json_put_real(made, key, known && interval->known, interval->low);
+	(void)snprintf(key, sizeof(key), "%s_high", name);
+	json_put_real(made, key, known && interval->known, interval->high);
+	(void)snprintf(key, sizeof(key), "%s_reason", name);
+	json_put_reason(made, key, known ? interval->reason : "");
+}
 
 static json_t *stack_object(const struct cell_row *row)
 {
@@ -17,6 +33,10 @@ static json_t *stack_object(const struct cell_row *row)
 	json_put_real(&made, "effort", known, stack->effort);
 	json_put_real(&made, "framing", known, stack->framing);
 	json_put_reason(&made, "best_level", known ? stack->best_level : "");
+	put_term_interval(&made, "restart", known, &stack->restart_interval);
+	put_term_interval(&made, "family", known, &stack->family_interval);
+	put_term_interval(&made, "effort", known, &stack->effort_interval);
+	put_term_interval(&made, "framing", known, &stack->framing_interval);
 	return json_done(&made);
 }
 

@@ -62,6 +62,10 @@ static void check_cell(const struct corpus_view *view,
 		    row->bits_per_symbol, 1e-12);
 	check_interval(&row->interval, row->bits_per_symbol);
 	check_interval(&row->gap_interval, row->gap);
+	check_interval(&stack->restart_interval, stack->restart);
+	check_interval(&stack->family_interval, stack->family);
+	check_interval(&stack->effort_interval, stack->effort);
+	check_interval(&stack->framing_interval, stack->framing);
 	/* The floor is the lowest, so that no payload lies below it. */
 	if (!row->fact->page_bytes)
 		assert_true(row->payload_bits_per_symbol >=
