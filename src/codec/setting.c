@@ -128,7 +128,7 @@ static MUST_USE enum status set_dictionary(const struct codec *codec,
 				   "16M, like 64K, is wanted",
 				   word);
 	size_format(setting->dictionary_bytes, size);
-	return add_text(setting, " dict:", size, why);
+	return add_text(setting, CELL_DICTIONARY, size, why);
 }
 
 enum status setting_parse(const struct codec *codec,

@@ -18,7 +18,7 @@ MUST_USE enum status value_bits(const char *text, double *bits,
 /* 64 hex digits, kept in lower case. */
 MUST_USE enum status value_digest(const char *text, char sha256[65],
 				  struct reason *why);
-/* "lines" or "17 bytes". */
+/* "lines", "17 bytes" or "2000 in all". */
 MUST_USE enum status value_records(const char *text, struct symbol_rules *rules,
 				   struct reason *why);
 /* "fixed" or "rolling". */

@@ -7,6 +7,9 @@
 
 #define CELL_NAME_BYTES 32
 
+/* What stands in a level's text before the size of a trained dictionary. */
+#define CELL_DICTIONARY " dict:"
+
 /* What to run. level and layout are text: "9", "9e"; "whole" or page bytes. */
 struct cell_key {
 	char codec[CELL_NAME_BYTES];

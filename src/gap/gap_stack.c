@@ -2,21 +2,26 @@
 
 #include <string.h>
 
-/* Lowest payload of the cell's codec at its layout; itself if alone. */
+/*
+ * Lowest payload of the cell's codec at its layout; itself if alone. What a
+ * dictionary wins or loses is then seen in the effort of the cell that has it.
+ */
 static const struct cell_fact *best_level(const struct corpus_fact *fact,
 					  const struct cell_fact *cell)
 {
-	const struct cell_fact *best = cell;
+	const struct cell_fact *best = NULL;
 
 	for (size_t i = 0; i < fact->cell_count; i++) {
 		const struct cell_fact *other = &fact->cells[i];
 
 		if (cell_is_sound(other) && cell_same_codec(other, cell) &&
 		    other->page_bytes == cell->page_bytes &&
-		    cell_payload_bits(other) < cell_payload_bits(best))
+		    !other->facts.dictionary_bytes &&
+		    (!best ||
+		     cell_payload_bits(other) < cell_payload_bits(best)))
 			best = other;
 	}
-	return best;
+	return best ? best : cell;
 }
 
 /* The lengths that the terms lie between, from the lowest to the cell's. */
@@ -68,6 +73,12 @@ static enum status fill(const struct ground *ground, const struct rungs *rungs,
 	stack->floor = rungs->whole->contribution.total_bits / n;
 	stack->framing = 8 * (double)cell->facts.framing_bytes / n;
 	stack->framing_interval = interval_exact(ground, stack->framing);
+	stack->has_storage = cell->facts.storage_unit > 0;
+	if (stack->has_storage)
+		stack->storage = 8 *
+				 ((double)cell->facts.stored_bytes -
+				  (double)cell->facts.bytes) /
+				 n;
 	TRY(term(ground, rungs->here, rungs->whole, &stack->restart,
 		 &stack->restart_interval));
 	TRY(term(ground, &rungs->best, rungs->here, &stack->family,

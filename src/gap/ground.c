@@ -72,10 +72,11 @@ struct contribution contribution_of_cell(const struct cell_fact *cell,
 	if (!cell->facts.flushed.blocks)
 		(void)snprintf(
 			made.reason, sizeof(made.reason),
-			"%s cannot be flushed at block cuts, so its bits "
+			"%s%s%s cannot be flushed at block cuts, so its bits "
 			"cannot be told apart by block; compare it on "
 			"several files of this kind instead",
-			cell->key.codec);
+			cell->key.codec, cell->key.level[0] ? " " : "",
+			cell->key.level);
 	else if (cost > FLUSH_COST_MOST)
 		(void)snprintf(made.reason, sizeof(made.reason),
 			       "flushing at block cuts costs %.1f%%, over the "

@@ -10,19 +10,9 @@
 
 #include <stdio.h>
 #include <stdlib.h>
-#include <sys/resource.h>
 #include <unistd.h>
 
 #define LEDGER "build/bench-run.ledger"
-
-static double process_cpu_seconds(void)
-{
-	struct rusage usage;
-
-	(void)getrusage(RUSAGE_SELF, &usage);
-	return (double)(usage.ru_utime.tv_sec + usage.ru_stime.tv_sec) +
-	       (double)(usage.ru_utime.tv_usec + usage.ru_stime.tv_usec) * 1e-6;
-}
 
 static void fail(const char *what, const struct reason *why)
 {

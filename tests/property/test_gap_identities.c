@@ -34,6 +34,8 @@ static void build(struct survey *survey, uint64_t seed)
 				  pages[i / 6], bytes);
 
 		cell->facts.framing_bytes = random_below(&random, 100);
+		cell->facts.storage_unit = 512;
+		cell->facts.stored_bytes = (bytes + 511) / 512 * 512;
 		if (random_below(&random, 4))
 			tiny_flush(survey, cell, .12 * random_unit(&random), .3,
 				   seed + i);
@@ -58,6 +60,12 @@ static void check_cell(const struct corpus_view *view,
 
 	assert_true(row->known && stack->known);
 	assert_near(sum, row->bits_per_symbol, 1e-12);
+	/* And on to what the units of storage take. */
+	assert_true(stack->has_storage);
+	assert_near(sum + stack->storage,
+		    8 * (double)row->fact->facts.stored_bytes /
+			    (double)view->fact->n,
+		    1e-9);
 	assert_near(view->floor.bits_per_symbol + row->gap,
 		    row->bits_per_symbol, 1e-12);
 	check_interval(&row->interval, row->bits_per_symbol);

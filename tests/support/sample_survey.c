@@ -115,6 +115,8 @@ static void sample_cells(struct corpus_fact *corpus)
 	cells[0].facts.flushed.headline_q16 = INT64_C(77777777777);
 	cells[0].facts.flushed.blocks = corpus->blocks;
 	sample_blocks(&cells[0].facts.flushed.block_q16, corpus->blocks, 41);
+	cells[0].facts.storage_unit = 4096;
+	cells[0].facts.stored_bytes = UINT64_C(5000003584);
 	cells[0].timed = true;
 	cells[0].timing = (struct cell_timing){.rounds = 5,
 					       .encode_cpu_seconds = 2.385,
@@ -124,6 +126,7 @@ static void sample_cells(struct corpus_fact *corpus)
 					       .encode_spread = 0.021,
 					       .decode_spread = 0.047};
 	sample_cell(&cells[1], "house", "", "4096");
+	cells[1].facts.dictionary_bytes = 110213;
 	cells[1].page_bytes = 4096;
 	cells[1].facts.pages = 1024;
 	cells[1].facts.framing_bytes = 0;
@@ -303,6 +306,9 @@ static void equal_cells(const struct cell_fact *got,
 	assert_int_equal(a->flushed_bytes, b->flushed_bytes);
 	assert_int_equal(a->encode_memory_bytes, b->encode_memory_bytes);
 	assert_int_equal(a->decode_memory_bytes, b->decode_memory_bytes);
+	assert_int_equal(a->dictionary_bytes, b->dictionary_bytes);
+	assert_int_equal(a->storage_unit, b->storage_unit);
+	assert_int_equal(a->stored_bytes, b->stored_bytes);
 	assert_int_equal(got->timed, wanted->timed);
 	equal_timings(&got->timing, &wanted->timing);
 }

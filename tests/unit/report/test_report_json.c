@@ -28,13 +28,11 @@ static const char *const floor_keys[] = {"held_by", "bits_per_symbol", "low",
 static const char *const bracket_keys[] = {"low", "high", "open_below",
 					   "not_calibrated", NULL};
 static const char *const stack_keys[] = {
-	"floor",       "restart",      "family",
-	"effort",      "framing",      "best_level",
-	"restart_low", "restart_high", "restart_reason",
-	"family_low",  "family_high",  "family_reason",
-	"effort_low",  "effort_high",  "effort_reason",
-	"framing_low", "framing_high", "framing_reason",
-	NULL};
+	"floor",          "restart",        "family",        "effort",
+	"framing",        "best_level",     "restart_low",   "restart_high",
+	"restart_reason", "family_low",     "family_high",   "family_reason",
+	"effort_low",     "effort_high",    "effort_reason", "framing_low",
+	"framing_high",   "framing_reason", "storage",       NULL};
 static const char *const cell_keys[] = {
 	"codec",
 	"level",
