@@ -46,6 +46,9 @@ static void line(struct grid *grid, struct notes *notes,
 		 figure_signed(row->warm_known, row->cold - row->warm).text);
 }
 
+/* More input than anyone has: a dictionary that saves next to nothing. */
+#define EVEN_MOST 1e15
+
 /*
  * Where it hurts, why: what a dictionary saves on pages is won by the byte,
  * what it takes is paid once, so that more data may turn the answer.
@@ -56,9 +59,10 @@ static void hurt_words(const struct writer *writer,
 {
 	const struct dictionary_row *row = &cell->dictionary;
 	double saved = row->won + row->own;
+	double even = (double)view->fact->canonical_bytes * row->own / saved;
 	char name[4 * CELL_NAME_BYTES];
 
-	if (!row->known || row->won > 0)
+	if (!row->known || !(row->won <= 0))
 		return;
 	(void)snprintf(name, sizeof(name), "%s at %s",
 		       cell_name(cell->fact).text,
@@ -78,8 +82,8 @@ static void hurt_words(const struct writer *writer,
 		"from about %s bytes of input on.",
 		name, figure_bits(true, saved).text,
 		figure_bits(true, row->own).text,
-		figure_count((uint64_t)((double)view->fact->canonical_bytes *
-					row->own / saved))
+		figure_count(even < EVEN_MOST ? (uint64_t)even
+					      : (uint64_t)EVEN_MOST)
 			.text);
 }
 
