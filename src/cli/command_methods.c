@@ -15,6 +15,20 @@ static const char *leaning_words(const struct estimator *row)
 	return "leans to neither side";
 }
 
+static void print_choices(const struct codec *row)
+{
+	if (row->containers) {
+		(void)printf("  %-10s containers", "");
+		for (size_t i = 0; row->containers[i]; i++)
+			(void)printf(" %s", row->containers[i]);
+		(void)printf("\n");
+	}
+	if (row->options)
+		(void)printf("  %-10s options %s\n", "", row->options);
+	if (row->trainer)
+		(void)printf("  %-10s trains dictionaries for pages\n", "");
+}
+
 static enum exit_code methods_run(const struct words *words)
 {
 	(void)words;
@@ -36,6 +50,7 @@ static enum exit_code methods_run(const struct words *words)
 		if (row->version)
 			(void)printf("; library %s", row->version());
 		(void)printf("; %s\n", row->source);
+		print_choices(row);
 	}
 	return EXIT_DONE;
 }

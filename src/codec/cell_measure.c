@@ -3,6 +3,8 @@
 #include <stdio.h>
 #include <string.h>
 
+#include "codec/page_dictionaries.h"
+
 /* What one cell needs while it is measured. */
 struct cell_work {
 	const struct codec *codec;
@@ -13,12 +15,19 @@ struct cell_work {
 	struct cell_facts *facts;
 	struct buffer packed, plain;
 	struct codec_memory encode, decode;
+	struct page_dictionaries dictionaries;
+	const struct codec_dictionary *dictionary; /* of the page at hand */
 	size_t block; /* pages: block of the first byte not yet spread */
 };
 
 static MUST_USE enum status out_of_memory(struct reason *why)
 {
 	return reason_give(why, STATUS_NO_MEMORY, "out of memory");
+}
+
+static bool flushes(const struct cell_work *work)
+{
+	return work->codec->flushes && !work->setting->never_flushes;
 }
 
 static MUST_USE enum status encode(struct cell_work *work, struct slice input,
@@ -29,6 +38,7 @@ static MUST_USE enum status encode(struct cell_work *work, struct slice input,
 		.setting = work->setting,
 		.input = input,
 		.page_bytes = work->page_bytes,
+		.dictionary = work->dictionary,
 		.cuts = cuts,
 		.cut_count = cut_count,
 		.piece_bytes = piece_bytes,
@@ -37,6 +47,33 @@ static MUST_USE enum status encode(struct cell_work *work, struct slice input,
 
 	work->packed.length = 0;
 	return work->codec->encode(&job, &work->packed, why);
+}
+
+/*
+ * A library's own threads may cut the work as they meet it: what they give must
+ * be what they gave, or it is no fact.
+ */
+static MUST_USE enum status encode_again(struct cell_work *work,
+					 struct slice input, struct reason *why)
+{
+	struct buffer first = work->packed;
+	enum status status;
+
+	if (!work->setting->threads)
+		return STATUS_OK;
+	buffer_init(&work->packed, SIZE_MAX / 2);
+	status = encode(work, input, NULL, 0, NULL, why);
+	if (status == STATUS_OK &&
+	    (work->packed.length != first.length ||
+	     memcmp(work->packed.bytes, first.bytes, first.length) != 0))
+		status = reason_give(why, STATUS_CODEC,
+				     "not reproducible: %u threads gave %zu "
+				     "bytes, then other bytes (%zu)",
+				     work->setting->threads, first.length,
+				     work->packed.length);
+	buffer_release(&work->packed);
+	work->packed = first;
+	return status;
 }
 
 static void note_difference(struct cell_work *work, struct slice input,
@@ -61,6 +98,8 @@ static MUST_USE enum status check(struct cell_work *work, struct slice input,
 	const struct codec_job job = {
 		.setting = work->setting,
 		.input = {work->packed.bytes, work->packed.length},
+		.page_bytes = work->page_bytes,
+		.dictionary = work->dictionary,
 		.memory = &work->decode,
 	};
 
@@ -74,6 +113,14 @@ static MUST_USE enum status check(struct cell_work *work, struct slice input,
 	return STATUS_OK;
 }
 
+static void count_stored(struct cell_work *work, uint64_t bytes)
+{
+	uint64_t unit = work->setting->storage_unit;
+
+	if (unit)
+		work->facts->stored_bytes += (bytes + unit - 1) / unit * unit;
+}
+
 static MUST_USE enum status count_stream(struct cell_work *work,
 					 struct reason *why)
 {
@@ -82,11 +129,12 @@ static MUST_USE enum status count_stream(struct cell_work *work,
 	enum status status;
 
 	work->facts->bytes += stream.length;
+	count_stored(work, stream.length);
 	if (!work->codec->framing) {
 		work->facts->framing_known = 0;
 		return STATUS_OK;
 	}
-	status = work->codec->framing(stream, &framing);
+	status = work->codec->framing(work->setting, stream, &framing);
 	if (status == STATUS_NO_MEMORY)
 		return out_of_memory(why);
 	if (status != STATUS_OK)
@@ -136,6 +184,7 @@ static MUST_USE enum status measure_whole(struct cell_work *work,
 
 	work->facts->pages = 1;
 	TRY(encode(work, input, NULL, 0, NULL, why));
+	TRY(encode_again(work, input, why));
 	TRY(count_stream(work, why));
 	TRY(check(work, input, "stream", why));
 	if (!work->facts->lossless || !work->facts->flushed.blocks)
@@ -205,7 +254,10 @@ static MUST_USE enum status measure_page(struct cell_work *work, size_t start,
 	size_t before = work->facts->bytes;
 
 	work->facts->pages++;
+	work->dictionary =
+		page_dictionary(&work->dictionaries, start, work->page_bytes);
 	TRY(encode(work, page, NULL, 0, NULL, why));
+	TRY(encode_again(work, page, why));
 	TRY(count_stream(work, why));
 	TRY(check(work, page, "page", why));
 	if (!work->facts->lossless || !work->facts->flushed.blocks)
@@ -217,6 +269,43 @@ static MUST_USE enum status measure_page(struct cell_work *work, size_t start,
 	return STATUS_OK;
 }
 
+/*
+ * Every byte of the corpus bears the same share of the dictionaries: a reader
+ * needs them whatever page is asked for.
+ */
+static void spread_dictionaries(struct cell_work *work)
+{
+	struct costs *flushed = &work->facts->flushed;
+	const wide_uint all =
+		(wide_uint)work->facts->dictionary_bytes * 8 * BIT_Q16;
+	size_t bytes = work->sequence->canonical_bytes;
+	int64_t given = 0;
+
+	for (size_t i = 0; i < flushed->blocks; i++) {
+		int64_t now = (int64_t)(all * work->cuts->byte[i + 1] / bytes);
+
+		flushed->block_q16[i] += now - given;
+		given = now;
+	}
+	flushed->headline_q16 += given;
+	if (flushed->blocks)
+		work->facts->flushed_bytes += work->facts->dictionary_bytes;
+}
+
+static void count_dictionaries(struct cell_work *work)
+{
+	if (!work->dictionaries.codec)
+		return;
+	for (size_t parity = 0; parity < 2; parity++) {
+		uint64_t bytes = work->dictionaries.bytes[parity].length;
+
+		work->facts->dictionary_bytes += bytes;
+		count_stored(work, bytes);
+	}
+	work->facts->bytes += work->facts->dictionary_bytes;
+	spread_dictionaries(work);
+}
+
 static MUST_USE enum status measure_pages(struct cell_work *work,
 					  struct reason *why)
 {
@@ -224,7 +313,7 @@ static MUST_USE enum status measure_pages(struct cell_work *work,
 	size_t blocks = work->cuts->blocks;
 	bool small = !blocks || work->page_bytes <= bytes / blocks / 4;
 
-	if (!small && !work->codec->flushes)
+	if (!small && !flushes(work))
 		costs_release(&work->facts->flushed);
 	for (size_t start = 0; start < bytes; start += work->page_bytes) {
 		enum status status = measure_page(work, start, small, why);
@@ -243,17 +332,25 @@ static MUST_USE enum status measure_pages(struct cell_work *work,
 
 static MUST_USE enum status measure(struct cell_work *work, struct reason *why)
 {
-	bool spread = work->codec->flushes || work->page_bytes;
+	const struct slice input = {work->sequence->canonical,
+				    work->sequence->canonical_bytes};
+	bool spread = flushes(work) || work->page_bytes;
 
+	work->facts->storage_unit = work->setting->storage_unit;
 	work->facts->lossless = 1;
 	work->facts->framing_known = 1;
 	if (costs_init(&work->facts->flushed,
 		       spread ? work->cuts->blocks : 0) != STATUS_OK)
 		return out_of_memory(why);
-	if (work->page_bytes)
-		TRY(measure_pages(work, why));
-	else
+	if (!work->page_bytes) {
 		TRY(measure_whole(work, why));
+	} else {
+		TRY(page_dictionaries_init(&work->dictionaries, work->codec,
+					   work->setting, input,
+					   work->page_bytes, why));
+		TRY(measure_pages(work, why));
+		count_dictionaries(work);
+	}
 	if (!work->facts->lossless)
 		costs_release(&work->facts->flushed);
 	work->facts->encode_memory_bytes = work->encode.peak_bytes;
@@ -281,6 +378,7 @@ enum status cell_measure(const struct codec *codec,
 	status = measure(&work, why);
 	buffer_release(&work.packed);
 	buffer_release(&work.plain);
+	page_dictionaries_release(&work.dictionaries);
 	if (status == STATUS_OK)
 		*facts = made;
 	else

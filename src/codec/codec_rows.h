@@ -18,7 +18,20 @@ MUST_USE enum status level_number(const char *text, int low, int high,
 				  struct codec_setting *setting,
 				  struct reason *why);
 
-/* Allocation through base that counts bytes; opaque is a codec_memory. */
+/* Likewise for "name:12", the name's colon included; into *value. */
+MUST_USE enum status option_number(const char *word, const char *name, int low,
+				   int high, unsigned *value,
+				   struct reason *why);
+
+/*
+ * "4K", "1M" or plain bytes from low to high; 0 for anything else. And back,
+ * in the shortest of these spellings.
+ */
+size_t size_read(const char *text, size_t low, size_t high);
+void size_format(size_t bytes, char text[CELL_NAME_BYTES]);
+
+/* Allocation through base that counts bytes, from any thread; opaque is a
+ * codec_memory. */
 void *counted_new(struct codec_memory *memory, size_t bytes);
 void counted_free(struct codec_memory *memory, void *block);
 

@@ -20,8 +20,33 @@ enum status level_number(const char *text, int low, int high, const char *what,
 	return STATUS_OK;
 }
 
+enum status option_number(const char *word, const char *name, int low, int high,
+			  unsigned *value, struct reason *why)
+{
+	struct codec_setting number;
+
+	if (level_number(word + strlen(name), low, high, name, &number, NULL) !=
+	    STATUS_OK)
+		return reason_give(why, STATUS_BAD_USAGE,
+				   "option '%s': %s%d to %s%d are options",
+				   word, name, low, name, high);
+	*value = (unsigned)number.level;
+	return STATUS_OK;
+}
+
 /* Room before each block for its size; keeps the alignment of the heap. */
 #define SIZE_ROOM 16
+
+/* A library's own threads allocate, too. */
+static void note_peak(struct codec_memory *memory, uint64_t now)
+{
+	uint64_t peak = __atomic_load_n(&memory->peak_bytes, __ATOMIC_RELAXED);
+
+	while (now > peak && !__atomic_compare_exchange_n(
+				     &memory->peak_bytes, &peak, now, true,
+				     __ATOMIC_RELAXED, __ATOMIC_RELAXED))
+		;
+}
 
 void *counted_new(struct codec_memory *memory, size_t bytes)
 {
@@ -31,9 +56,8 @@ void *counted_new(struct codec_memory *memory, size_t bytes)
 	    memory_new(bytes + SIZE_ROOM, 1, &block) != STATUS_OK)
 		return NULL;
 	memcpy(block, &bytes, sizeof(bytes));
-	memory->current_bytes += bytes;
-	if (memory->current_bytes > memory->peak_bytes)
-		memory->peak_bytes = memory->current_bytes;
+	note_peak(memory, __atomic_add_fetch(&memory->current_bytes, bytes,
+					     __ATOMIC_RELAXED));
 	return block + SIZE_ROOM;
 }
 
@@ -46,7 +70,8 @@ void counted_free(struct codec_memory *memory, void *block)
 		return;
 	start = (uint8_t *)block - SIZE_ROOM;
 	memcpy(&bytes, start, sizeof(bytes));
-	memory->current_bytes -= bytes;
+	(void)__atomic_sub_fetch(&memory->current_bytes, bytes,
+				 __ATOMIC_RELAXED);
 	memory_free(start);
 }
 

@@ -27,8 +27,10 @@ static MUST_USE enum status store_encode(const struct codec_job *job,
 	return STATUS_OK;
 }
 
-static enum status store_framing(struct slice stream, uint64_t *bytes)
+static enum status store_framing(const struct codec_setting *setting,
+				 struct slice stream, uint64_t *bytes)
 {
+	(void)setting;
 	(void)stream;
 	*bytes = 0;
 	return STATUS_OK;

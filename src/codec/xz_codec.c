@@ -1,30 +1,10 @@
-#include "codec/codec_rows.h"
-
-#include <lzma.h>
-#include <stdio.h>
-#include <string.h>
+#include "codec/xz_parts.h"
 
 #define ROOM_BYTES ((size_t)1 << 16)
 
 static const char *xz_version(void)
 {
 	return lzma_version_string();
-}
-
-static MUST_USE enum status
-xz_parse(const char *text, struct codec_setting *setting, struct reason *why)
-{
-	char digit[2] = {text[0], '\0'};
-
-	if (!text[0] || (text[1] && strcmp(text + 1, "e") != 0))
-		return reason_give(why, STATUS_BAD_USAGE,
-				   "level '%s' of xz: 0 to 9, each also with "
-				   "e, are levels",
-				   text);
-	TRY(level_number(digit, 0, 9, "xz (each also with e)", setting, why));
-	setting->extreme = text[1] == 'e';
-	(void)snprintf(setting->text, sizeof(setting->text), "%s", text);
-	return STATUS_OK;
 }
 
 static void *take(void *memory, size_t items, size_t bytes)
@@ -39,6 +19,11 @@ static void *take(void *memory, size_t items, size_t bytes)
 static void give_back(void *memory, void *block)
 {
 	counted_free(memory, block);
+}
+
+lzma_allocator xz_allocator(struct codec_memory *memory)
+{
+	return (lzma_allocator){take, give_back, memory};
 }
 
 static MUST_USE enum status failure(lzma_ret code, struct reason *why)
@@ -113,41 +98,30 @@ static MUST_USE enum status encode_pieces(lzma_stream *stream,
 	return STATUS_OK;
 }
 
-/*
- * For a page the dictionary need not be larger than the page: presets would
- * clear megabytes of tables for each.
- */
-static lzma_ret start_encoder(lzma_stream *stream, uint32_t preset,
-			      size_t page_bytes)
+static lzma_ret start_encoder(lzma_stream *stream, const struct codec_job *job,
+			      struct xz_filters *filters)
 {
-	lzma_options_lzma options;
-	const lzma_filter filters[] = {{LZMA_FILTER_LZMA2, &options},
-				       {LZMA_VLI_UNKNOWN, NULL}};
-
-	if (lzma_lzma_preset(&options, preset))
+	if (!xz_filters_set(job->setting, job->page_bytes, filters))
 		return LZMA_OPTIONS_ERROR;
-	if (page_bytes && page_bytes < options.dict_size)
-		options.dict_size = page_bytes < LZMA_DICT_SIZE_MIN
-					    ? LZMA_DICT_SIZE_MIN
-					    : (uint32_t)page_bytes;
-	return lzma_stream_encoder(stream, filters, LZMA_CHECK_CRC64);
+	if (xz_is_raw(job->setting))
+		return lzma_raw_encoder(stream, filters->chain);
+	return lzma_stream_encoder(stream, filters->chain,
+				   xz_check(job->setting));
 }
 
 static MUST_USE enum status xz_encode(const struct codec_job *job,
 				      struct buffer *out, struct reason *why)
 {
 	struct codec_memory unseen = {0, 0};
-	lzma_allocator allocator = {take, give_back,
-				    job->memory ? job->memory : &unseen};
+	lzma_allocator allocator =
+		xz_allocator(job->memory ? job->memory : &unseen);
 	lzma_stream stream = LZMA_STREAM_INIT;
-	uint32_t preset = (uint32_t)job->setting->level;
+	struct xz_filters filters;
 	enum status status;
 	lzma_ret code;
 
-	if (job->setting->extreme)
-		preset |= LZMA_PRESET_EXTREME;
 	stream.allocator = &allocator;
-	code = start_encoder(&stream, preset, job->page_bytes);
+	code = start_encoder(&stream, job, &filters);
 	if (code != LZMA_OK)
 		return failure(code, why);
 	status = encode_pieces(&stream, job, out, why);
@@ -155,18 +129,34 @@ static MUST_USE enum status xz_encode(const struct codec_job *job,
 	return status;
 }
 
+/*
+ * A stream says how much memory its decoder takes: a hostile one gets no more
+ * than the largest preset's own streams, and a mebibyte for what is around.
+ */
+static lzma_ret start_decoder(lzma_stream *stream, const struct codec_job *job,
+			      struct xz_filters *filters)
+{
+	if (xz_is_raw(job->setting))
+		return xz_filters_set(job->setting, job->page_bytes, filters)
+			       ? lzma_raw_decoder(stream, filters->chain)
+			       : LZMA_OPTIONS_ERROR;
+	return lzma_stream_decoder(
+		stream, lzma_easy_decoder_memusage(9) + ((uint64_t)1 << 20), 0);
+}
+
 static MUST_USE enum status xz_decode(const struct codec_job *job,
 				      struct buffer *out, struct reason *why)
 {
 	struct codec_memory unseen = {0, 0};
-	lzma_allocator allocator = {take, give_back,
-				    job->memory ? job->memory : &unseen};
+	lzma_allocator allocator =
+		xz_allocator(job->memory ? job->memory : &unseen);
 	lzma_stream stream = LZMA_STREAM_INIT;
+	struct xz_filters filters;
 	enum status status;
 	lzma_ret code;
 
 	stream.allocator = &allocator;
-	code = lzma_stream_decoder(&stream, UINT64_MAX, 0);
+	code = start_decoder(&stream, job, &filters);
 	if (code != LZMA_OK)
 		return failure(code, why);
 	stream.next_in = job->input.bytes;
@@ -184,82 +174,6 @@ static MUST_USE enum status xz_decode(const struct codec_job *job,
 	return status;
 }
 
-static enum status unreadable(lzma_ret code)
-{
-	return code == LZMA_MEM_ERROR ? STATUS_NO_MEMORY : STATUS_BAD_INPUT;
-}
-
-/*
- * The .xz file format: stream header and footer, index, and for each block its
- * header, padding and check. All but the compressed data is container.
- */
-static MUST_USE enum status payload_of(const lzma_index *index,
-				       struct slice stream,
-				       const lzma_allocator *allocator,
-				       uint64_t *payload)
-{
-	lzma_index_iter at;
-	lzma_stream_flags flags;
-	lzma_ret code;
-
-	if (lzma_stream_header_decode(&flags, stream.bytes) != LZMA_OK)
-		return STATUS_BAD_INPUT;
-	*payload = 0;
-	lzma_index_iter_init(&at, index);
-	while (!lzma_index_iter_next(&at, LZMA_INDEX_ITER_BLOCK)) {
-		const uint8_t *bytes =
-			stream.bytes + at.block.compressed_file_offset;
-		lzma_filter filters[LZMA_FILTERS_MAX + 1];
-		lzma_block block = {.check = flags.check, .filters = filters};
-
-		uint32_t around;
-
-		block.header_size = lzma_block_header_size_decode(bytes[0]);
-		around = block.header_size + lzma_check_size(flags.check);
-		/* A damaged size must not lead past the block. */
-		if (!bytes[0] || around > at.block.unpadded_size)
-			return STATUS_BAD_INPUT;
-		code = lzma_block_header_decode(&block, allocator, bytes);
-		if (code != LZMA_OK)
-			return unreadable(code);
-		lzma_filters_free(filters, allocator);
-		*payload += at.block.unpadded_size - around;
-	}
-	return STATUS_OK;
-}
-
-static enum status xz_framing(struct slice stream, uint64_t *bytes)
-{
-	struct codec_memory unseen = {0, 0};
-	lzma_allocator allocator = {take, give_back, &unseen};
-	lzma_stream_flags footer;
-	lzma_index *index = NULL;
-	uint64_t limit = UINT64_MAX, payload;
-	size_t position = 0, end = stream.length;
-	lzma_ret code;
-	enum status status;
-
-	if (end < 2 * LZMA_STREAM_HEADER_SIZE ||
-	    lzma_stream_footer_decode(
-		    &footer, stream.bytes + end - LZMA_STREAM_HEADER_SIZE) !=
-		    LZMA_OK ||
-	    footer.backward_size > end - 2 * LZMA_STREAM_HEADER_SIZE)
-		return STATUS_BAD_INPUT;
-	end -= LZMA_STREAM_HEADER_SIZE;
-	position = end - footer.backward_size;
-	code = lzma_index_buffer_decode(&index, &limit, &allocator,
-					stream.bytes, &position, end);
-	if (code != LZMA_OK)
-		return unreadable(code);
-	status = lzma_index_file_size(index) == stream.length
-			 ? payload_of(index, stream, &allocator, &payload)
-			 : STATUS_BAD_INPUT;
-	lzma_index_end(index, &allocator);
-	if (status == STATUS_OK)
-		*bytes = stream.length - payload;
-	return status;
-}
-
 const struct codec codec_xz = {
 	.name = "xz",
 	.summary = "LZMA2 in the .xz container with CRC-64",
@@ -272,4 +186,7 @@ const struct codec codec_xz = {
 	.encode = xz_encode,
 	.decode = xz_decode,
 	.framing = xz_framing,
+	.containers = xz_containers,
+	.options = "x86, arm64 and delta:1 to delta:256",
+	.option = xz_option,
 };

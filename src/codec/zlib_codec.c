@@ -1,9 +1,8 @@
 #include "codec/codec_rows.h"
 
-#include <limits.h>
+#include <string.h>
 #include <zlib.h>
 
-#define WINDOW_BITS 15
 #define MEMORY_LEVEL 8
 /* zlib counts in unsigned int: larger inputs go in pieces of this. */
 #define STEP_BYTES ((size_t)1 << 30)
@@ -18,6 +17,46 @@ static MUST_USE enum status
 zlib_parse(const char *text, struct codec_setting *setting, struct reason *why)
 {
 	return level_number(text, 1, 9, "zlib", setting, why);
+}
+
+enum { ZLIB, GZIP, RAW };
+static const char *const containers[] = {
+	[ZLIB] = "zlib", [GZIP] = "gzip", [RAW] = "raw", NULL};
+
+/* zlib tells containers apart by the number of window bits. */
+static int window_bits(const struct codec_setting *setting)
+{
+	static const int bits[] = {[ZLIB] = MAX_WBITS,
+				   [GZIP] = MAX_WBITS + 16,
+				   [RAW] = -MAX_WBITS};
+
+	return bits[setting->container];
+}
+
+#define MEMORY "memory:"
+
+static MUST_USE enum status
+zlib_option(const char *word, struct codec_setting *setting, struct reason *why)
+{
+	static const struct {
+		const char *name;
+		unsigned strategy;
+	} strategies[] = {{"filtered", Z_FILTERED},
+			  {"huffman", Z_HUFFMAN_ONLY},
+			  {"rle", Z_RLE},
+			  {"fixed", Z_FIXED}};
+
+	if (strncmp(word, MEMORY, strlen(MEMORY)) == 0)
+		return option_number(word, MEMORY, 1, MAX_MEM_LEVEL,
+				     &setting->memory_level, why);
+	for (size_t i = 0; i < sizeof(strategies) / sizeof(*strategies); i++) {
+		if (strcmp(strategies[i].name, word) == 0) {
+			setting->strategy = strategies[i].strategy;
+			return STATUS_OK;
+		}
+	}
+	return reason_give(why, STATUS_BAD_USAGE, "option '%s': zlib has %s",
+			   word, codec_zlib.options);
 }
 
 static void *take(void *memory, unsigned items, unsigned bytes)
@@ -125,8 +164,12 @@ static MUST_USE enum status zlib_encode(const struct codec_job *job,
 	z_stream stream = {.zalloc = take,
 			   .zfree = give_back,
 			   .opaque = job->memory ? job->memory : &unseen};
-	int code = deflateInit2(&stream, job->setting->level, Z_DEFLATED,
-				WINDOW_BITS, MEMORY_LEVEL, Z_DEFAULT_STRATEGY);
+	const struct codec_setting *setting = job->setting;
+	int code = deflateInit2(
+		&stream, setting->level, Z_DEFLATED, window_bits(setting),
+		setting->memory_level ? (int)setting->memory_level
+				      : MEMORY_LEVEL,
+		(int)setting->strategy);
 	enum status status;
 
 	if (code != Z_OK)
@@ -176,7 +219,7 @@ static MUST_USE enum status zlib_decode(const struct codec_job *job,
 	z_stream stream = {.zalloc = take,
 			   .zfree = give_back,
 			   .opaque = job->memory ? job->memory : &unseen};
-	int code = inflateInit2(&stream, WINDOW_BITS);
+	int code = inflateInit2(&stream, window_bits(job->setting));
 	enum status status;
 
 	if (code != Z_OK)
@@ -190,7 +233,7 @@ static MUST_USE enum status zlib_decode(const struct codec_job *job,
  * RFC 1950, section 2.2: CMF, FLG, DICTID where FDICT is set, Adler-32. The
  * header is a multiple of 31, and no Deflate data is shorter than 2 bytes.
  */
-static enum status zlib_framing(struct slice stream, uint64_t *bytes)
+static enum status zlib_frame(struct slice stream, uint64_t *bytes)
 {
 	unsigned header, framing;
 
@@ -205,10 +248,58 @@ static enum status zlib_framing(struct slice stream, uint64_t *bytes)
 	return STATUS_OK;
 }
 
+/* Past a text that ends in a zero byte; the end where there is none. */
+static size_t skip_text(struct slice stream, size_t at)
+{
+	while (at < stream.length && stream.bytes[at])
+		at++;
+	return at < stream.length ? at + 1 : at;
+}
+
+/*
+ * RFC 1952, section 2.3: ten bytes, then what FLG announces (extra field with
+ * its length, name, comment, CRC-16), Deflate data, CRC-32 and size.
+ */
+static enum status gzip_frame(struct slice stream, uint64_t *bytes)
+{
+	const uint8_t *head = stream.bytes;
+	size_t at = 10;
+
+	if (stream.length < 10 + 2 + 8 || head[0] != 0x1f || head[1] != 0x8b ||
+	    head[2] != Z_DEFLATED || head[3] & 0xe0)
+		return STATUS_BAD_INPUT;
+	if (head[3] & 0x04)
+		at += 2 + head[10] + 256U * head[11];
+	if (head[3] & 0x08)
+		at = skip_text(stream, at);
+	if (head[3] & 0x10)
+		at = skip_text(stream, at);
+	if (head[3] & 0x02)
+		at += 2;
+	if (at + 2 + 8 > stream.length)
+		return STATUS_BAD_INPUT;
+	*bytes = at + 8;
+	return STATUS_OK;
+}
+
+static enum status zlib_framing(const struct codec_setting *setting,
+				struct slice stream, uint64_t *bytes)
+{
+	if (setting->container == GZIP)
+		return gzip_frame(stream, bytes);
+	if (setting->container == ZLIB)
+		return zlib_frame(stream, bytes);
+	/* RFC 1951: no header; the shortest stream is two bytes. */
+	if (stream.length < 2)
+		return STATUS_BAD_INPUT;
+	*bytes = 0;
+	return STATUS_OK;
+}
+
 const struct codec codec_zlib = {
 	.name = "zlib",
 	.summary = "Deflate in the zlib container, 32 KiB window",
-	.source = "RFC 1950, RFC 1951",
+	.source = "RFC 1950, RFC 1951, RFC 1952",
 	.levels = "1 to 9",
 	.flushes = true,
 	.work = 0.15,
@@ -217,4 +308,7 @@ const struct codec codec_zlib = {
 	.encode = zlib_encode,
 	.decode = zlib_decode,
 	.framing = zlib_framing,
+	.containers = containers,
+	.options = "memory:1 to memory:9, filtered, huffman, rle and fixed",
+	.option = zlib_option,
 };

@@ -1,43 +1,10 @@
-#include "codec/codec_rows.h"
+#include "codec/zstd_parts.h"
 
-#include <stdio.h>
-#include <stdlib.h>
-#include <string.h>
-
-/* Contexts with an allocator of one's own are in this part of the header. */
-#define ZSTD_STATIC_LINKING_ONLY
-#include <zstd.h>
 #include <zstd_errors.h>
-
-/* "19l": long-distance matching over a window of 2^27 bytes. */
-#define LONG_WINDOW_LOG 27
 
 static const char *zstd_codec_version(void)
 {
 	return ZSTD_versionString();
-}
-
-static MUST_USE enum status
-zstd_parse(const char *text, struct codec_setting *setting, struct reason *why)
-{
-	char number[CELL_NAME_BYTES];
-	size_t length = strlen(text);
-	bool far = length > 1 && text[length - 1] == 'l';
-
-	if (length >= sizeof(number))
-		return reason_give(why, STATUS_BAD_USAGE,
-				   "level '%s' of zstd: too long", text);
-	(void)snprintf(number, sizeof(number), "%.*s",
-		       (int)(far ? length - 1 : length), text);
-	if (strcmp(number, "0") == 0)
-		return reason_give(why, STATUS_BAD_USAGE,
-				   "level '0' of zstd: 0 stands for the "
-				   "library's default; write that level, 3");
-	TRY(level_number(number, ZSTD_minCLevel(), ZSTD_maxCLevel(),
-			 "zstd (each also with l)", setting, why));
-	setting->window_log = far ? LONG_WINDOW_LOG : 0;
-	(void)snprintf(setting->text, sizeof(setting->text), "%s", text);
-	return STATUS_OK;
 }
 
 static void *take(void *memory, size_t bytes)
@@ -50,7 +17,7 @@ static void give_back(void *memory, void *block)
 	counted_free(memory, block);
 }
 
-static MUST_USE enum status failure(size_t code, struct reason *why)
+enum status zstd_failure(size_t code, struct reason *why)
 {
 	if (ZSTD_getErrorCode(code) == ZSTD_error_memory_allocation)
 		return reason_give(why, STATUS_NO_MEMORY,
@@ -76,7 +43,7 @@ static MUST_USE enum status encode_piece(ZSTD_CCtx *context,
 					  out->room - out->length, 0};
 		left = ZSTD_compressStream2(context, &output, input, directive);
 		if (ZSTD_isError(left))
-			return failure(left, why);
+			return zstd_failure(left, why);
 		out->length += output.pos;
 	} while (left);
 	return STATUS_OK;
@@ -104,22 +71,49 @@ static MUST_USE enum status encode_pieces(ZSTD_CCtx *context,
 	return STATUS_OK;
 }
 
+/* One parameter; an earlier failure stays. */
+static void set_parameter(ZSTD_CCtx *context, ZSTD_cParameter parameter,
+			  int value, size_t *code)
+{
+	if (!ZSTD_isError(*code))
+		*code = ZSTD_CCtx_setParameter(context, parameter, value);
+}
+
+static size_t set_level(ZSTD_CCtx *context, const struct codec_setting *setting)
+{
+	size_t code = 0;
+
+	set_parameter(context, ZSTD_c_compressionLevel, setting->level, &code);
+	if (setting->long_distance)
+		set_parameter(context, ZSTD_c_enableLongDistanceMatching, 1,
+			      &code);
+	if (setting->window_log)
+		set_parameter(context, ZSTD_c_windowLog,
+			      (int)setting->window_log, &code);
+	if (setting->threads)
+		set_parameter(context, ZSTD_c_nbWorkers, (int)setting->threads,
+			      &code);
+	return code;
+}
+
 static MUST_USE enum status
 set_up(ZSTD_CCtx *context, const struct codec_job *job, struct reason *why)
 {
 	const struct codec_setting *setting = job->setting;
-	size_t code = ZSTD_CCtx_setParameter(context, ZSTD_c_compressionLevel,
-					     setting->level);
+	size_t code = set_level(context, setting);
 
-	if (!ZSTD_isError(code) && setting->window_log)
-		code = ZSTD_CCtx_setParameter(
-			context, ZSTD_c_enableLongDistanceMatching, 1);
-	if (!ZSTD_isError(code) && setting->window_log)
-		code = ZSTD_CCtx_setParameter(context, ZSTD_c_windowLog,
-					      (int)setting->window_log);
+	set_parameter(context, ZSTD_c_checksumFlag,
+		      setting->container == ZSTD_CHECKSUM, &code);
+	set_parameter(context, ZSTD_c_contentSizeFlag, zstd_has_size(setting),
+		      &code);
+	if (!zstd_has_magic(setting))
+		set_parameter(context, ZSTD_c_format, ZSTD_f_zstd1_magicless,
+			      &code);
 	if (!ZSTD_isError(code))
 		code = ZSTD_CCtx_setPledgedSrcSize(context, job->input.length);
-	return ZSTD_isError(code) ? failure(code, why) : STATUS_OK;
+	if (!ZSTD_isError(code) && job->dictionary)
+		code = ZSTD_CCtx_refCDict(context, job->dictionary->encode);
+	return ZSTD_isError(code) ? zstd_failure(code, why) : STATUS_OK;
 }
 
 static MUST_USE enum status zstd_encode(const struct codec_job *job,
@@ -160,7 +154,7 @@ static MUST_USE enum status decode_all(ZSTD_DCtx *context, struct slice bytes,
 					  out->room - out->length, 0};
 		left = ZSTD_decompressStream(context, &output, &input);
 		if (ZSTD_isError(left))
-			return failure(left, why);
+			return zstd_failure(left, why);
 		out->length += output.pos;
 		if (!left)
 			break;
@@ -178,6 +172,26 @@ static MUST_USE enum status decode_all(ZSTD_DCtx *context, struct slice bytes,
 	return STATUS_OK;
 }
 
+/*
+ * A frame says how large a window its decoder needs: a hostile one gets no more
+ * than the decoder's usual limit, or what this setting's own frames take.
+ */
+static size_t set_decoder(ZSTD_DCtx *context, const struct codec_job *job)
+{
+	unsigned limit = job->setting->window_log;
+	size_t code;
+
+	if (limit < ZSTD_WINDOWLOG_LIMIT_DEFAULT)
+		limit = ZSTD_WINDOWLOG_LIMIT_DEFAULT;
+	code = ZSTD_DCtx_setParameter(context, ZSTD_d_windowLogMax, (int)limit);
+	if (!ZSTD_isError(code) && !zstd_has_magic(job->setting))
+		code = ZSTD_DCtx_setParameter(context, ZSTD_d_format,
+					      ZSTD_f_zstd1_magicless);
+	if (!ZSTD_isError(code) && job->dictionary)
+		code = ZSTD_DCtx_refDDict(context, job->dictionary->decode);
+	return code;
+}
+
 static MUST_USE enum status zstd_decode(const struct codec_job *job,
 					struct buffer *out, struct reason *why)
 {
@@ -191,97 +205,13 @@ static MUST_USE enum status zstd_decode(const struct codec_job *job,
 	if (!context)
 		return reason_give(why, STATUS_NO_MEMORY,
 				   "libzstd: out of memory");
-	code = ZSTD_DCtx_setParameter(
-		context, ZSTD_d_windowLogMax,
-		ZSTD_dParam_getBounds(ZSTD_d_windowLogMax).upperBound);
+	code = set_decoder(context, job);
 	if (ZSTD_isError(code))
-		status = failure(code, why);
+		status = zstd_failure(code, why);
 	if (status == STATUS_OK)
 		status = decode_all(context, job->input, out, why);
 	(void)ZSTD_freeDCtx(context);
 	return status;
-}
-
-static uint32_t little_endian(const uint8_t *bytes, unsigned count)
-{
-	uint32_t value = 0;
-
-	for (unsigned i = count; i > 0; i--)
-		value = value << 8 | bytes[i - 1];
-	return value;
-}
-
-/* RFC 8878, section 3.1.1.2: blocks up to the one that is marked last. */
-static bool skip_blocks(struct slice stream, size_t *at)
-{
-	uint32_t header;
-
-	do {
-		uint32_t type, length;
-
-		if (stream.length - *at < 3)
-			return false;
-		header = little_endian(stream.bytes + *at, 3);
-		*at += 3;
-		type = header >> 1 & 3;
-		/* A run is one byte however long; type 3 is reserved. */
-		length = type == 1 ? 1 : header >> 3;
-		if (type == 3 || stream.length - *at < length)
-			return false;
-		*at += length;
-	} while (!(header & 1));
-	return true;
-}
-
-/* RFC 8878, section 3.1.2: magic, size, content. */
-static bool skip_skippable(struct slice stream, size_t *at, uint64_t *framing)
-{
-	size_t left = stream.length - *at;
-	uint32_t length = little_endian(stream.bytes + *at + 4, 4);
-
-	if (left - 8 < length)
-		return false;
-	*at += 8 + (size_t)length;
-	*framing += 8 + (uint64_t)length;
-	return true;
-}
-
-/* RFC 8878, section 3.1.1: magic, frame header, checksum where flagged. */
-static bool skip_frame(struct slice stream, size_t *at, uint64_t *framing)
-{
-	const uint8_t *bytes = stream.bytes + *at;
-	size_t left = stream.length - *at, header, checksum;
-	uint32_t magic;
-
-	/* No frame is shorter than a skippable one of no content. */
-	if (left < 8)
-		return false;
-	magic = little_endian(bytes, 4);
-	if ((magic & ZSTD_MAGIC_SKIPPABLE_MASK) == ZSTD_MAGIC_SKIPPABLE_START)
-		return skip_skippable(stream, at, framing);
-	header = ZSTD_frameHeaderSize(bytes, left);
-	if (magic != ZSTD_MAGICNUMBER || ZSTD_isError(header) || header > left)
-		return false;
-	checksum = bytes[4] & 0x04 ? 4 : 0;
-	*at += header;
-	if (!skip_blocks(stream, at) || stream.length - *at < checksum)
-		return false;
-	*at += checksum;
-	*framing += header + checksum;
-	return true;
-}
-
-static enum status zstd_framing(struct slice stream, uint64_t *bytes)
-{
-	uint64_t framing = 0;
-	size_t at = 0;
-
-	do {
-		if (!skip_frame(stream, &at, &framing))
-			return STATUS_BAD_INPUT;
-	} while (at < stream.length);
-	*bytes = framing;
-	return STATUS_OK;
 }
 
 const struct codec codec_zstd = {
@@ -296,4 +226,8 @@ const struct codec codec_zstd = {
 	.encode = zstd_encode,
 	.decode = zstd_decode,
 	.framing = zstd_framing,
+	.containers = zstd_containers,
+	.options = "window:10 and up, and threads:1 to threads:64",
+	.option = zstd_option,
+	.trainer = &zstd_trainer,
 };

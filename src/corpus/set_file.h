@@ -59,9 +59,11 @@ struct set {
 	double tolerance;               /* share of achieved bits: 0.003 */
 	double speed_tolerance;         /* 0.15 */
 	char yardstick[SET_NAME_BYTES]; /* "zstd 3", or "" */
-	struct set_corpus *corpora;     /* owned, in the order written */
-	size_t corpus_count;            /* at least 1 */
-	struct set_codec *codecs;       /* owned */
+	size_t storage_unit; /* what is kept takes whole units: 512 or 4096
+				bytes; 0: not asked */
+	struct set_corpus *corpora; /* owned, in the order written */
+	size_t corpus_count;        /* at least 1 */
+	struct set_codec *codecs;   /* owned */
 	size_t codec_count;
 	char *path;   /* owned; of the set file, for messages */
 	char *folder; /* owned; where the set file lies */

@@ -18,6 +18,7 @@ enum value_sort {
 	VALUE_RECORDS,
 	VALUE_DIGEST,
 	VALUE_FEED,
+	VALUE_UNIT,
 	VALUE_LIST
 };
 
@@ -34,6 +35,7 @@ static const struct key set_keys[] = {
 	{"speed-tolerance", VALUE_PERCENT,
 	 offsetof(struct set, speed_tolerance)},
 	{"yardstick", VALUE_SHORT, offsetof(struct set, yardstick)},
+	{"storage-unit", VALUE_UNIT, offsetof(struct set, storage_unit)},
 };
 
 static const struct key corpus_keys[] = {
@@ -152,6 +154,8 @@ enum status key_store(enum section_sort sort, size_t key, void *section,
 		return value_digest(value, field, why);
 	case VALUE_FEED:
 		return value_feed(value, field, why);
+	case VALUE_UNIT:
+		return value_unit(value, field, why);
 	case VALUE_LIST:
 		return value_list(value, field, why);
 	}

@@ -81,11 +81,16 @@ enum status value_records(const char *text, struct symbol_rules *rules,
 	unit += strspn(unit, BLANKS);
 	if (digits && digits < 10)
 		bytes = strtoull(text, NULL, 10);
+	if (bytes && strcmp(unit, "in all") == 0) {
+		rules->record_count = (size_t)bytes;
+		return STATUS_OK;
+	}
 	if (!bytes || (strcmp(unit, "bytes") != 0 && strcmp(unit, "byte") != 0))
-		return reason_give(why, STATUS_BAD_USAGE,
-				   "\"%s\" are no records; write lines, or a "
-				   "width like 17 bytes",
-				   text);
+		return reason_give(
+			why, STATUS_BAD_USAGE,
+			"\"%s\" are no records; write lines, a width "
+			"like 17 bytes, or a number like 2000 in all",
+			text);
 	rules->record_bytes = (size_t)bytes;
 	return STATUS_OK;
 }
@@ -98,6 +103,17 @@ enum status value_feed(const char *text, bool *rolling, struct reason *why)
 				   "bytes every time) or rolling",
 				   text);
 	*rolling = text[0] == 'r';
+	return STATUS_OK;
+}
+
+enum status value_unit(const char *text, size_t *bytes, struct reason *why)
+{
+	if (strcmp(text, "512") != 0 && strcmp(text, "4096") != 0)
+		return reason_give(why, STATUS_BAD_USAGE,
+				   "\"%s\" is no unit of storage; write 512 or "
+				   "4096, in bytes",
+				   text);
+	*bytes = text[0] == '5' ? 512 : 4096;
 	return STATUS_OK;
 }
 

@@ -18,11 +18,14 @@ MUST_USE enum status value_bits(const char *text, double *bits,
 /* 64 hex digits, kept in lower case. */
 MUST_USE enum status value_digest(const char *text, char sha256[65],
 				  struct reason *why);
-/* "lines" or "17 bytes". */
+/* "lines", "17 bytes" or "2000 in all". */
 MUST_USE enum status value_records(const char *text, struct symbol_rules *rules,
 				   struct reason *why);
 /* "fixed" or "rolling". */
 MUST_USE enum status value_feed(const char *text, bool *rolling,
+				struct reason *why);
+/* "512" or "4096" bytes, the units of disks and pages. */
+MUST_USE enum status value_unit(const char *text, size_t *bytes,
 				struct reason *why);
 /* Letters, digits, - _ and ., at most SET_NAME_BYTES - 1. */
 MUST_USE enum status value_name(const char *text, char name[SET_NAME_BYTES],

@@ -7,6 +7,9 @@
 
 #define CELL_NAME_BYTES 32
 
+/* What stands in a level's text before the size of a trained dictionary. */
+#define CELL_DICTIONARY " dict:"
+
 /* What to run. level and layout are text: "9", "9e"; "whole" or page bytes. */
 struct cell_key {
 	char codec[CELL_NAME_BYTES];
@@ -16,11 +19,15 @@ struct cell_key {
 
 struct cell_facts {
 	uint64_t bytes; /* compressed, container included: the headline */
-	uint64_t framing_bytes; /* of these: header, trailer, check, index,
-				   padding */
-	int framing_known;      /* 0 where nobody counts it (framing_bytes 0) */
-	int lossless;           /* decoded and equal, byte for byte */
-	uint64_t pages;         /* 1 for layout "whole" */
+	uint64_t framing_bytes;    /* of these: header, trailer, check, index,
+				      padding */
+	uint64_t dictionary_bytes; /* of these: both dictionaries; payload */
+	uint64_t storage_unit;     /* bytes; 0: stored_bytes is not known */
+	uint64_t stored_bytes;     /* each stream, and each dictionary, in whole
+				      units; not part of bytes */
+	int framing_known; /* 0 where nobody counts it (framing_bytes 0) */
+	int lossless;      /* decoded and equal, byte for byte */
+	uint64_t pages;    /* 1 for layout "whole" */
 	/*
 	 * Bits by resampling block, from a run flushed at the cuts (whole), or
 	 * page bits spread by overlap; block_q16 sums to flushed bytes x 8, not

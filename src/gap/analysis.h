@@ -14,6 +14,7 @@
 struct interval {
 	bool known;
 	double low, high;        /* bits per symbol */
+	double standard_error;   /* likewise; 0 where not known */
 	double effective_blocks; /* blocks / automatic block length, after the
 				    AR(1) guard; also set on a refusal */
 	unsigned block_length; /* of the circular block bootstrap, in blocks */
@@ -78,12 +79,41 @@ struct extrapolation_row {
 	char reason[ANALYSIS_REASON_BYTES];
 };
 
-/* achieved = floor + restart + family + effort + framing, signed. */
+/*
+ * achieved = floor + restart + family + effort + framing, signed. The floor's
+ * own interval is that of struct floor_row; the other terms are differences of
+ * two runs, each with the interval of the paired block series of those two.
+ * A term between a run and itself is 0, exactly; framing is counted, so exact.
+ */
 struct gap_stack {
 	bool known;
 	double floor, restart, family, effort, framing;
 	char best_level[CELL_NAME_BYTES]; /* of this codec at this layout */
+	struct interval restart_interval, family_interval, effort_interval,
+		framing_interval; /* of no meaning unless known */
+	/* stored = achieved + storage: what whole units of storage add. */
+	bool has_storage;
+	double storage;
 };
+
+/*
+ * What trained dictionaries did to a cell, against the same codec, level and
+ * pages without one. Bits per symbol; what is won is positive.
+ */
+struct dictionary_row {
+	bool has;   /* the cell has dictionaries */
+	bool known; /* the cell without is there, too; else all is zero */
+	double own; /* the dictionaries' own bytes, counted in the cell */
+	double won; /* less with than without, own bytes counted */
+	struct interval won_interval; /* of the paired difference */
+	/* The bound: the reference that has seen the other half of the pages,
+	 * page by page, and the same that starts from nothing. */
+	bool warm_known;
+	double warm, cold;
+};
+
+/* (largest - smallest) / median over rounds from which times are noise. */
+#define TIMING_SPREAD_MOST 0.10
 
 struct cell_row {
 	const struct cell_fact *fact; /* borrowed */
@@ -101,8 +131,11 @@ struct cell_row {
 	bool has_record;
 	double bits_per_record;
 	struct gap_stack stack;
+	struct dictionary_row dictionary;
 	double encode_mb_per_s, decode_mb_per_s; /* 0: not timed; MB = 1e6 bytes
 						    of canonical input, CPU */
+	double encode_wall_mb_per_s, decode_wall_mb_per_s; /* likewise, wall */
+	bool timing_noisy; /* rounds spread over TIMING_SPREAD_MOST */
 };
 
 struct corpus_view {

@@ -3,6 +3,7 @@
 #include <stdio.h>
 
 #include "base/memory.h"
+#include "gap/dictionary_view.h"
 
 /* Below so many bits a symbol, a ratio to the floor says nothing. */
 #define PERCENT_FLOOR_LEAST 0.001
@@ -25,6 +26,24 @@ static unsigned effective_order(const struct corpus_view *view, double payload)
 	return 0;
 }
 
+static void fill_speeds(const struct corpus_fact *fact,
+			const struct cell_fact *cell, struct cell_row *row)
+{
+	const struct cell_timing *timing = &cell->timing;
+
+	row->encode_mb_per_s =
+		speed(fact, cell->timed, timing->encode_cpu_seconds);
+	row->decode_mb_per_s =
+		speed(fact, cell->timed, timing->decode_cpu_seconds);
+	row->encode_wall_mb_per_s =
+		speed(fact, cell->timed, timing->encode_wall_seconds);
+	row->decode_wall_mb_per_s =
+		speed(fact, cell->timed, timing->decode_wall_seconds);
+	row->timing_noisy =
+		cell->timed && (timing->encode_spread > TIMING_SPREAD_MOST ||
+				timing->decode_spread > TIMING_SPREAD_MOST);
+}
+
 static void fill_figures(const struct corpus_view *view, struct cell_row *row)
 {
 	const struct corpus_fact *fact = view->fact;
@@ -39,10 +58,7 @@ static void fill_figures(const struct corpus_view *view, struct cell_row *row)
 	row->has_record = fact->records > 0;
 	if (row->has_record)
 		row->bits_per_record = bits / (double)fact->records;
-	row->encode_mb_per_s =
-		speed(fact, cell->timed, cell->timing.encode_cpu_seconds);
-	row->decode_mb_per_s =
-		speed(fact, cell->timed, cell->timing.decode_cpu_seconds);
+	fill_speeds(fact, cell, row);
 }
 
 static void fill_against_floor(const struct floor_row *floor,
@@ -92,7 +108,8 @@ static enum status fill(const struct corpus_view *view,
 	}
 	fill_figures(view, row);
 	fill_against_floor(&view->floor, row);
-	row->stack = gap_stack_of(view->fact, lengths, row->fact);
+	TRY(gap_stack_find(ground, lengths, row->fact, &row->stack));
+	TRY(dictionary_find(ground, row->fact, &row->dictionary));
 	return fill_intervals(ground, lengths_lowest(lengths, 0), row);
 }
 

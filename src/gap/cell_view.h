@@ -11,10 +11,12 @@ MUST_USE enum status cells_init(struct corpus_view *view,
 
 /*
  * The identity achieved = floor + restart + family + effort + framing of one
- * sound cell.
+ * sound cell. known is false, and all else but best_level zero, where no
+ * reference was restarted at the cell's layout. STATUS_NO_MEMORY.
  */
-struct gap_stack gap_stack_of(const struct corpus_fact *fact,
-			      const struct lengths *lengths,
-			      const struct cell_fact *cell);
+MUST_USE enum status gap_stack_find(const struct ground *ground,
+				    const struct lengths *lengths,
+				    const struct cell_fact *cell,
+				    struct gap_stack *stack);
 
 #endif

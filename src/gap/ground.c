@@ -72,10 +72,11 @@ struct contribution contribution_of_cell(const struct cell_fact *cell,
 	if (!cell->facts.flushed.blocks)
 		(void)snprintf(
 			made.reason, sizeof(made.reason),
-			"%s cannot be flushed at block cuts, so its bits "
+			"%s%s%s cannot be flushed at block cuts, so its bits "
 			"cannot be told apart by block; compare it on "
 			"several files of this kind instead",
-			cell->key.codec);
+			cell->key.codec, cell->key.level[0] ? " " : "",
+			cell->key.level);
 	else if (cost > FLUSH_COST_MOST)
 		(void)snprintf(made.reason, sizeof(made.reason),
 			       "flushing at block cuts costs %.1f%%, over the "
@@ -147,6 +148,7 @@ static struct interval shown(const struct bootstrap_result *result,
 {
 	struct interval interval = {
 		.known = result->known,
+		.standard_error = result->known ? result->standard_error : 0,
 		.effective_blocks = result->effective_blocks,
 		.block_length = (unsigned)result->block_length,
 	};

@@ -40,7 +40,9 @@ static void add_cells(struct lengths *lengths, const struct corpus_fact *fact)
 	for (size_t i = 0; i < fact->cell_count; i++) {
 		const struct cell_fact *cell = &fact->cells[i];
 
-		if (!cell_is_sound(cell))
+		/* What it saw of other pages makes it no code of pages that
+		 * start from nothing. */
+		if (!cell_is_sound(cell) || cell->facts.dictionary_bytes)
 			continue;
 		lengths->rows[lengths->count++] = (struct length){
 			.cell = cell,

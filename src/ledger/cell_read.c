@@ -16,6 +16,9 @@ static void read_facts(struct query *query, size_t blocks,
 		     &facts->flushed.blocks);
 	facts->encode_memory_bytes = query_count(query);
 	facts->decode_memory_bytes = query_count(query);
+	facts->dictionary_bytes = query_count(query);
+	facts->storage_unit = query_count(query);
+	facts->stored_bytes = query_count(query);
 }
 
 static void read_timing(struct query *query, struct cell_fact *cell)
@@ -58,18 +61,20 @@ enum status read_cells(struct owner owner)
 			   "cell", &count));
 	TRY(memory_new_zeroed(count, sizeof(*corpus->cells), &corpus->cells));
 	corpus->cell_count = count;
-	query_init(&query, owner.ledger,
-		   "SELECT codec, level, layout, page_bytes, outcome, reason,"
-		   " bytes, framing_bytes, framing_known, lossless, pages,"
-		   " flushed_bytes, flushed_q16, block_q16,"
-		   " encode_memory_bytes, decode_memory_bytes, rounds,"
-		   " encode_cpu_seconds, decode_cpu_seconds,"
-		   " encode_wall_seconds, decode_wall_seconds, encode_spread,"
-		   " decode_spread FROM cell LEFT JOIN timing"
-		   " USING (survey, corpus, codec, level, layout)"
-		   " WHERE survey = ? AND corpus = ?"
-		   " ORDER BY place, codec, level, layout",
-		   "cell", owner.why);
+	query_init(
+		&query, owner.ledger,
+		"SELECT codec, level, layout, page_bytes, outcome, reason,"
+		" bytes, framing_bytes, framing_known, lossless, pages,"
+		" flushed_bytes, flushed_q16, block_q16,"
+		" encode_memory_bytes, decode_memory_bytes, dictionary_bytes,"
+		" storage_unit, stored_bytes, rounds,"
+		" encode_cpu_seconds, decode_cpu_seconds,"
+		" encode_wall_seconds, decode_wall_seconds, encode_spread,"
+		" decode_spread FROM cell LEFT JOIN timing"
+		" USING (survey, corpus, codec, level, layout)"
+		" WHERE survey = ? AND corpus = ?"
+		" ORDER BY place, codec, level, layout",
+		"cell", owner.why);
 	bind_owner(&query, &owner);
 	for (size_t i = 0; i < count; i++) {
 		if (query_step(&query, &row) != STATUS_OK || !row)

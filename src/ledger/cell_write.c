@@ -82,7 +82,7 @@ static enum status insert_cell(struct ledger *ledger,
 
 	query_init(&query, ledger,
 		   "INSERT INTO cell VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?,"
-		   " ?, ?, ?, ?, ?, ?, ?, ?)",
+		   " ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?)",
 		   "cell", why);
 	bind_key(&query, put->survey, put->corpus, &cell->key);
 	query_bind_count(&query, put->place);
@@ -100,6 +100,9 @@ static enum status insert_cell(struct ledger *ledger,
 			  facts->flushed.blocks);
 	query_bind_count(&query, facts->encode_memory_bytes);
 	query_bind_count(&query, facts->decode_memory_bytes);
+	query_bind_count(&query, facts->dictionary_bytes);
+	query_bind_count(&query, facts->storage_unit);
+	query_bind_count(&query, facts->stored_bytes);
 	return query_run(&query);
 }
 

@@ -63,6 +63,31 @@ static enum status connect(struct ledger *ledger, enum ledger_mode mode,
 	return STATUS_OK;
 }
 
+/*
+ * Rows go to a log beside the file without waiting for the disk, so that jobs
+ * do not queue for it: a kill loses no row that was put, a power cut the last
+ * ones, and neither leaves half of one. Where the file system cannot do it,
+ * every row waits.
+ */
+static void start_log(struct ledger *ledger)
+{
+	ledger->logged = sqlite3_exec(ledger->database,
+				      "PRAGMA journal_mode = WAL;"
+				      "PRAGMA synchronous = NORMAL",
+				      NULL, NULL, NULL) == SQLITE_OK;
+}
+
+/* One file again, on the disk, that can be read where nothing can be written.
+ * Another reader may keep it from that; then the next writer does it. */
+static void end_log(struct ledger *ledger)
+{
+	if (ledger->logged)
+		(void)sqlite3_exec(ledger->database,
+				   "PRAGMA synchronous = FULL;"
+				   "PRAGMA journal_mode = DELETE",
+				   NULL, NULL, NULL);
+}
+
 static void disconnect(struct ledger *ledger)
 {
 	for (size_t i = 0; i < STATEMENTS_MAX; i++) {
@@ -70,6 +95,7 @@ static void disconnect(struct ledger *ledger)
 		ledger->statements[i] = NULL;
 		ledger->sql[i] = NULL;
 	}
+	end_log(ledger);
 	(void)sqlite3_close(ledger->database);
 	ledger->database = NULL;
 }
@@ -116,6 +142,12 @@ static enum status identify(struct ledger *ledger, bool *empty,
 				   "%s: written with ledger schema %lld, this "
 				   "ratefloor knows up to %d: use a newer "
 				   "ratefloor, or another file",
+				   ledger->path, (long long)schema,
+				   SCHEMA_NUMBER);
+	if (schema >= 1 && schema < SCHEMA_NUMBER)
+		return reason_give(why, STATUS_LEDGER,
+				   "%s: written with ledger schema %lld, this "
+				   "ratefloor keeps %d: survey into a new file",
 				   ledger->path, (long long)schema,
 				   SCHEMA_NUMBER);
 	if (schema < 1)
@@ -214,13 +246,16 @@ static enum status open_to_write(struct ledger *ledger, struct reason *why)
 	TRY(connect(ledger, LEDGER_WRITE,
 		    SQLITE_OPEN_READWRITE | SQLITE_OPEN_CREATE, why));
 	TRY(identify(ledger, &empty, why));
-	if (!empty)
-		return STATUS_OK;
-	status = ledger_transact(ledger, create_tables, NULL, why);
+	status = STATUS_OK;
+	if (empty) {
+		status = ledger_transact(ledger, create_tables, NULL, why);
+		if (status == STATUS_OK)
+			status = identify(ledger, &empty, why);
+		if (status != STATUS_OK && !existed)
+			(void)unlink(ledger->path);
+	}
 	if (status == STATUS_OK)
-		status = identify(ledger, &empty, why);
-	if (status != STATUS_OK && !existed)
-		(void)unlink(ledger->path);
+		start_log(ledger);
 	return status;
 }
 

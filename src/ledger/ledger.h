@@ -1,8 +1,10 @@
 /*
  * The ledger: a SQLite file of measured facts, one transaction a row.
  *
- * A rollback journal stands beside the file only while a row is written: a
- * kill loses at most that row, and whoever opens the file next takes it back.
+ * While it is open for writing, rows go to a log beside the file (PATH-wal and
+ * PATH-shm): a kill loses at most the rows in hand, and whoever opens the file
+ * next finds the log; until then the three belong together. Closing leaves one
+ * file, on the disk.
  * Beyond the statuses named at a function, each call may return STATUS_LEDGER
  * (damaged: the row and column are named; or in use by another process for
  * more than two seconds), STATUS_IO (disk full, folder gone) or
@@ -21,7 +23,7 @@ enum ledger_mode { LEDGER_READ, LEDGER_WRITE };
 /*
  * Opens, and with LEDGER_WRITE creates, the file. STATUS_NOT_FOUND: nothing
  * there to read; STATUS_IO: folder read-only, disk full; STATUS_LEDGER: not a
- * ledger, a newer schema (both numbers named), or in use by another process.
+ * ledger, another schema (both numbers named), or in use by another process.
  * A file that is refused stays as it was. LEDGER_READ works in a folder that
  * cannot be written to.
  */

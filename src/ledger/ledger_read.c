@@ -86,7 +86,9 @@ static enum status read_head(struct ledger *ledger, int64_t id,
 
 	query_init(&query, ledger,
 		   "SELECT id, set_name, program, seed, orders, gap_limit,"
-		   " yardstick, finished IS NOT NULL FROM survey"
+		   " yardstick, tolerance, speed_tolerance,"
+		   " finished IS NOT NULL, ifnull(started, ''),"
+		   " ifnull(set_path, '') FROM survey"
 		   " LEFT JOIN run ON run.survey = id WHERE id ="
 		   " iif(?1 = 0, (SELECT max(id) FROM survey), ?1)",
 		   "survey", why);
@@ -100,7 +102,11 @@ static enum status read_head(struct ledger *ledger, int64_t id,
 			(unsigned)query_small(&query, FINDING_ORDERS_MAX);
 		survey->gap_limit = query_real(&query);
 		query_text(&query, survey->yardstick, LEDGER_NAME_BYTES);
+		survey->tolerance = query_real(&query);
+		survey->speed_tolerance = query_real(&query);
 		survey->finished = query_small(&query, 1) != 0;
+		query_text(&query, survey->started, LEDGER_NAME_BYTES);
+		query_text(&query, survey->set_path, LEDGER_PATH_BYTES);
 	}
 	TRY(query_end(&query));
 	return row ? STATUS_OK : fail_absent(ledger, id, why);
@@ -154,6 +160,7 @@ static void read_corpus(struct query *query, struct corpus_fact *corpus)
 	query_text_new(query, &corpus->origin);
 	corpus->rate_known = !query_is_null(query);
 	corpus->known_rate = query_real(query);
+	corpus->rolling = query_small(query, 1) != 0;
 	query_blocks(query, SIZE_MAX, &corpus->block_symbols, &corpus->blocks);
 	query_blocks(query, SIZE_MAX, &corpus->block_bytes, &blocks);
 	if (blocks != corpus->blocks)
@@ -176,8 +183,8 @@ static enum status read_corpora(const struct owner *owner,
 	query_init(&query, owner->ledger,
 		   "SELECT name, outcome, reason, symbols, file_bytes,"
 		   " canonical_bytes, n, distinct_symbols, alphabet, records,"
-		   " sha256, licence, origin, known_rate, block_symbols,"
-		   " block_bytes FROM corpus WHERE survey = ?"
+		   " sha256, licence, origin, known_rate, rolling,"
+		   " block_symbols, block_bytes FROM corpus WHERE survey = ?"
 		   " ORDER BY place, name",
 		   "corpus", owner->why);
 	bind_owner(&query, owner);

@@ -26,8 +26,9 @@ static void bind_method_key(struct query *query, const struct put *put)
 static const char corpus_sql[] =
 	"INSERT INTO corpus (survey, name, place, outcome, reason, symbols,"
 	" file_bytes, canonical_bytes, n, distinct_symbols, alphabet, records,"
-	" sha256, licence, origin, known_rate, block_symbols, block_bytes)"
-	" VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?)"
+	" sha256, licence, origin, known_rate, rolling, block_symbols,"
+	" block_bytes) VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, "
+	"?, ?, ?)"
 	" ON CONFLICT DO UPDATE SET place = excluded.place,"
 	" outcome = excluded.outcome, reason = excluded.reason,"
 	" symbols = excluded.symbols, file_bytes = excluded.file_bytes,"
@@ -36,6 +37,7 @@ static const char corpus_sql[] =
 	" alphabet = excluded.alphabet, records = excluded.records,"
 	" sha256 = excluded.sha256, licence = excluded.licence,"
 	" origin = excluded.origin, known_rate = excluded.known_rate,"
+	" rolling = excluded.rolling,"
 	" block_symbols = excluded.block_symbols,"
 	" block_bytes = excluded.block_bytes";
 
@@ -66,6 +68,7 @@ static enum status corpus_row(struct ledger *ledger, const void *context,
 		query_bind_real(&query, corpus->known_rate);
 	else
 		query_bind_null(&query);
+	query_bind_count(&query, corpus->rolling);
 	query_bind_blocks(&query, corpus->block_symbols, corpus->blocks);
 	query_bind_blocks(&query, corpus->block_bytes, corpus->blocks);
 	return query_run(&query);

@@ -23,11 +23,13 @@ const char *const schema_sql[] = {
 	"CREATE TABLE survey (id INTEGER NOT NULL PRIMARY KEY,"
 	"plan TEXT NOT NULL, set_name TEXT NOT NULL, program TEXT NOT NULL,"
 	"seed INTEGER NOT NULL, orders INTEGER NOT NULL,"
-	"gap_limit REAL NOT NULL, yardstick TEXT NOT NULL" TABLE_END,
+	"gap_limit REAL NOT NULL, yardstick TEXT NOT NULL,"
+	"tolerance REAL NOT NULL, speed_tolerance REAL NOT NULL" TABLE_END,
 
 	"CREATE TABLE run (survey INTEGER NOT NULL PRIMARY KEY"
 	" REFERENCES survey ON DELETE CASCADE,"
-	"host TEXT NOT NULL, started TEXT NOT NULL, finished TEXT" TABLE_END,
+	"host TEXT NOT NULL, started TEXT NOT NULL, finished TEXT,"
+	"set_path TEXT NOT NULL" TABLE_END,
 
 	"CREATE TABLE library (" SURVEY_KEY "place INTEGER NOT NULL,"
 	"name TEXT NOT NULL, version TEXT NOT NULL,"
@@ -40,6 +42,7 @@ const char *const schema_sql[] = {
 	"distinct_symbols INTEGER NOT NULL, alphabet INTEGER NOT NULL,"
 	"records INTEGER NOT NULL, sha256 TEXT NOT NULL,"
 	"licence TEXT NOT NULL, origin TEXT NOT NULL, known_rate REAL,"
+	"rolling INTEGER NOT NULL,"
 	"block_symbols BLOB NOT NULL, block_bytes BLOB NOT NULL,"
 	"PRIMARY KEY (survey, name)" TABLE_END,
 
@@ -76,6 +79,8 @@ const char *const schema_sql[] = {
 	"flushed_q16 INTEGER NOT NULL, block_q16 BLOB NOT NULL,"
 	"encode_memory_bytes INTEGER NOT NULL,"
 	"decode_memory_bytes INTEGER NOT NULL,"
+	"dictionary_bytes INTEGER NOT NULL, storage_unit INTEGER NOT NULL,"
+	"stored_bytes INTEGER NOT NULL,"
 	"PRIMARY KEY (survey, corpus, codec, level, layout)," OF_CORPUS
 		TABLE_END,
 

@@ -14,6 +14,7 @@
 struct ledger {
 	sqlite3 *database; /* owned */
 	char *path;        /* owned; as given, for messages */
+	bool logged;       /* rows go to a log beside the file first */
 	/* Owned; kept by the address of their SQL, which is a literal. */
 	const char *sql[STATEMENTS_MAX];
 	sqlite3_stmt *statements[STATEMENTS_MAX];

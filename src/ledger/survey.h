@@ -9,6 +9,7 @@
 #include <stdbool.h>
 
 #define LEDGER_NAME_BYTES 64
+#define LEDGER_PATH_BYTES 512
 
 /* How a row, cell or corpus ended. */
 enum outcome {
@@ -45,6 +46,7 @@ struct corpus_fact {
 	uint64_t canonical_bytes; /* what codecs saw */
 	uint64_t n, distinct, alphabet;
 	uint64_t records; /* 0: none declared */
+	bool rolling;     /* feed = rolling: other bytes in every survey */
 	char sha256[65];  /* of the file */
 	char licence[LEDGER_NAME_BYTES];
 	char *origin; /* owned */
@@ -71,6 +73,11 @@ struct survey {
 	unsigned orders;  /* K */
 	double gap_limit; /* 0.40 for 40%; NaN never: negative is "none" */
 	char yardstick[LEDGER_NAME_BYTES]; /* "zstd 3", or "" */
+	double tolerance;       /* of sizes, share of achieved: 0.003 */
+	double speed_tolerance; /* of times and memory: 0.15 */
+	/* Of the run, no facts: where and when. "" where not known. */
+	char set_path[LEDGER_PATH_BYTES]; /* of the set file, as given */
+	char started[LEDGER_NAME_BYTES];  /* 2031-05-02T01:00:00Z */
 	bool finished;
 	struct library_fact *libraries; /* owned */
 	size_t library_count;

@@ -43,7 +43,8 @@ static enum status insert_survey(struct ledger *ledger,
 	struct query query;
 
 	query_init(&query, ledger,
-		   "INSERT INTO survey VALUES (?, ?, ?, ?, ?, ?, ?, ?)",
+		   "INSERT INTO survey"
+		   " VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?, ?)",
 		   "survey", why);
 	query_bind_int(&query, survey->id);
 	query_bind_text(&query, begin->plan);
@@ -53,11 +54,13 @@ static enum status insert_survey(struct ledger *ledger,
 	query_bind_count(&query, survey->orders);
 	query_bind_real(&query, survey->gap_limit);
 	query_bind_text(&query, survey->yardstick);
+	query_bind_real(&query, survey->tolerance);
+	query_bind_real(&query, survey->speed_tolerance);
 	return query_run(&query);
 }
 
-static enum status insert_run(struct ledger *ledger, int64_t survey,
-			      struct reason *why)
+static enum status insert_run(struct ledger *ledger,
+			      const struct survey *survey, struct reason *why)
 {
 	char host[LEDGER_NAME_BYTES];
 	struct query query;
@@ -65,10 +68,11 @@ static enum status insert_run(struct ledger *ledger, int64_t survey,
 	read_host(host, (int)sizeof(host));
 	query_init(&query, ledger,
 		   "INSERT INTO run VALUES "
-		   "(?, ?, strftime('%Y-%m-%dT%H:%M:%SZ', 'now'), NULL)",
+		   "(?, ?, strftime('%Y-%m-%dT%H:%M:%SZ', 'now'), NULL, ?)",
 		   "run", why);
-	query_bind_int(&query, survey);
+	query_bind_int(&query, survey->id);
 	query_bind_text(&query, host);
+	query_bind_text(&query, survey->set_path);
 	return query_run(&query);
 }
 
@@ -98,7 +102,7 @@ static enum status begin_rows(struct ledger *ledger, const void *context,
 
 	TRY(next_id(ledger, &begin->survey->id, why));
 	TRY(insert_survey(ledger, begin, why));
-	TRY(insert_run(ledger, begin->survey->id, why));
+	TRY(insert_run(ledger, begin->survey, why));
 	return insert_libraries(ledger, begin->survey, why);
 }
 

@@ -1,8 +1,24 @@
 #include "report/json_parts.h"
 
+#include <stdio.h>
+
 #include "ledger/outcome.h"
 #include "report/json_value.h"
 #include "report/paper.h"
+
+/* name_low, name_high and name_reason of one term. */
+static void put_term_interval(struct json_maker *made, const char *name,
+			      bool known, const struct interval *interval)
+{
+	char key[32];
+
+	(void)snprintf(key, sizeof(key), "%s_low", name);
+	json_put_real(made, key, known && interval->known, interval->low);
+	(void)snprintf(key, sizeof(key), "%s_high", name);
+	json_put_real(made, key, known && interval->known, interval->high);
+	(void)snprintf(key, sizeof(key), "%s_reason", name);
+	json_put_reason(made, key, known ? interval->reason : "");
+}
 
 static json_t *stack_object(const struct cell_row *row)
 {
@@ -17,7 +33,52 @@ static json_t *stack_object(const struct cell_row *row)
 	json_put_real(&made, "effort", known, stack->effort);
 	json_put_real(&made, "framing", known, stack->framing);
 	json_put_reason(&made, "best_level", known ? stack->best_level : "");
+	put_term_interval(&made, "restart", known, &stack->restart_interval);
+	put_term_interval(&made, "family", known, &stack->family_interval);
+	put_term_interval(&made, "effort", known, &stack->effort_interval);
+	put_term_interval(&made, "framing", known, &stack->framing_interval);
+	json_put_real(&made, "storage", known && stack->has_storage,
+		      stack->storage);
 	return json_done(&made);
+}
+
+/* null for a cell without dictionaries. */
+static json_t *dictionary_object(const struct cell_row *row)
+{
+	const struct dictionary_row *dictionary = &row->dictionary;
+	const struct interval *won = &dictionary->won_interval;
+	bool known = dictionary->known;
+	struct json_maker made;
+
+	if (!row->known || !dictionary->has)
+		return json_null();
+	json_begin(&made);
+	json_put_count(&made, "bytes", row->fact->facts.dictionary_bytes);
+	json_put_real(&made, "own", known, dictionary->own);
+	json_put_real(&made, "won", known, dictionary->won);
+	json_put_real(&made, "won_low", known && won->known, won->low);
+	json_put_real(&made, "won_high", known && won->known, won->high);
+	json_put_reason(&made, "won_reason", known ? won->reason : "");
+	json_put_real(&made, "warm", dictionary->warm_known, dictionary->warm);
+	json_put_real(&made, "cold", dictionary->warm_known, dictionary->cold);
+	return json_done(&made);
+}
+
+static void put_timing(struct json_maker *made, const struct cell_row *row)
+{
+	const struct cell_timing *timing = &row->fact->timing;
+	bool timed = row->known && row->fact->timed;
+
+	json_put_known_count(made, "timing_rounds", timed, timing->rounds);
+	json_put_real(made, "encode_wall_mb_per_s",
+		      timed && row->encode_wall_mb_per_s > 0,
+		      row->encode_wall_mb_per_s);
+	json_put_real(made, "decode_wall_mb_per_s",
+		      timed && row->decode_wall_mb_per_s > 0,
+		      row->decode_wall_mb_per_s);
+	json_put_real(made, "encode_spread", timed, timing->encode_spread);
+	json_put_real(made, "decode_spread", timed, timing->decode_spread);
+	json_put_bool(made, "timing_noisy", timed && row->timing_noisy);
 }
 
 static void put_sizes(struct json_maker *made, const struct cell_row *row)
@@ -108,5 +169,13 @@ json_t *json_cell(const struct corpus_view *view, const struct cell_row *row)
 	json_put_known_count(&made, "framing_bytes",
 			     row->known && fact->facts.framing_known,
 			     fact->facts.framing_bytes);
+	json_put_known_count(&made, "storage_unit",
+			     row->known && fact->facts.storage_unit,
+			     fact->facts.storage_unit);
+	json_put_known_count(&made, "stored_bytes",
+			     row->known && fact->facts.storage_unit,
+			     fact->facts.stored_bytes);
+	json_put(&made, "dictionary", dictionary_object(row));
+	put_timing(&made, row);
 	return json_done(&made);
 }

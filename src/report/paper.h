@@ -27,6 +27,24 @@ MUST_USE enum status paper_cells(const struct writer *writer,
 				 const struct corpus_view *view,
 				 struct notes *notes);
 
+/* Where the gap comes from: its terms, their intervals and their levers. */
+MUST_USE enum status paper_stack(const struct writer *writer,
+				 const struct corpus_view *view,
+				 struct notes *notes);
+/* What trained dictionaries won, where the survey has any. */
+MUST_USE enum status paper_dictionaries(const struct writer *writer,
+					const struct corpus_view *view,
+					struct notes *notes);
+
+/* The columns codec and layout, and those of an interval. */
+#define CELL_COLUMN (2 * CELL_NAME_BYTES)
+void paper_cell_key(struct grid *grid, const struct cell_row *row);
+void paper_interval(struct grid *grid, struct notes *notes, bool known,
+		    const struct interval *interval);
+
+/* Stands before times whose rounds differ too much to be compared. */
+#define NOISY_MARK "~"
+
 /* "zstd 19"; cut to the room where a file gave an endless name. */
 struct cell_name {
 	char text[2 * CELL_NAME_BYTES];

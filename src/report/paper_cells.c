@@ -5,10 +5,14 @@
 #define COUNT(array) (sizeof(array) / sizeof((array)[0]))
 
 static const struct column gap_columns[] = {
-	{"codec", 14, true}, {"layout", 7, true},
-	{"bits", 7, false},  {"interval", 17, true},
-	{"gap", 7, false},   {"gap interval", 17, true},
-	{"gap %", 7, false}, {"status", 10, true},
+	{"codec", CELL_COLUMN, true},
+	{"layout", 7, true},
+	{"bits", 7, false},
+	{"interval", 17, true},
+	{"gap", 7, false},
+	{"gap interval", 17, true},
+	{"gap %", 7, false},
+	{"status", 10, true},
 };
 
 static void status_cell(struct grid *grid, struct notes *notes,
@@ -33,25 +37,6 @@ static void status_cell(struct grid *grid, struct notes *notes,
 				 .text);
 }
 
-static void interval_cell(struct grid *grid, struct notes *notes, bool known,
-			  const struct interval *interval)
-{
-	if (!known)
-		grid_add(grid, "-");
-	else if (interval->known)
-		grid_add(grid, "%s",
-			 figure_interval(interval->low, interval->high).text);
-	else
-		grid_add(grid, "none %s",
-			 notes_mark(notes, interval->reason).text);
-}
-
-static void key_cells(struct grid *grid, const struct cell_row *row)
-{
-	grid_add(grid, "%s", cell_name(row->fact).text);
-	grid_add(grid, "%s", figure_layout(row->fact->page_bytes).text);
-}
-
 static enum status gap_table(const struct writer *writer,
 			     const struct corpus_view *view,
 			     struct notes *notes)
@@ -62,12 +47,12 @@ static enum status gap_table(const struct writer *writer,
 	for (size_t i = 0; i < view->cell_count; i++) {
 		const struct cell_row *row = &view->cells[i];
 
-		key_cells(&grid, row);
+		paper_cell_key(&grid, row);
 		grid_add(&grid, "%s",
 			 figure_bits(row->known, row->bits_per_symbol).text);
-		interval_cell(&grid, notes, row->known, &row->interval);
+		paper_interval(&grid, notes, row->known, &row->interval);
 		grid_add(&grid, "%s", figure_bits(row->known, row->gap).text);
-		interval_cell(&grid, notes, row->known, &row->gap_interval);
+		paper_interval(&grid, notes, row->known, &row->gap_interval);
 		grid_add(&grid, "%s",
 			 figure_percent(row->known && row->has_percent,
 					row->gap_percent)
@@ -87,64 +72,11 @@ static enum status gap_table(const struct writer *writer,
 	return STATUS_OK;
 }
 
-static const struct column stack_columns[] = {
-	{"codec", 14, true},  {"layout", 7, true},   {"achieved", 8, false},
-	{"floor", 8, false},  {"restart", 8, false}, {"family", 8, false},
-	{"effort", 8, false}, {"framing", 8, false}, {"best level", 10, true},
-};
-
-static bool has_stack(const struct corpus_view *view)
-{
-	for (size_t i = 0; i < view->cell_count; i++) {
-		if (view->cells[i].known && view->cells[i].stack.known)
-			return true;
-	}
-	return false;
-}
-
-static void stack_line(struct grid *grid, const struct cell_row *row)
-{
-	const struct gap_stack *stack = &row->stack;
-
-	key_cells(grid, row);
-	grid_add(grid, "%s", figure_bits(true, row->bits_per_symbol).text);
-	grid_add(grid, "%s", figure_bits(true, stack->floor).text);
-	grid_add(grid, "%s", figure_signed(true, stack->restart).text);
-	grid_add(grid, "%s", figure_signed(true, stack->family).text);
-	grid_add(grid, "%s", figure_signed(true, stack->effort).text);
-	grid_add(grid, "%s", figure_signed(true, stack->framing).text);
-	grid_add(grid, "%s", stack->best_level[0] ? stack->best_level : "-");
-}
-
-static enum status stack_table(const struct writer *writer,
-			       const struct corpus_view *view)
-{
-	struct grid grid;
-
-	if (!has_stack(view))
-		return STATUS_OK;
-	write_heading(writer, 3, "Where the gap comes from");
-	grid_init(&grid, stack_columns, COUNT(stack_columns));
-	for (size_t i = 0; i < view->cell_count; i++) {
-		if (view->cells[i].known && view->cells[i].stack.known)
-			stack_line(&grid, &view->cells[i]);
-	}
-	TRY(grid_finish(&grid, writer));
-	write_paragraph(
-		writer,
-		"Bits per symbol; the terms after the floor add up to what was "
-		"achieved, and each has its lever. restart: cutting into "
-		"pages (larger pages, a trained dictionary). family: another "
-		"codec. effort: a level other than this codec's best one here. "
-		"framing: headers, checks and padding (another container).");
-	return STATUS_OK;
-}
-
 static const struct column cost_columns[] = {
-	{"codec", 14, true},         {"layout", 7, true},
-	{"bytes", 15, false},        {"bits/record", 11, false},
-	{"floor %", 7, false},       {"order", 5, false},
-	{"enc/dec MB/s", 15, false}, {"enc/dec mem", 11, false},
+	{"codec", CELL_COLUMN, true}, {"layout", 7, true},
+	{"bytes", 15, false},         {"bits/record", 11, false},
+	{"floor %", 7, false},        {"order", 5, false},
+	{"enc/dec MB/s", 17, false},  {"enc/dec mem", 11, false},
 };
 
 static void order_cell(struct grid *grid, const struct corpus_view *view,
@@ -163,14 +95,15 @@ static void cost_line(struct grid *grid, const struct corpus_view *view,
 {
 	const struct cell_facts *facts = &row->fact->facts;
 
-	key_cells(grid, row);
+	paper_cell_key(grid, row);
 	grid_add(grid, "%s", figure_count(facts->bytes).text);
 	grid_add(grid, "%s",
 		 figure_percent(row->has_record, row->bits_per_record).text);
 	grid_add(grid, "%s", figure_percent(true, 100 * row->efficiency).text);
 	order_cell(grid, view, row);
 	if (row->fact->timed)
-		grid_add(grid, "%s/%s", figure_speed(row->encode_mb_per_s).text,
+		grid_add(grid, "%s%s/%s", row->timing_noisy ? NOISY_MARK : "",
+			 figure_speed(row->encode_mb_per_s).text,
 			 figure_speed(row->decode_mb_per_s).text);
 	else
 		grid_add(grid, "-");
@@ -198,7 +131,9 @@ static enum status cost_table(const struct writer *writer,
 		"trusted gram order at which a model of that order does as "
 		"well as the codec. MB/s: million input bytes a second of CPU "
 		"time, median of the rounds, on the machine that ran the "
-		"survey. mem: the most that the codec asked of the heap, in "
+		"survey; " NOISY_MARK " before it: noisy, rounds differ by "
+		"more than 10%% of the median, so time it again alone. mem: "
+		"the most that the codec asked of the heap, in "
 		"bytes (K, M, G: powers of 1024).");
 	return STATUS_OK;
 }
@@ -221,6 +156,7 @@ enum status paper_cells(const struct writer *writer,
 	TRY(gap_table(writer, view, notes));
 	if (!any_known(view))
 		return STATUS_OK;
-	TRY(stack_table(writer, view));
+	TRY(paper_stack(writer, view, notes));
+	TRY(paper_dictionaries(writer, view, notes));
 	return cost_table(writer, view);
 }

@@ -13,6 +13,25 @@ struct cell_name cell_name(const struct cell_fact *cell)
 	return name;
 }
 
+void paper_cell_key(struct grid *grid, const struct cell_row *row)
+{
+	grid_add(grid, "%s", cell_name(row->fact).text);
+	grid_add(grid, "%s", figure_layout(row->fact->page_bytes).text);
+}
+
+void paper_interval(struct grid *grid, struct notes *notes, bool known,
+		    const struct interval *interval)
+{
+	if (!known)
+		grid_add(grid, "-");
+	else if (interval->known)
+		grid_add(grid, "%s",
+			 figure_interval(interval->low, interval->high).text);
+	else
+		grid_add(grid, "none %s",
+			 notes_mark(notes, interval->reason).text);
+}
+
 bool cell_failed(const struct cell_fact *cell)
 {
 	return cell->outcome == OUTCOME_FAILED ||

@@ -5,12 +5,15 @@
 #define COUNT(array) (sizeof(array) / sizeof((array)[0]))
 
 static const struct column columns[] = {
-	{"codec", 14, true},   {"layout", 7, true},         {"bits", 7, false},
-	{"gap", 7, false},     {"95% of gap", 17, true},    {"gap %", 7, false},
-	{"floor %", 7, false}, {"enc/dec MB/s", 15, false},
+	{"codec", CELL_COLUMN, true}, {"layout", 7, true},
+	{"bits", 7, false},           {"gap", 7, false},
+	{"95% of gap", 17, true},     {"gap %", 7, false},
+	{"floor %", 7, false},        {"enc/dec MB/s", 17, false},
+	{"bits/rec", 9, false},
 };
 
-static void cell_line(struct grid *grid, const struct cell_row *row)
+static void cell_line(struct grid *grid, const struct cell_row *row,
+		      bool records)
 {
 	const struct interval *interval = &row->gap_interval;
 	bool known = row->known && !cell_failed(row->fact);
@@ -19,7 +22,7 @@ static void cell_line(struct grid *grid, const struct cell_row *row)
 	grid_add(grid, "%s", figure_layout(row->fact->page_bytes).text);
 	if (!known) {
 		grid_add(grid, "%s", cell_failed(row->fact) ? "FAILED" : "-");
-		for (size_t i = 3; i < COUNT(columns); i++)
+		for (size_t i = 3; i < grid->column_count; i++)
 			grid_add(grid, "-");
 		return;
 	}
@@ -33,10 +36,15 @@ static void cell_line(struct grid *grid, const struct cell_row *row)
 		 figure_percent(row->has_percent, row->gap_percent).text);
 	grid_add(grid, "%s", figure_percent(true, 100 * row->efficiency).text);
 	if (row->fact->timed)
-		grid_add(grid, "%s/%s", figure_speed(row->encode_mb_per_s).text,
+		grid_add(grid, "%s%s/%s", row->timing_noisy ? NOISY_MARK : "",
+			 figure_speed(row->encode_mb_per_s).text,
 			 figure_speed(row->decode_mb_per_s).text);
 	else
 		grid_add(grid, "-");
+	if (records)
+		grid_add(grid, "%s",
+			 figure_percent(row->has_record, row->bits_per_record)
+				 .text);
 }
 
 static void bracket_line(const struct writer *writer,
@@ -87,6 +95,7 @@ static enum status write_corpus(const struct writer *writer,
 				const struct corpus_view *view)
 {
 	struct grid grid;
+	bool records;
 
 	write_heading(writer, 2, view->fact->name);
 	if (view->fact->outcome != OUTCOME_DONE) {
@@ -97,9 +106,10 @@ static enum status write_corpus(const struct writer *writer,
 	bracket_line(writer, &view->bracket);
 	if (!view->cell_count)
 		return STATUS_OK;
-	grid_init(&grid, columns, COUNT(columns));
+	records = view->fact->records > 0;
+	grid_init(&grid, columns, COUNT(columns) - !records);
 	for (size_t i = 0; i < view->cell_count; i++)
-		cell_line(&grid, &view->cells[i]);
+		cell_line(&grid, &view->cells[i], records);
 	return grid_finish(&grid, writer);
 }
 
@@ -117,6 +127,9 @@ static enum status write_table(const struct writer *writer,
 		"this kind, from resampled blocks of paired differences, and "
 		"'-' where there is too little data for one. gap %% is the gap "
 		"over the floor, floor %% the floor over the bits achieved. "
+		"bits/rec: bits per record, the only unit that compares "
+		"formats. " NOISY_MARK " before MB/s: noisy, rounds differ by "
+		"more than 10%%. "
 		"The whole report, with reasons, estimators, gram orders, the "
 		"parts of each gap and memory: ratefloor report LEDGER.");
 	return STATUS_OK;

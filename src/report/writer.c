@@ -133,6 +133,23 @@ static size_t column_width(const struct grid *grid, size_t column)
 	return width;
 }
 
+/* A name that has no room stands on a line of its own, above its row. */
+static void plain_name(const struct writer *writer, size_t width,
+		       const char *cell)
+{
+	char clean[CLEAN_GROWTH * GRID_CELL_BYTES];
+
+	clean_cell(cell, PAGE_COLUMNS, clean, sizeof(clean));
+	if (strlen(clean) <= width) {
+		(void)fputs(clean, writer->out);
+		repeat(writer, ' ', width - strlen(clean));
+	} else {
+		(void)fprintf(writer->out, "%s\n", clean);
+		repeat(writer, ' ', width);
+	}
+	(void)fputs("  ", writer->out);
+}
+
 static void plain_cell(const struct writer *writer, const struct grid *grid,
 		       size_t column, size_t width, const char *cell)
 {
@@ -153,6 +170,21 @@ static void plain_cell(const struct writer *writer, const struct grid *grid,
 /* More columns than any table of a report has. */
 #define COLUMNS_MAX 16
 
+/* Names get the room that is left; see plain_name for those that need more. */
+#define NAME_WIDTH_LEAST 14
+
+static void fit_page(const struct grid *grid, size_t widths[COLUMNS_MAX])
+{
+	size_t total = 2 * (grid->column_count - 1);
+
+	for (size_t c = 0; c < grid->column_count && c < COLUMNS_MAX; c++)
+		total += widths[c];
+	while (total > PAGE_COLUMNS && widths[0] > NAME_WIDTH_LEAST) {
+		widths[0]--;
+		total--;
+	}
+}
+
 static void plain_grid(const struct writer *writer, const struct grid *grid)
 {
 	static const char rule[] =
@@ -162,6 +194,7 @@ static void plain_grid(const struct writer *writer, const struct grid *grid)
 
 	for (size_t c = 0; c < columns && c < COLUMNS_MAX; c++)
 		widths[c] = column_width(grid, c);
+	fit_page(grid, widths);
 	for (size_t c = 0; c < columns; c++)
 		plain_cell(writer, grid, c, widths[c], grid->columns[c].title);
 	for (size_t c = 0; c < columns; c++)
@@ -170,9 +203,13 @@ static void plain_grid(const struct writer *writer, const struct grid *grid)
 				   (widths[c] < sizeof(rule)
 					    ? widths[c]
 					    : sizeof(rule) - 1));
-	for (size_t i = 0; i < grid->count; i++)
-		plain_cell(writer, grid, i % columns, widths[i % columns],
-			   grid->cells[i]);
+	for (size_t i = 0; i < grid->count; i++) {
+		if (i % columns == 0 && grid->columns[0].left && columns > 1)
+			plain_name(writer, widths[0], grid->cells[i]);
+		else
+			plain_cell(writer, grid, i % columns,
+				   widths[i % columns], grid->cells[i]);
+	}
 	(void)fputc('\n', writer->out);
 }
 

@@ -136,7 +136,7 @@ MUST_USE enum status measure_libraries(struct survey *survey)
 
 	while (codecs[count])
 		count++;
-	TRY(memory_new_zeroed(count, sizeof(*survey->libraries),
+	TRY(memory_new_zeroed(count + 1, sizeof(*survey->libraries),
 			      &survey->libraries));
 	for (size_t i = 0; i < count; i++) {
 		struct library_fact *fact =
@@ -150,5 +150,7 @@ MUST_USE enum status measure_libraries(struct survey *survey)
 			       codecs[i]->version());
 		survey->library_count++;
 	}
+	survey->libraries[survey->library_count++] =
+		(struct library_fact){REFERENCE_NAME, REFERENCE_VERSION};
 	return STATUS_OK;
 }

@@ -23,7 +23,10 @@ void measure_rows(const struct measure_rows *job);
 void measure_cell(const struct plan_cell *cell, const struct sequence *sequence,
 		  const struct cuts *cuts, struct cell_fact *fact);
 
-/* Fills the libraries that the codecs run on, with versions at run time. */
+/*
+ * Fills the libraries that the codecs run on, with versions at run time, and
+ * last the reference with its version.
+ */
 MUST_USE enum status measure_libraries(struct survey *survey);
 
 #endif

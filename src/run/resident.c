@@ -144,6 +144,7 @@ enum status resident_fact(const struct resident *resident,
 		.kind = declared->rules.kind,
 		.rate_known = declared->rate_known,
 		.known_rate = declared->known_rate,
+		.rolling = declared->rolling,
 	};
 	enum status status;
 

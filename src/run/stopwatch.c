@@ -28,6 +28,11 @@ double thread_cpu_seconds(void)
 	return read_clock(CLOCK_THREAD_CPUTIME_ID);
 }
 
+double process_cpu_seconds(void)
+{
+	return read_clock(CLOCK_PROCESS_CPUTIME_ID);
+}
+
 double wall_seconds(void)
 {
 	return read_clock(CLOCK_MONOTONIC);

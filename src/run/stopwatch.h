@@ -12,8 +12,12 @@ void stopwatch_start(struct stopwatch *watch);
 /* Seconds since the start, by a clock that never steps back. */
 double stopwatch_seconds(const struct stopwatch *watch);
 
-/* CPU seconds of the calling thread, and wall seconds; for differences. */
+/*
+ * CPU seconds of the calling thread, those of all threads (a library may have
+ * its own), and wall seconds; for differences.
+ */
 double thread_cpu_seconds(void);
+double process_cpu_seconds(void);
 double wall_seconds(void);
 
 #endif

@@ -235,7 +235,10 @@ static MUST_USE enum status begin_survey(struct run *run, struct reason *why)
 {
 	struct survey survey = {.seed = run->rules->seed,
 				.orders = run->rules->orders,
-				.gap_limit = run->plan->set->gap_limit};
+				.gap_limit = run->plan->set->gap_limit,
+				.tolerance = run->plan->set->tolerance,
+				.speed_tolerance =
+					run->plan->set->speed_tolerance};
 	char digest[RESUME_DIGEST_BYTES];
 	enum status status;
 
@@ -248,6 +251,8 @@ static MUST_USE enum status begin_survey(struct run *run, struct reason *why)
 		       run->rules->program);
 	(void)snprintf(survey.yardstick, sizeof(survey.yardstick), "%s",
 		       run->plan->set->yardstick);
+	(void)snprintf(survey.set_path, sizeof(survey.set_path), "%s",
+		       run->plan->set->path);
 	TRY(measure_libraries(&survey));
 	status = ledger_begin(run->ledger, &survey, digest, why);
 	run->survey = survey.id;

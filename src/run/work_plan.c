@@ -1,6 +1,7 @@
 #include "run/work_plan.h"
 
 #include "corpus/corpus.h"
+#include "run/plan_cells.h"
 
 #include <stdlib.h>
 #include <string.h>
@@ -8,7 +9,7 @@
 /* Rows of table 1 come in steps, to leave room for their page layouts. */
 #define PLACES_A_ROW 16
 
-static bool chosen(const struct names *names, const char *name)
+bool names_hold(const struct names *names, const char *name)
 {
 	if (!names->count)
 		return true;
@@ -69,78 +70,9 @@ static MUST_USE enum status choose_corpora(struct plan *plan,
 	TRY(memory_new(set->corpus_count, sizeof(*plan->corpora),
 		       &plan->corpora));
 	for (size_t i = 0; i < set->corpus_count; i++) {
-		if (chosen(&selection->corpora, set->corpora[i].name))
+		if (names_hold(&selection->corpora, set->corpora[i].name))
 			plan->corpora[plan->corpus_count++] = i;
 	}
-	return STATUS_OK;
-}
-
-static MUST_USE enum status find_codec(const struct set *set,
-				       const struct set_codec *section,
-				       const struct codec **codec,
-				       struct reason *why)
-{
-	*codec = codec_find(section->name);
-	if (*codec)
-		return STATUS_OK;
-	return reason_give(why, STATUS_BAD_USAGE,
-			   "%s:%u: [codec %s]: there is no built-in codec of "
-			   "that name; ratefloor methods shows them",
-			   set->path, section->line, section->name);
-}
-
-static MUST_USE enum status add_levels(struct plan *plan,
-				       const struct set_codec *section,
-				       const struct selection *selection,
-				       size_t *place, struct reason *why)
-{
-	const struct codec *codec;
-
-	TRY(find_codec(plan->set, section, &codec, why));
-	for (size_t i = 0; i < section->levels.count; i++) {
-		for (size_t j = 0; j < section->layouts.count; j++) {
-			struct plan_cell *cell = &plan->cells[plan->cell_count];
-			enum status status;
-
-			*cell = (struct plan_cell){.codec = codec,
-						   .place = (*place)++};
-			status = codec->parse(section->levels.texts[i],
-					      &cell->setting, why);
-			if (status == STATUS_OK)
-				status = layout_parse(section->layouts.texts[j],
-						      &cell->page_bytes, why);
-			if (status != STATUS_OK) {
-				reason_prefix(why, "%s:%u: [codec %s]: ",
-					      plan->set->path, section->line,
-					      section->name);
-				return status;
-			}
-			plan->cell_count +=
-				chosen(&selection->codecs, section->name) &&
-				chosen(&selection->levels,
-				       section->levels.texts[i]);
-		}
-	}
-	return STATUS_OK;
-}
-
-static MUST_USE enum status choose_cells(struct plan *plan,
-					 const struct selection *selection,
-					 struct reason *why)
-{
-	const struct set *set = plan->set;
-	size_t most = 1, place = 0;
-
-	for (size_t i = 0; i < set->codec_count; i++)
-		most += set->codecs[i].levels.count *
-			set->codecs[i].layouts.count;
-	TRY(memory_new_zeroed(most, sizeof(*plan->cells), &plan->cells));
-	for (size_t i = 0; i < set->codec_count; i++)
-		TRY(add_levels(plan, &set->codecs[i], selection, &place, why));
-	if (selection->levels.count && !plan->cell_count)
-		return reason_give(why, STATUS_BAD_USAGE,
-				   "--level: no chosen codec of the set has "
-				   "such a level");
 	return STATUS_OK;
 }
 
@@ -148,7 +80,7 @@ static bool row_wanted(const struct estimator *row,
 		       const struct selection *selection)
 {
 	if (selection->estimators.count &&
-	    chosen(&selection->estimators, row->name))
+	    names_hold(&selection->estimators, row->name))
 		return true;
 	return row->deep ? selection->deep : !selection->estimators.count;
 }
@@ -314,7 +246,7 @@ static MUST_USE enum status plan_lay(struct plan *plan,
 {
 	TRY(check_names(plan->set, selection, why));
 	TRY(choose_corpora(plan, selection));
-	TRY(choose_cells(plan, selection, why));
+	TRY(plan_choose_cells(plan, selection, why));
 	TRY(choose_rows(plan, selection));
 	TRY(lay_items(plan));
 	keep_part(plan, selection);

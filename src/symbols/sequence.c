@@ -34,10 +34,13 @@ static enum status check_rules(struct slice bytes,
 	if (!bytes.length)
 		return reason_give(why, STATUS_BAD_INPUT,
 				   "the corpus is empty: nothing to divide by");
-	if (rules->record_bytes && rules->record_lines)
+	if ((rules->record_bytes > 0) + rules->record_lines +
+		    (rules->record_count > 0) >
+	    1)
 		return reason_give(why, STATUS_BAD_USAGE,
-				   "records are either lines or of fixed "
-				   "width, not both");
+				   "records are lines, or of fixed width, "
+				   "or so many in all: one of these, not "
+				   "both");
 	if (rules->record_bytes && !mapping->symbol_bytes)
 		return reason_give(why, STATUS_BAD_USAGE,
 				   "symbols of the kind %s have no fixed width "
@@ -54,7 +57,7 @@ static size_t count_records(struct slice bytes,
 	if (rules->record_bytes)
 		return bytes.length / rules->record_bytes;
 	if (!rules->record_lines)
-		return 0;
+		return rules->record_count;
 	return line_of(bytes, bytes.length) -
 	       (bytes.bytes[bytes.length - 1] == '\n');
 }

@@ -50,8 +50,8 @@ struct sequence {
 				 1,112,064 scalar values of Unicode; the
 				 distinct words */
 	size_t record_bytes;  /* fixed record width, or 0 */
-	size_t records;       /* number of records (lines or fixed), or 0; a
-				 last line without its end counts */
+	size_t records;       /* number of records, or 0; a last line without
+				 its end counts */
 	const size_t *starts; /* byte offset of every symbol and of the end for
 				 codepoint and word (n + 1), otherwise NULL */
 	uint8_t *owned[3];    /* canonical, codes, starts where made here */
@@ -62,6 +62,7 @@ struct symbol_rules {
 	enum symbol_kind kind;
 	size_t record_bytes; /* records = N bytes */
 	bool record_lines;   /* records = lines */
+	size_t record_count; /* records = N in all: told, not found */
 };
 
 /*
@@ -69,7 +70,7 @@ struct symbol_rules {
  * says which byte and what would be right: STATUS_BAD_INPUT (a length that is
  * no multiple of the width, bytes outside the alphabet, invalid UTF-8, no
  * symbols at all), STATUS_BAD_USAGE (fixed records of a kind whose symbols have
- * no fixed width, or both sorts of records), STATUS_NO_MEMORY.
+ * no fixed width, or two sorts of records), STATUS_NO_MEMORY.
  */
 MUST_USE enum status sequence_init(struct sequence *sequence,
 				   struct slice bytes,

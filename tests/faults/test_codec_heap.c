@@ -73,6 +73,7 @@ static enum status count_framing(void *context)
 	const struct fixture *fixture = context;
 	uint64_t framing = 7;
 	enum status status = fixture->codec->framing(
+		&fixture->setting,
 		(struct slice){fixture->packed.bytes, fixture->packed.length},
 		&framing);
 
@@ -100,6 +101,43 @@ static enum status time_pages(void *context)
 	if (status != STATUS_OK)
 		assert_non_null(strstr(why.text, "out of memory"));
 	return status;
+}
+
+/* A whole cell: dictionaries, pages, flushes and what is spread. */
+static enum status measure_dictionary_cell(void *context)
+{
+	static uint8_t text[120000];
+	const struct setting_words words = {"1", NULL, NULL, "1K"};
+	const struct symbol_rules rules = {.kind = SYMBOL_BYTE};
+	struct codec_setting setting;
+	struct sequence sequence = {.n = 0};
+	struct cuts cuts = {0};
+	struct cell_facts facts = {0};
+	struct reason why = {""};
+	enum status status;
+
+	(void)context;
+	bytes_words(text, sizeof(text), 3);
+	assert_int_equal(
+		setting_parse(codec_find("zstd"), &words, &setting, &why),
+		STATUS_OK);
+	status = sequence_init(&sequence, (struct slice){text, sizeof(text)},
+			       &rules, &why);
+	if (status == STATUS_OK)
+		status = cuts_init(&cuts, &sequence);
+	if (status == STATUS_OK)
+		status = cell_measure(codec_find("zstd"), &setting, 512,
+				      &sequence, &cuts, &facts, &why);
+	cell_facts_release(&facts);
+	cuts_release(&cuts);
+	sequence_release(&sequence);
+	return status;
+}
+
+static void dictionary_cells(void **state)
+{
+	(void)state;
+	inject_each(measure_dictionary_cell, NULL, MOST);
 }
 
 static void each_level(enum status (*action)(void *context))
@@ -154,6 +192,7 @@ int main(void)
 		cmocka_unit_test(decoding),
 		cmocka_unit_test(counting_of_framing),
 		cmocka_unit_test(timing),
+		cmocka_unit_test(dictionary_cells),
 	};
 
 	return cmocka_run_group_tests(tests, NULL, NULL);

@@ -14,6 +14,8 @@
 static const char *const levels[][2] = {
 	{"store", "0"}, {"zlib", "6"}, {"xz", "1"}, {"zstd", "3"}};
 
+static const struct codec_setting usual = {.text = ""};
+
 /* Through a copy of exactly that size, so that a sanitizer sees overreads. */
 static enum status framing_of(const struct codec *codec, const uint8_t *bytes,
 			      size_t length, uint64_t *framing)
@@ -24,7 +26,7 @@ static enum status framing_of(const struct codec *codec, const uint8_t *bytes,
 	assert_non_null(copy);
 	if (length)
 		memcpy(copy, bytes, length);
-	status = codec->framing((struct slice){copy, length}, framing);
+	status = codec->framing(&usual, (struct slice){copy, length}, framing);
 	free(copy);
 	return status;
 }

@@ -34,6 +34,8 @@ static void build(struct survey *survey, uint64_t seed)
 				  pages[i / 6], bytes);
 
 		cell->facts.framing_bytes = random_below(&random, 100);
+		cell->facts.storage_unit = 512;
+		cell->facts.stored_bytes = (bytes + 511) / 512 * 512;
 		if (random_below(&random, 4))
 			tiny_flush(survey, cell, .12 * random_unit(&random), .3,
 				   seed + i);
@@ -58,10 +60,20 @@ static void check_cell(const struct corpus_view *view,
 
 	assert_true(row->known && stack->known);
 	assert_near(sum, row->bits_per_symbol, 1e-12);
+	/* And on to what the units of storage take. */
+	assert_true(stack->has_storage);
+	assert_near(sum + stack->storage,
+		    8 * (double)row->fact->facts.stored_bytes /
+			    (double)view->fact->n,
+		    1e-9);
 	assert_near(view->floor.bits_per_symbol + row->gap,
 		    row->bits_per_symbol, 1e-12);
 	check_interval(&row->interval, row->bits_per_symbol);
 	check_interval(&row->gap_interval, row->gap);
+	check_interval(&stack->restart_interval, stack->restart);
+	check_interval(&stack->family_interval, stack->family);
+	check_interval(&stack->effort_interval, stack->effort);
+	check_interval(&stack->framing_interval, stack->framing);
 	/* The floor is the lowest, so that no payload lies below it. */
 	if (!row->fact->page_bytes)
 		assert_true(row->payload_bits_per_symbol >=

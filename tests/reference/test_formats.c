@@ -26,9 +26,11 @@ static size_t packed_bytes(const char *name, const char *level,
 
 static uint64_t framing_of(const char *name, const struct buffer *packed)
 {
+	const struct codec_setting usual = {.text = ""};
 	uint64_t framing = 0;
 
 	assert_int_equal(codec_find(name)->framing(
+				 &usual,
 				 (struct slice){packed->bytes, packed->length},
 				 &framing),
 			 STATUS_OK);

@@ -115,6 +115,8 @@ static void sample_cells(struct corpus_fact *corpus)
 	cells[0].facts.flushed.headline_q16 = INT64_C(77777777777);
 	cells[0].facts.flushed.blocks = corpus->blocks;
 	sample_blocks(&cells[0].facts.flushed.block_q16, corpus->blocks, 41);
+	cells[0].facts.storage_unit = 4096;
+	cells[0].facts.stored_bytes = UINT64_C(5000003584);
 	cells[0].timed = true;
 	cells[0].timing = (struct cell_timing){.rounds = 5,
 					       .encode_cpu_seconds = 2.385,
@@ -124,6 +126,7 @@ static void sample_cells(struct corpus_fact *corpus)
 					       .encode_spread = 0.021,
 					       .decode_spread = 0.047};
 	sample_cell(&cells[1], "house", "", "4096");
+	cells[1].facts.dictionary_bytes = 110213;
 	cells[1].page_bytes = 4096;
 	cells[1].facts.pages = 1024;
 	cells[1].facts.framing_bytes = 0;
@@ -151,6 +154,7 @@ static void sample_done(struct corpus_fact *corpus)
 	corpus->origin = sample_text("ratefloor synth gauge-frames --seed 7");
 	corpus->rate_known = true;
 	corpus->known_rate = 1.5100372;
+	corpus->rolling = true;
 	corpus->blocks = 100;
 	sample_blocks(&corpus->block_symbols, 100, 41943);
 	sample_blocks(&corpus->block_bytes, 100, 83886);
@@ -176,7 +180,10 @@ void sample_survey(struct survey *survey)
 				  .seed = UINT64_C(0xfedcba9876543210),
 				  .orders = 16,
 				  .gap_limit = 0.385,
-				  .yardstick = "zstd 3"};
+				  .yardstick = "zstd 3",
+				  .tolerance = 0.0035,
+				  .speed_tolerance = 0.175,
+				  .set_path = "bay/night.set"};
 	survey->library_count = 2;
 	survey->libraries = sample_array(2, sizeof(*survey->libraries));
 	survey->libraries[0] = (struct library_fact){"zlib", "1.2.13"};
@@ -299,6 +306,9 @@ static void equal_cells(const struct cell_fact *got,
 	assert_int_equal(a->flushed_bytes, b->flushed_bytes);
 	assert_int_equal(a->encode_memory_bytes, b->encode_memory_bytes);
 	assert_int_equal(a->decode_memory_bytes, b->decode_memory_bytes);
+	assert_int_equal(a->dictionary_bytes, b->dictionary_bytes);
+	assert_int_equal(a->storage_unit, b->storage_unit);
+	assert_int_equal(a->stored_bytes, b->stored_bytes);
 	assert_int_equal(got->timed, wanted->timed);
 	equal_timings(&got->timing, &wanted->timing);
 }
@@ -321,6 +331,7 @@ static void equal_corpora(const struct corpus_fact *got,
 	assert_string_equal(got->origin, wanted->origin);
 	assert_int_equal(got->rate_known, wanted->rate_known);
 	assert_near(got->known_rate, wanted->known_rate, 0);
+	assert_int_equal(got->rolling, wanted->rolling);
 	assert_int_equal(got->blocks, wanted->blocks);
 	for (size_t i = 0; i < wanted->blocks; i++) {
 		assert_int_equal(got->block_symbols[i],
@@ -343,6 +354,9 @@ void sample_assert_equal(const struct survey *got, const struct survey *wanted)
 	assert_int_equal(got->orders, wanted->orders);
 	assert_near(got->gap_limit, wanted->gap_limit, 0);
 	assert_string_equal(got->yardstick, wanted->yardstick);
+	assert_near(got->tolerance, wanted->tolerance, 0);
+	assert_near(got->speed_tolerance, wanted->speed_tolerance, 0);
+	assert_string_equal(got->set_path, wanted->set_path);
 	assert_int_equal(got->library_count, wanted->library_count);
 	for (size_t i = 0; i < wanted->library_count; i++) {
 		assert_string_equal(got->libraries[i].name,

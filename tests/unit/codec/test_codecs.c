@@ -59,7 +59,8 @@ static void round_trip(const struct codec *codec,
 	assert_int_equal(memory.current_bytes, 0);
 	assert_int_equal(plain.length, length);
 	assert_true(length == 0 || memcmp(plain.bytes, bytes, length) == 0);
-	assert_int_equal(codec->framing(job.input, &framing), STATUS_OK);
+	assert_int_equal(codec->framing(setting, job.input, &framing),
+			 STATUS_OK);
 	assert_true(framing <= packed.length);
 	buffer_release(&packed);
 	buffer_release(&plain);
@@ -154,9 +155,9 @@ static void damage_one(const struct codec *codec,
 		assert_true(status == STATUS_OK || status == STATUS_CODEC ||
 			    status == STATUS_NO_MEMORY);
 		assert_true(plain.length <= 5001);
-		(void)codec->framing(hostile.input, &(uint64_t){0});
+		(void)codec->framing(setting, hostile.input, &(uint64_t){0});
 		hostile.input.length = i;
-		(void)codec->framing(hostile.input, &(uint64_t){0});
+		(void)codec->framing(setting, hostile.input, &(uint64_t){0});
 		packed.bytes[i] ^= 0x55;
 	}
 	assert_int_equal(buffer_add(&packed, "x", 1), STATUS_OK);
@@ -202,10 +203,12 @@ static void layouts_are_read(void **state)
 	static const struct {
 		const char *text;
 		size_t bytes;
-	} good[] = {{"whole", 0},    {"4K", 4096},   {"64K", 65536},
-		    {"1M", 1048576}, {"1000", 1000}, {"16", 16}};
-	static const char *const bad[] = {"",  "4k",  "15", "-4K",
-					  "K", "4KB", "1G", "9999999M"};
+	} good[] = {{"whole", 0},      {"4K", 4096},        {"64K", 65536},
+		    {"1M", 1048576},   {"1000", 1000},      {"128", 128},
+		    {"16M", 16777216}, {"16384K", 16777216}};
+	static const char *const bad[] = {"",    "4k",       "127", "-4K",
+					  "K",   "4KB",      "1G",  "9999999M",
+					  "17M", "16777217", "0"};
 	size_t bytes = 7;
 	struct reason why;
 

@@ -25,6 +25,7 @@ static const char whole[] =
 	"tolerance = 0.5 %\n"
 	"speed-tolerance = 20%\n"
 	"yardstick = zstd 3\n"
+	"storage-unit = 4096\n"
 	"\n"
 	"[corpus gauge-frames]\n"
 	"file = marrow/gauge-frames.bin   ; packed\n"
@@ -63,6 +64,7 @@ static void sets_are_read(void **state)
 	assert_near(set.tolerance, 0.005, 1e-12);
 	assert_near(set.speed_tolerance, 0.20, 1e-12);
 	assert_string_equal(set.yardstick, "zstd 3");
+	assert_int_equal(set.storage_unit, 4096);
 	assert_string_equal(set.folder, "bay");
 	assert_int_equal(set.corpus_count, 2);
 	assert_int_equal(set.codec_count, 3);
@@ -78,7 +80,7 @@ static void corpora_are_read(void **state)
 
 	(void)state;
 	assert_string_equal(gauge->name, "gauge-frames");
-	assert_int_equal(gauge->line, 9);
+	assert_int_equal(gauge->line, 10);
 	assert_string_equal(gauge->file, "bay/marrow/gauge-frames.bin");
 	assert_string_equal(gauge->within, "bay");
 	assert_int_equal(gauge->rules.kind, SYMBOL_U16LE);
@@ -142,6 +144,7 @@ static void defaults_are_the_stated_ones(void **state)
 	assert_near(set.tolerance, 0.003, 1e-15);
 	assert_near(set.speed_tolerance, 0.15, 1e-15);
 	assert_string_equal(set.yardstick, "");
+	assert_int_equal(set.storage_unit, 0);
 	assert_int_equal(set.codec_count, 0);
 	set_release(&set);
 }

@@ -68,7 +68,7 @@ static void a_cell_without_blocks_says_why(void **state)
 	assert_false(rows[0].interval.known || rows[0].gap_interval.known);
 	assert_non_null(strstr(rows[0].interval.reason, "11.0%, over the 10%"));
 	assert_false(rows[1].interval.known);
-	assert_non_null(strstr(rows[1].interval.reason, "house cannot be"));
+	assert_non_null(strstr(rows[1].interval.reason, "house 1 cannot be"));
 	assert_near(rows[1].gap, 1.2, 1e-9);
 	analysis_release(&analysis);
 	survey_release(&survey);
@@ -172,6 +172,88 @@ static void the_stack_names_every_part(void **state)
 	survey_release(&survey);
 }
 
+static void is_exact(const struct interval *interval, double value)
+{
+	assert_true(interval->known);
+	assert_near(interval->low, value, 0);
+	assert_near(interval->high, value, 0);
+}
+
+static double width(const struct interval *interval)
+{
+	assert_true(interval->known);
+	return interval->high - interval->low;
+}
+
+/*
+ * Blocks that rise and fall together, by 30% of each length: restart, family
+ * and effort are 4%, 12% and 12% of the floor, and so are their widths.
+ * Source: a multiple of a series has that multiple of its spread.
+ */
+static void every_term_has_its_paired_interval(void **state)
+{
+	struct survey survey;
+	struct analysis analysis;
+	const struct cell_row *rows;
+	struct method_fact *row;
+
+	(void)state;
+	tiny_survey(&survey, 200, 5000);
+	row = tiny_method(&survey, "uniform", 1);
+	tiny_series(&survey, row->findings.series, 2, .3, 5);
+	row = tiny_method(&survey, "uniform", 1);
+	row->page_bytes = 4096;
+	tiny_series(&survey, row->findings.series, 2.08, .3, 5);
+	tiny_flush(&survey, tiny_cell(&survey, "zlib", "9", 4096, 290000), 0,
+		   .3, 5);
+	tiny_flush(&survey, tiny_cell(&survey, "zlib", "1", 4096, 320000), 0,
+		   .3, 5);
+	tiny_cell(&survey, "zlib", "2", 4096, 330000);
+	tiny_analyse(&survey, &analysis);
+	rows = analysis.corpora[0].cells;
+	assert_near(width(&rows[1].stack.restart_interval) /
+			    width(&analysis.corpora[0].floor.interval),
+		    .04, .005);
+	assert_near(width(&rows[1].stack.family_interval) /
+			    width(&rows[1].stack.restart_interval),
+		    .24 / .08, .05);
+	assert_near(width(&rows[1].stack.effort_interval) /
+			    width(&rows[1].stack.restart_interval),
+		    .24 / .08, .05);
+	is_exact(&rows[0].stack.effort_interval, 0);
+	is_exact(&rows[1].stack.framing_interval, 0);
+	/* Level 2 was not flushed: no blocks, and its term says so. */
+	assert_false(rows[2].stack.effort_interval.known);
+	assert_true(rows[2].stack.effort_interval.reason[0] != '\0');
+	assert_true(rows[2].stack.family_interval.known);
+	analysis_release(&analysis);
+	survey_release(&survey);
+}
+
+/* The floor's own codec, whole: nothing between it and the floor. */
+static void a_term_between_a_run_and_itself_is_exact(void **state)
+{
+	struct survey survey;
+	struct analysis analysis;
+	const struct gap_stack *stack;
+
+	(void)state;
+	tiny_survey(&survey, 200, 5000);
+	tiny_series(&survey,
+		    tiny_method(&survey, "uniform", 1)->findings.series, 3, .3,
+		    5);
+	tiny_cell(&survey, "zlib", "9", 0, 290000)->facts.framing_bytes = 625;
+	tiny_analyse(&survey, &analysis);
+	stack = &analysis.corpora[0].cells[0].stack;
+	assert_true(stack->known);
+	is_exact(&stack->restart_interval, 0);
+	is_exact(&stack->family_interval, 0);
+	is_exact(&stack->effort_interval, 0);
+	is_exact(&stack->framing_interval, .005);
+	analysis_release(&analysis);
+	survey_release(&survey);
+}
+
 int main(void)
 {
 	const struct CMUnitTest tests[] = {
@@ -181,6 +263,8 @@ int main(void)
 		cmocka_unit_test(no_percent_of_almost_nothing),
 		cmocka_unit_test(effective_order),
 		cmocka_unit_test(the_stack_names_every_part),
+		cmocka_unit_test(every_term_has_its_paired_interval),
+		cmocka_unit_test(a_term_between_a_run_and_itself_is_exact),
 	};
 
 	return cmocka_run_group_tests(tests, NULL, NULL);

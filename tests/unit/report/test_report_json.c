@@ -27,8 +27,12 @@ static const char *const floor_keys[] = {"held_by", "bits_per_symbol", "low",
 					 "high", NULL};
 static const char *const bracket_keys[] = {"low", "high", "open_below",
 					   "not_calibrated", NULL};
-static const char *const stack_keys[] = {"floor",  "restart", "family",
-					 "effort", "framing", NULL};
+static const char *const stack_keys[] = {
+	"floor",          "restart",        "family",        "effort",
+	"framing",        "best_level",     "restart_low",   "restart_high",
+	"restart_reason", "family_low",     "family_high",   "family_reason",
+	"effort_low",     "effort_high",    "effort_reason", "framing_low",
+	"framing_high",   "framing_reason", "storage",       NULL};
 static const char *const cell_keys[] = {
 	"codec",
 	"level",
@@ -185,6 +189,14 @@ static void values_are_those_of_the_analysis(void **state)
 	is_real(of_row(root, "cells", 0, "encode_mb_per_s"), 3.517);
 	is_real(json_object_get(of_row(root, "cells", 0, "stack"), "effort"),
 		-0.01);
+	is_real(json_object_get(of_row(root, "cells", 0, "stack"),
+				"family_high"),
+		0.1469);
+	assert_true(json_is_null(json_object_get(
+		of_row(root, "cells", 0, "stack"), "effort_low")));
+	is_text(json_object_get(of_row(root, "cells", 0, "stack"),
+				"effort_reason"),
+		"only 5.2 effective blocks where 8 are needed");
 	is_count(of_row(root, "cells", 0, "effective_order"), 1);
 	json_decref(root);
 	sample_analysis_release(&sample);

@@ -230,10 +230,14 @@ static void records_are_counted(void **state)
 	assert_int_equal(records_in(LITERAL("ab"), lines), 1);
 	assert_int_equal(records_in(LITERAL("abcdef"), fixed), 2);
 	assert_int_equal(records_in(LITERAL("a\nb\n"), none), 0);
+	none.record_count = 3;
+	assert_int_equal(records_in(LITERAL("a\nb\n"), none), 3);
 	fixed.kind = SYMBOL_WORD;
 	assert_refused(LITERAL("abcdef"), fixed, STATUS_BAD_USAGE,
 		       "records = lines");
-	fixed = (struct symbol_rules){SYMBOL_BYTE, 2, true};
+	fixed = (struct symbol_rules){SYMBOL_BYTE, 2, true, 0};
+	assert_refused(LITERAL("abcdef"), fixed, STATUS_BAD_USAGE, "not both");
+	fixed = (struct symbol_rules){SYMBOL_BYTE, 2, false, 3};
 	assert_refused(LITERAL("abcdef"), fixed, STATUS_BAD_USAGE, "not both");
 }
 
