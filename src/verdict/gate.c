@@ -219,6 +219,7 @@ void gate_command(const struct gate_check *check, const char *set_path,
 	char path[GATE_COMMAND_BYTES / 2] = "SET";
 	bool timed = check->rule == GATE_SPEED;
 	bool cell = check->key.codec[0] != '\0';
+	bool level = cell && check->key.level[0];
 
 	if (*set_path)
 		(void)quote(set_path, path, sizeof(path));
@@ -227,6 +228,6 @@ void gate_command(const struct gate_check *check, const char *set_path,
 		       "again.ledger",
 		       path, check->corpus[0] ? " --corpus " : "",
 		       check->corpus, cell ? " --codec " : "", check->key.codec,
-		       cell && check->key.level[0] ? " --level " : "",
-		       check->key.level, timed ? "" : " --no-timing");
+		       level ? " --level " : "", level ? check->key.level : "",
+		       timed ? "" : " --no-timing");
 }
