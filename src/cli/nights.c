@@ -1,5 +1,6 @@
 #include "cli/nights.h"
 
+#include <math.h>
 #include <stdio.h>
 #include <string.h>
 
@@ -7,9 +8,8 @@
 
 static const struct analysis_rules rules = {.draws = 1999, .confidence = 0.95};
 
-/* Rounds of a repeat: an odd number, so that the median is one of them. */
-#define PIN_ROUNDS 5
-#define JUDGE_ROUNDS 7
+/* Ratios that are of no interest. */
+#define ANY_RATIO HUGE_VAL
 
 enum status night_read(struct ledger *ledger, int64_t id, struct night *night,
 		       struct reason *why)
@@ -64,8 +64,8 @@ void remeasure_release(struct remeasure *again)
 /* One cell; the corpus must still have the bytes of the figures. */
 static MUST_USE enum status
 measure(const struct remeasure *again, const struct baseline *figures,
-	const struct baseline_cell *cell, unsigned rounds,
-	struct relative ratios[RATIO_COUNT], struct reason *why)
+	const struct baseline_cell *cell, const double *enough,
+	struct retime_result *result, struct reason *why)
 {
 	const struct baseline_corpus *corpus =
 		baseline_corpus_find(figures, cell->corpus);
@@ -76,13 +76,15 @@ measure(const struct remeasure *again, const struct baseline *figures,
 		.sha256 = corpus ? corpus->sha256 : "",
 		.yardstick = figures->yardstick,
 		.key = &cell->key,
-		.rounds = rounds,
+		.enough = enough,
+		.memory = enough && (enough[RATIO_ENCODE_MEMORY] < ANY_RATIO ||
+				     enough[RATIO_DECODE_MEMORY] < ANY_RATIO),
 	};
 
 	if (!again->quiet)
 		(void)fprintf(stderr, "measuring again: %s, %s\n", cell->corpus,
 			      cell_words(&cell->key).text);
-	return retime(&job, ratios, why);
+	return retime(&job, result, why);
 }
 
 static bool is_timed(const struct baseline_cell *cell)
@@ -91,69 +93,102 @@ static bool is_timed(const struct baseline_cell *cell)
 	       cell->ratios[RATIO_DECODE_TIME].known;
 }
 
-enum status remeasure_pin(const struct remeasure *again,
-			  struct baseline *baseline, struct reason *why)
+/* The slower of two: a lucky pin would cry wolf every night. */
+static MUST_USE enum status pin_cell(const struct remeasure *again,
+				     const struct baseline *baseline,
+				     struct baseline_cell *cell, double *unrest,
+				     struct reason *why)
 {
-	for (size_t i = 0; i < baseline->cell_count; i++) {
-		struct baseline_cell *cell = &baseline->cells[i];
-		struct relative ratios[RATIO_COUNT];
+	struct retime_result first, second;
 
-		if (!is_timed(cell))
-			continue;
-		TRY(measure(again, baseline, cell, PIN_ROUNDS, ratios, why));
-		for (size_t j = 0; j < RATIO_COUNT; j++) {
-			if (cell->ratios[j].known && ratios[j].known)
-				cell->ratios[j] = ratios[j];
-		}
+	TRY(measure(again, baseline, cell, NULL, &first, why));
+	TRY(measure(again, baseline, cell, NULL, &second, why));
+	for (size_t i = RATIO_ENCODE_TIME; i <= RATIO_DECODE_TIME; i++) {
+		const struct relative *a = &first.ratios[i];
+		const struct relative *b = &second.ratios[i];
+
+		if (cell->ratios[i].known && a->known && b->known)
+			cell->ratios[i] = a->value > b->value ? *a : *b;
 	}
+	*unrest = fmax(*unrest, fmin(first.unrest, second.unrest));
 	return STATUS_OK;
 }
 
-/* The lower of two is what counts: a breach must be seen twice. */
-static MUST_USE enum status measure_twice(const struct remeasure *again,
-					  const struct gate *gate,
-					  const struct baseline_cell *cell,
-					  struct relative ratios[RATIO_COUNT],
-					  struct reason *why)
+enum status remeasure_pin(const struct remeasure *again,
+			  struct baseline *baseline, struct reason *why)
 {
-	struct relative second[RATIO_COUNT];
+	double unrest = 0;
 
-	TRY(measure(again, gate->tonight, cell, JUDGE_ROUNDS, ratios, why));
-	TRY(measure(again, gate->tonight, cell, JUDGE_ROUNDS, second, why));
-	for (size_t i = 0; i < RATIO_COUNT; i++) {
-		if (second[i].known && second[i].value < ratios[i].value)
-			ratios[i] = second[i];
+	for (size_t i = 0; i < baseline->cell_count; i++) {
+		if (is_timed(&baseline->cells[i]))
+			TRY(pin_cell(again, baseline, &baseline->cells[i],
+				     &unrest, why));
 	}
+	if (unrest > baseline->speed_tolerance / 2)
+		(void)fprintf(stderr,
+			      "ratefloor gate: the machine was busy (%.0f%% "
+			      "unrest): pin again on a quiet one, or times "
+			      "are judged against uncertain ones\n",
+			      100 * unrest);
 	return STATUS_OK;
+}
+
+/* The suspected checks of one cell stand side by side: from first, count. */
+static size_t suspects_of_cell(const struct gate *gate, size_t first,
+			       double enough[RATIO_COUNT])
+{
+	const struct gate_check *check = &gate->checks[first];
+	size_t i = first;
+
+	for (size_t j = 0; j < RATIO_COUNT; j++)
+		enough[j] = ANY_RATIO;
+	for (; i < gate->count; i++) {
+		const struct gate_check *next = &gate->checks[i];
+
+		if (strcmp(next->corpus, check->corpus) != 0 ||
+		    strcmp(cell_words(&next->key).text,
+			   cell_words(&check->key).text) != 0)
+			break;
+		if (next->outcome == GATE_SUSPECTED)
+			enough[next->ratio] = gate_enough(gate, next);
+	}
+	return i - first;
+}
+
+static void settle(const struct remeasure *again, struct gate *gate,
+		   size_t first, size_t count, const double enough[RATIO_COUNT])
+{
+	struct gate_check *check = &gate->checks[first];
+	struct retime_result result;
+	struct reason why = {""};
+
+	if (measure(again, gate->tonight,
+		    baseline_cell_find(gate->tonight, check->corpus,
+				       &check->key),
+		    enough, &result, &why) != STATUS_OK) {
+		(void)fprintf(stderr,
+			      "ratefloor gate: %s, %s cannot be measured "
+			      "again: %s\n",
+			      check->corpus, cell_words(&check->key).text,
+			      why.text);
+		return;
+	}
+	for (size_t i = 0; i < count; i++)
+		gate_repeat(gate, &check[i], &result.ratios[check[i].ratio],
+			    result.unrest);
 }
 
 void remeasure_suspects(const struct remeasure *again, struct gate *gate)
 {
-	struct relative ratios[RATIO_COUNT];
-	const struct baseline_cell *measured = NULL;
-	enum status status = STATUS_OK;
+	double enough[RATIO_COUNT];
 
-	for (size_t i = 0; i < gate->count; i++) {
-		struct gate_check *check = &gate->checks[i];
-		const struct baseline_cell *cell;
-		struct reason why = {""};
+	for (size_t i = 0; i < gate->count;) {
+		size_t count = 1;
 
-		if (check->outcome != GATE_SUSPECTED)
-			continue;
-		cell = baseline_cell_find(gate->tonight, check->corpus,
-					  &check->key);
-		if (cell != measured) {
-			status = measure_twice(again, gate, cell, ratios, &why);
-			measured = cell;
-			if (status != STATUS_OK)
-				(void)fprintf(stderr,
-					      "ratefloor gate: %s, %s cannot "
-					      "be measured again: %s\n",
-					      check->corpus,
-					      cell_words(&check->key).text,
-					      why.text);
+		if (gate->checks[i].outcome == GATE_SUSPECTED) {
+			count = suspects_of_cell(gate, i, enough);
+			settle(again, gate, i, count, enough);
 		}
-		if (status == STATUS_OK)
-			gate_repeat(gate, check, &ratios[check->ratio]);
+		i += count;
 	}
 }

@@ -8,11 +8,15 @@
 #include <stdio.h>
 #include <string.h>
 
-/* CPU seconds that a reading lasts at least: the clock's ticks and a cold cache
- * are then small against it. */
+/* CPU seconds that a round of a cell lasts at least: many short passes find a
+ * quiet moment, one long pass is its own average. */
 #define ENCODE_SECONDS 0.02
 #define DECODE_SECONDS 0.005
-#define READINGS_MOST 200
+#define PASSES_MOST 200
+/* Long passes need fewer rounds: so many at least, and no more after so many
+ * seconds of CPU. */
+#define ROUNDS_LEAST 3
+#define SECONDS_MOST 2.0
 
 static const struct cell_clock clock_of_thread = {thread_cpu_seconds,
 						  wall_seconds};
@@ -72,27 +76,39 @@ static const struct set_corpus *find_corpus(const struct set *set,
 	return NULL;
 }
 
-/* Mean seconds of one encode and one decode. */
-static MUST_USE enum status read_times(const struct plan_cell *cell,
-				       struct slice input,
-				       struct cell_round *mean,
-				       struct reason *why)
-{
-	struct cell_round sum = {0, 0, 0, 0};
-	unsigned readings = 0;
+/* The shortest passes of a cell: in this round, and in all so far. */
+struct lows {
+	double encode, decode;
+};
 
-	while (readings < READINGS_MOST && (sum.encode_cpu < ENCODE_SECONDS ||
-					    sum.decode_cpu < DECODE_SECONDS)) {
-		struct cell_round round;
+static void lower(struct lows *lows, double encode, double decode)
+{
+	if (encode > 0 && (!(lows->encode > 0) || encode < lows->encode))
+		lows->encode = encode;
+	if (decode > 0 && (!(lows->decode > 0) || decode < lows->decode))
+		lows->decode = decode;
+}
+
+/* Adds the CPU that it took to *spent. */
+static MUST_USE enum status time_round(const struct plan_cell *cell,
+				       struct slice input, struct lows *lows,
+				       double *spent, struct reason *why)
+{
+	double encode = 0, decode = 0;
+
+	*lows = (struct lows){0, 0};
+	for (unsigned i = 0; i < PASSES_MOST && (encode < ENCODE_SECONDS ||
+						 decode < DECODE_SECONDS);
+	     i++) {
+		struct cell_round pass;
 
 		TRY(cell_time(cell->codec, &cell->setting, cell->page_bytes,
-			      input, &clock_of_thread, &round, why));
-		sum.encode_cpu += round.encode_cpu;
-		sum.decode_cpu += round.decode_cpu;
-		readings++;
+			      input, &clock_of_thread, &pass, why));
+		lower(lows, pass.encode_cpu, pass.decode_cpu);
+		encode += pass.encode_cpu;
+		decode += pass.decode_cpu;
 	}
-	mean->encode_cpu = sum.encode_cpu / readings;
-	mean->decode_cpu = sum.decode_cpu / readings;
+	*spent += encode + decode;
 	return STATUS_OK;
 }
 
@@ -105,41 +121,51 @@ static struct relative over(double value, double yardstick)
 	return ratio;
 }
 
-static struct relative median_of(double *values, unsigned count)
+static bool is_enough(const struct retime_job *job,
+		      const struct relative ratios[RATIO_COUNT])
 {
-	struct relative median = {.known = count > 0};
+	return job->enough &&
+	       ratios[RATIO_ENCODE_TIME].value <=
+		       job->enough[RATIO_ENCODE_TIME] &&
+	       ratios[RATIO_DECODE_TIME].value <=
+		       job->enough[RATIO_DECODE_TIME];
+}
 
-	sort_reals(values, count);
-	if (count)
-		median.value = quantile_sorted(values, count, 0.5);
-	return median;
+static double unrest_of(double *rounds, unsigned count, double best)
+{
+	sort_reals(rounds, count);
+	return best > 0 ? quantile_sorted(rounds, count, 0.5) / best - 1 : 0;
 }
 
 static MUST_USE enum status time_pair(const struct retime_job *job,
 				      const struct pair *pair,
-				      struct relative ratios[RATIO_COUNT],
+				      struct retime_result *result,
 				      struct reason *why)
 {
-	double encode[RETIME_ROUNDS_MAX], decode[RETIME_ROUNDS_MAX];
-	unsigned encodes = 0, decodes = 0;
+	struct lows cell = {0, 0}, yardstick = {0, 0};
+	double rounds[RETIME_ROUNDS], spent = 0;
+	unsigned count = 0;
 
-	for (unsigned i = 0; i < job->rounds; i++) {
-		struct cell_round cell = {0}, yardstick = {0};
-		struct relative ratio;
+	while (count < RETIME_ROUNDS &&
+	       (count < ROUNDS_LEAST || spent < SECONDS_MOST)) {
+		struct lows round;
 
 		if (job->stop && *job->stop)
 			return reason_give(why, STATUS_CANCELLED, "stopped");
-		TRY(read_times(pair->yardstick, pair->input, &yardstick, why));
-		TRY(read_times(pair->cell, pair->input, &cell, why));
-		ratio = over(cell.encode_cpu, yardstick.encode_cpu);
-		if (ratio.known)
-			encode[encodes++] = ratio.value;
-		ratio = over(cell.decode_cpu, yardstick.decode_cpu);
-		if (ratio.known)
-			decode[decodes++] = ratio.value;
+		TRY(time_round(pair->yardstick, pair->input, &round, &spent,
+			       why));
+		lower(&yardstick, round.encode, round.decode);
+		rounds[count++] = round.encode;
+		TRY(time_round(pair->cell, pair->input, &round, &spent, why));
+		lower(&cell, round.encode, round.decode);
+		result->ratios[RATIO_ENCODE_TIME] =
+			over(cell.encode, yardstick.encode);
+		result->ratios[RATIO_DECODE_TIME] =
+			over(cell.decode, yardstick.decode);
+		if (is_enough(job, result->ratios))
+			break;
 	}
-	ratios[RATIO_ENCODE_TIME] = median_of(encode, encodes);
-	ratios[RATIO_DECODE_TIME] = median_of(decode, decodes);
+	result->unrest = unrest_of(rounds, count, yardstick.encode);
 	return STATUS_OK;
 }
 
@@ -164,7 +190,7 @@ static void weigh_pair(const struct pair *pair, const struct resident *resident,
 static MUST_USE enum status measure_pair(const struct retime_job *job,
 					 struct resident *resident,
 					 struct pair *pair,
-					 struct relative ratios[RATIO_COUNT],
+					 struct retime_result *result,
 					 struct reason *why)
 {
 	enum status status = resident_take(resident, memory_available());
@@ -180,20 +206,21 @@ static MUST_USE enum status measure_pair(const struct retime_job *job,
 				   job->corpus);
 	pair->input = (struct slice){resident->sequence.canonical,
 				     resident->sequence.canonical_bytes};
-	TRY(time_pair(job, pair, ratios, why));
-	weigh_pair(pair, resident, ratios);
+	TRY(time_pair(job, pair, result, why));
+	if (job->memory)
+		weigh_pair(pair, resident, result->ratios);
 	return STATUS_OK;
 }
 
-enum status retime(const struct retime_job *job,
-		   struct relative ratios[RATIO_COUNT], struct reason *why)
+enum status retime(const struct retime_job *job, struct retime_result *result,
+		   struct reason *why)
 {
 	const struct set_corpus *corpus = find_corpus(job->set, job->corpus);
 	struct pair pair = {
 		.cell = find_cell(job->plan, job->key),
 		.yardstick = find_yardstick(job->plan, job->yardstick),
 	};
-	struct relative made[RATIO_COUNT] = {{.known = false}};
+	struct retime_result made = {.unrest = 0};
 	struct resident resident = {.declared = NULL};
 	enum status status;
 
@@ -205,10 +232,10 @@ enum status retime(const struct retime_job *job,
 				   : !pair.cell ? job->key->codec
 						: job->yardstick);
 	TRY(resident_init(&resident, corpus, 1));
-	status = measure_pair(job, &resident, &pair, made, why);
+	status = measure_pair(job, &resident, &pair, &made, why);
 	resident_drop(&resident);
 	resident_release(&resident);
 	if (status == STATUS_OK)
-		memcpy(ratios, made, sizeof(made));
+		*result = made;
 	return status;
 }

@@ -9,6 +9,8 @@
 
 #include <signal.h>
 
+#define RETIME_ROUNDS 9
+
 /* What to measure again. All borrowed. */
 struct retime_job {
 	const struct set *set;
@@ -17,21 +19,31 @@ struct retime_job {
 	const char *sha256; /* the bytes must still be these */
 	const char *yardstick;
 	const struct cell_key *key;
-	unsigned rounds;                   /* 1 to RETIME_ROUNDS_MAX */
+	/*
+	 * Ratios of times that need no closer look: once both are at or below
+	 * theirs, the rest of the rounds is saved. NULL: all rounds.
+	 */
+	const double *enough; /* RATIO_COUNT of them; times are read */
+	bool memory;          /* measure memory, too */
 	const volatile sig_atomic_t *stop; /* as in run_rules; may be NULL */
 };
-#define RETIME_ROUNDS_MAX 31
+
+struct retime_result {
+	struct relative ratios[RATIO_COUNT];
+	/* How far the yardstick's rounds lie above its best, as a share, by
+	 * the median: a busy machine shows here. */
+	double unrest;
+};
 
 /*
- * In each round the yardstick and the cell are timed one after the other, so
- * that a drift of the machine meets both; the ratio is the median over the
- * rounds. Short ones are repeated within a round until the clock can tell.
- * Memory is measured once. STATUS_NOT_FOUND: the set has no such corpus, cell
+ * In each of RETIME_ROUNDS rounds (fewer where a pass takes long) the yardstick
+ * and the cell are timed one after the other, several times where a pass is
+ * short. What disturbs a pass only ever lengthens it, so the ratio is that of
+ * the two shortest passes. STATUS_NOT_FOUND: the set has no such corpus, cell
  * or yardstick; STATUS_MISMATCH: the corpus has other bytes now; those of
  * opening it; STATUS_CODEC; STATUS_CANCELLED; STATUS_NO_MEMORY.
  */
 MUST_USE enum status retime(const struct retime_job *job,
-			    struct relative ratios[RATIO_COUNT],
-			    struct reason *why);
+			    struct retime_result *result, struct reason *why);
 
 #endif

@@ -73,10 +73,13 @@ const char *gate_rule_name(enum gate_rule rule); /* "size", "speed" */
 
 /*
  * Settles a suspected check with a ratio measured again: it is breached only
- * if the repeat is over the tolerance, too.
+ * if the repeat is over the tolerance, too. unrest: of the machine meanwhile,
+ * as a share; over half of the tolerance the suspicion stays one.
  */
 void gate_repeat(const struct gate *gate, struct gate_check *check,
-		 const struct relative *again);
+		 const struct relative *again, double unrest);
+/* The ratio up to which no closer look is taken. */
+double gate_enough(const struct gate *gate, const struct gate_check *check);
 
 /*
  * Reaches further back: older is a survey judged against the same pin. Checks

@@ -1,5 +1,7 @@
 #include "verdict/gate_parts.h"
 
+#include <stdio.h>
+
 static const struct {
 	const char *words;
 	enum gate_rule rule;
@@ -61,14 +63,29 @@ void gate_ratios(struct gate *gate, const struct baseline_cell *pinned,
 	}
 }
 
-void gate_repeat(const struct gate *gate, struct gate_check *check,
-		 const struct relative *again)
+double gate_enough(const struct gate *gate, const struct gate_check *check)
 {
+	return check->pinned * (1 + SUSPICION * gate->tonight->speed_tolerance);
+}
+
+void gate_repeat(const struct gate *gate, struct gate_check *check,
+		 const struct relative *again, double unrest)
+{
+	double tolerance = gate->tonight->speed_tolerance;
+	char words[80];
+
 	if (check->outcome != GATE_SUSPECTED || !again->known)
 		return;
 	check->found = again->value;
-	check->outcome = over(check, gate->tonight->speed_tolerance)
-				 ? GATE_BREACHED
-				 : GATE_PASSED;
-	say_ratio(gate, check, "; measured again");
+	if (!over(check, tolerance))
+		check->outcome = GATE_PASSED;
+	else if (check->rule == GATE_MEMORY || unrest <= SUSPICION * tolerance)
+		check->outcome = GATE_BREACHED;
+	(void)snprintf(words, sizeof(words),
+		       check->outcome == GATE_SUSPECTED
+			       ? "; measured again on a machine too busy to "
+				 "tell (%.0f%% unrest)"
+			       : "; measured again",
+		       100 * unrest);
+	say_ratio(gate, check, words);
 }
