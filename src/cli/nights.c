@@ -4,6 +4,7 @@
 #include <stdio.h>
 #include <string.h>
 
+#include "cli/others.h"
 #include "run/retime.h"
 
 static const struct analysis_rules rules = {.draws = 1999, .confidence = 0.95};
@@ -61,6 +62,11 @@ void remeasure_release(struct remeasure *again)
 	set_release(&again->set);
 }
 
+static double larger(double a, double b)
+{
+	return a > b ? a : b;
+}
+
 /* One cell; the corpus must still have the bytes of the figures. */
 static MUST_USE enum status
 measure(const struct remeasure *again, const struct baseline *figures,
@@ -69,6 +75,7 @@ measure(const struct remeasure *again, const struct baseline *figures,
 {
 	const struct baseline_corpus *corpus =
 		baseline_corpus_find(figures, cell->corpus);
+	const struct others before = others_now();
 	const struct retime_job job = {
 		.set = &again->set,
 		.plan = &again->plan,
@@ -84,7 +91,10 @@ measure(const struct remeasure *again, const struct baseline *figures,
 	if (!again->quiet)
 		(void)fprintf(stderr, "measuring again: %s, %s\n", cell->corpus,
 			      cell_words(&cell->key).text);
-	return retime(&job, result, why);
+	TRY(retime(&job, result, why));
+	/* A busy neighbour need not be uneven to disturb. */
+	result->unrest = larger(result->unrest, others_since(&before));
+	return STATUS_OK;
 }
 
 static bool is_timed(const struct baseline_cell *cell)
@@ -110,7 +120,7 @@ static MUST_USE enum status pin_cell(const struct remeasure *again,
 		if (cell->ratios[i].known && a->known && b->known)
 			cell->ratios[i] = a->value > b->value ? *a : *b;
 	}
-	*unrest = fmax(*unrest, fmin(first.unrest, second.unrest));
+	*unrest = larger(*unrest, larger(first.unrest, second.unrest));
 	return STATUS_OK;
 }
 
