@@ -143,39 +143,104 @@ enum status remeasure_pin(const struct remeasure *again,
 	return STATUS_OK;
 }
 
-/* The suspected checks of one cell stand side by side: from first, count. */
-static size_t suspects_of_cell(const struct gate *gate, size_t first,
-			       double enough[RATIO_COUNT])
+/* Checks of one cell, side by side, some of them suspected. */
+struct suspects {
+	size_t first, count;
+	double enough[RATIO_COUNT]; /* see run/retime.h */
+};
+
+static bool same_cell(const struct gate_check *a, const struct gate_check *b)
 {
-	const struct gate_check *check = &gate->checks[first];
-	size_t i = first;
+	return strcmp(a->corpus, b->corpus) == 0 &&
+	       strcmp(cell_words(&a->key).text, cell_words(&b->key).text) == 0;
+}
 
-	for (size_t j = 0; j < RATIO_COUNT; j++)
-		enough[j] = ANY_RATIO;
-	for (; i < gate->count; i++) {
-		const struct gate_check *next = &gate->checks[i];
+static void gather(const struct gate *gate, size_t first,
+		   struct suspects *suspects)
+{
+	*suspects = (struct suspects){.first = first};
+	for (size_t i = 0; i < RATIO_COUNT; i++)
+		suspects->enough[i] = ANY_RATIO;
+	for (size_t i = first; i < gate->count; i++) {
+		const struct gate_check *check = &gate->checks[i];
 
-		if (strcmp(next->corpus, check->corpus) != 0 ||
-		    strcmp(cell_words(&next->key).text,
-			   cell_words(&check->key).text) != 0)
+		if (!same_cell(check, &gate->checks[first]))
 			break;
-		if (next->outcome == GATE_SUSPECTED)
-			enough[next->ratio] = gate_enough(gate, next);
+		if (check->outcome == GATE_SUSPECTED)
+			suspects->enough[check->ratio] =
+				gate_enough(gate, check);
+		suspects->count++;
 	}
-	return i - first;
+}
+
+/* Whether anything that was suspected is over its tolerance so far. */
+static bool any_over(const struct gate *gate, const struct suspects *suspects,
+		     const struct retime_result *result)
+{
+	for (size_t i = 0; i < suspects->count; i++) {
+		const struct gate_check *check =
+			&gate->checks[suspects->first + i];
+
+		if (check->outcome == GATE_SUSPECTED &&
+		    gate_over(gate, check, &result->ratios[check->ratio]))
+			return true;
+	}
+	return false;
+}
+
+/* The better of two attempts counts, for each ratio. */
+static void keep_better(struct retime_result *kept,
+			const struct retime_result *other)
+{
+	for (size_t i = 0; i < RATIO_COUNT; i++) {
+		if (!kept->ratios[i].known ||
+		    (other->ratios[i].known &&
+		     other->ratios[i].value < kept->ratios[i].value))
+			kept->ratios[i] = other->ratios[i];
+	}
+	kept->unrest = larger(kept->unrest, other->unrest);
+}
+
+/*
+ * A disturbance from outside, another guest of the same machine for example,
+ * shows in no count of ours, but it passes: a breach is seen in each of several
+ * attempts some time apart.
+ */
+static MUST_USE enum status attempt(const struct remeasure *again,
+				    const struct gate *gate,
+				    const struct suspects *suspects,
+				    struct retime_result *result,
+				    struct reason *why)
+{
+	static const unsigned waits[] = {0, 3, 15};
+	const struct gate_check *check = &gate->checks[suspects->first];
+	const struct baseline_cell *cell =
+		baseline_cell_find(gate->tonight, check->corpus, &check->key);
+
+	for (size_t i = 0; i < sizeof(waits) / sizeof(waits[0]); i++) {
+		struct retime_result next;
+
+		retime_wait(waits[i]);
+		TRY(measure(again, gate->tonight, cell, suspects->enough, &next,
+			    why));
+		if (i)
+			keep_better(result, &next);
+		else
+			*result = next;
+		if (!any_over(gate, suspects, result))
+			break;
+	}
+	return STATUS_OK;
 }
 
 static void settle(const struct remeasure *again, struct gate *gate,
-		   size_t first, size_t count, const double enough[RATIO_COUNT])
+		   const struct suspects *suspects)
 {
-	struct gate_check *check = &gate->checks[first];
+	struct gate_check *check = &gate->checks[suspects->first];
 	struct retime_result result;
 	struct reason why = {""};
 
-	if (measure(again, gate->tonight,
-		    baseline_cell_find(gate->tonight, check->corpus,
-				       &check->key),
-		    enough, &result, &why) != STATUS_OK) {
+	if (attempt(again, gate, suspects, &result, &why) != STATUS_OK) {
 		(void)fprintf(stderr,
 			      "ratefloor gate: %s, %s cannot be measured "
 			      "again: %s\n",
@@ -183,22 +248,20 @@ static void settle(const struct remeasure *again, struct gate *gate,
 			      why.text);
 		return;
 	}
-	for (size_t i = 0; i < count; i++)
+	for (size_t i = 0; i < suspects->count; i++)
 		gate_repeat(gate, &check[i], &result.ratios[check[i].ratio],
 			    result.unrest);
 }
 
 void remeasure_suspects(const struct remeasure *again, struct gate *gate)
 {
-	double enough[RATIO_COUNT];
-
 	for (size_t i = 0; i < gate->count;) {
-		size_t count = 1;
+		struct suspects suspects = {.count = 1};
 
 		if (gate->checks[i].outcome == GATE_SUSPECTED) {
-			count = suspects_of_cell(gate, i, enough);
-			settle(again, gate, i, count, enough);
+			gather(gate, i, &suspects);
+			settle(again, gate, &suspects);
 		}
-		i += count;
+		i += suspects.count;
 	}
 }

@@ -13,6 +13,8 @@
 #define ENCODE_SECONDS 0.02
 #define DECODE_SECONDS 0.005
 #define PASSES_MOST 200
+/* A round is not stretched for a quick decoder behind a slow encoder. */
+#define ROUND_SECONDS_MOST 0.1
 /* Long passes need fewer rounds: so many at least, and no more after so many
  * seconds of CPU. */
 #define ROUNDS_LEAST 3
@@ -97,8 +99,9 @@ static MUST_USE enum status time_round(const struct plan_cell *cell,
 	double encode = 0, decode = 0;
 
 	*lows = (struct lows){0, 0};
-	for (unsigned i = 0; i < PASSES_MOST && (encode < ENCODE_SECONDS ||
-						 decode < DECODE_SECONDS);
+	for (unsigned i = 0;
+	     i < PASSES_MOST && encode + decode < ROUND_SECONDS_MOST &&
+	     (encode < ENCODE_SECONDS || decode < DECODE_SECONDS);
 	     i++) {
 		struct cell_round pass;
 
@@ -210,6 +213,13 @@ static MUST_USE enum status measure_pair(const struct retime_job *job,
 	if (job->memory)
 		weigh_pair(pair, resident, result->ratios);
 	return STATUS_OK;
+}
+
+void retime_wait(unsigned seconds)
+{
+	const struct timespec wait = {(time_t)seconds, 0};
+
+	(void)nanosleep(&wait, NULL);
 }
 
 enum status retime(const struct retime_job *job, struct retime_result *result,

@@ -45,5 +45,7 @@ struct retime_result {
  */
 MUST_USE enum status retime(const struct retime_job *job,
 			    struct retime_result *result, struct reason *why);
+/* Lets a disturbance pass before the next attempt. */
+void retime_wait(unsigned seconds);
 
 #endif

@@ -19,7 +19,8 @@ enum ratio {
 };
 
 struct relative {
-	bool known; /* false: not measured, or the yardstick's is zero */
+	bool known; /* false: not measured, the yardstick's is zero, or a
+		       pass takes less than a millisecond */
 	double value;
 };
 

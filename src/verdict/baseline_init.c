@@ -44,6 +44,16 @@ static struct relative relative_of(double value, double yardstick)
 	return relative;
 }
 
+/* Shorter passes are mostly set-up and the state of caches: no basis. */
+#define SECONDS_LEAST 0.001
+
+static struct relative relative_time(double seconds, double yardstick)
+{
+	if (seconds < SECONDS_LEAST || yardstick < SECONDS_LEAST)
+		return (struct relative){.known = false};
+	return relative_of(seconds, yardstick);
+}
+
 static void find_ratios(const struct cell_fact *cell,
 			const struct cell_fact *yardstick,
 			struct relative ratios[RATIO_COUNT])
@@ -60,11 +70,11 @@ static void find_ratios(const struct cell_fact *cell,
 	if (!cell->timed || !yardstick->timed)
 		return;
 	ratios[RATIO_ENCODE_TIME] =
-		relative_of(cell->timing.encode_cpu_seconds,
-			    yardstick->timing.encode_cpu_seconds);
+		relative_time(cell->timing.encode_cpu_seconds,
+			      yardstick->timing.encode_cpu_seconds);
 	ratios[RATIO_DECODE_TIME] =
-		relative_of(cell->timing.decode_cpu_seconds,
-			    yardstick->timing.decode_cpu_seconds);
+		relative_time(cell->timing.decode_cpu_seconds,
+			      yardstick->timing.decode_cpu_seconds);
 }
 
 static void find_gap(const struct corpus_view *view, const struct cell_row *row,

@@ -78,6 +78,9 @@ const char *gate_rule_name(enum gate_rule rule); /* "size", "speed" */
  */
 void gate_repeat(const struct gate *gate, struct gate_check *check,
 		 const struct relative *again, double unrest);
+/* Whether a ratio measured again is over the tolerance. */
+bool gate_over(const struct gate *gate, const struct gate_check *check,
+	       const struct relative *again);
 /* The ratio up to which no closer look is taken. */
 double gate_enough(const struct gate *gate, const struct gate_check *check);
 

@@ -63,6 +63,14 @@ void gate_ratios(struct gate *gate, const struct baseline_cell *pinned,
 	}
 }
 
+bool gate_over(const struct gate *gate, const struct gate_check *check,
+	       const struct relative *again)
+{
+	return again->known &&
+	       again->value >
+		       check->pinned * (1 + gate->tonight->speed_tolerance);
+}
+
 double gate_enough(const struct gate *gate, const struct gate_check *check)
 {
 	return check->pinned * (1 + SUSPICION * gate->tonight->speed_tolerance);
