@@ -134,7 +134,8 @@ coverage: ## line coverage of the tests, by gcov
 CPPCHECK := cppcheck --quiet --error-exitcode=1 --inline-suppr --std=c11 -j2 \
 	--enable=warning,performance,portability --suppress=missingIncludeSystem -Isrc
 SHELL_SCRIPTS := scripts/demo scripts/test scripts/prove-bare scripts/packages.sh scripts/run-tests \
-	scripts/fetch-corpora .ci/run $(wildcard tests/golden/run scripts/facts scripts/same-facts)
+	scripts/fetch-corpora .ci/run scripts/prove-nights scripts/prove-slurm \
+	scripts/nightly/night scripts/nightly/slurm-array $(wildcard tests/golden/run scripts/facts scripts/same-facts)
 
 lint: ## layout, static analysis, headers alone, shell scripts
 	@clang-format --dry-run -Werror $(wildcard src/*/*.[ch] tests/*/*.[ch] tests/*/*/*.[ch])
