@@ -317,7 +317,7 @@ const struct command command_gate = {
 		"what\n"
 		"was not so at the pin. speed and memory: relative to the\n"
 		"yardstick, over speed-tolerance, and only if measuring again\n"
-		"says so twice.\n"
+		"says so each time, on a machine with nothing else to do.\n"
 		"\n"
 		"Each breach is one line: what, by how much, since when, and\n"
 		"the command that measures it again. What cannot be compared\n"
