@@ -118,7 +118,7 @@ build/fuzz/%: tests/fuzz/%.c $(SOURCES) $(SUPPORT)
 	@mkdir -p $(@D)
 	clang -std=c11 -D_POSIX_C_SOURCE=200809L -DRATEFLOOR_VERSION='"$(VERSION)"' -g -O1 \
 		-ffp-contract=off -pthread -fsanitize=fuzzer,address,undefined -Isrc -Itests $(PKG_CFLAGS) \
-		$< $(filter-out src/cli/main.c,$(SOURCES)) $(LIBS) -o $@
+		$< $(filter-out src/cli/%,$(SOURCES)) $(LIBS) -o $@
 
 fuzz: $(FUZZERS) ## libFuzzer on every entry, FUZZ_SECONDS each
 	@set -e; for fuzzer in $(FUZZERS); do \
