@@ -165,7 +165,7 @@ static MUST_USE enum status time_pair(const struct retime_job *job,
 			over(cell.encode, yardstick.encode);
 		result->ratios[RATIO_DECODE_TIME] =
 			over(cell.decode, yardstick.decode);
-		if (is_enough(job, result->ratios))
+		if (count >= ROUNDS_LEAST && is_enough(job, result->ratios))
 			break;
 	}
 	result->unrest = unrest_of(rounds, count, yardstick.encode);

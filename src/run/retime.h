@@ -21,7 +21,8 @@ struct retime_job {
 	const struct cell_key *key;
 	/*
 	 * Ratios of times that need no closer look: once both are at or below
-	 * theirs, the rest of the rounds is saved. NULL: all rounds.
+	 * theirs after three rounds, the rest of the rounds is saved. NULL: all
+	 * rounds.
 	 */
 	const double *enough; /* RATIO_COUNT of them; times are read */
 	bool memory;          /* measure memory, too */

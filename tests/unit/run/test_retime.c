@@ -96,12 +96,11 @@ static void copying_is_faster_than_matching(void **state)
 
 	fixture_init(*state, &fixture);
 	job = job_of(&fixture, &key);
-	job.enough = enough; /* after one round */
+	job.enough = enough; /* after a few rounds */
 	assert_int_equal(retime(&job, &result, NULL), STATUS_OK);
 	assert_true(result.ratios[RATIO_ENCODE_TIME].known);
 	assert_true(result.ratios[RATIO_ENCODE_TIME].value < 0.5);
 	assert_false(result.ratios[RATIO_ENCODE_MEMORY].known);
-	assert_near(result.unrest, 0, 0); /* one round is its own best */
 	fixture_release(&fixture);
 }
 
