@@ -75,13 +75,13 @@ MUST_USE enum status trend_add(struct trend *trend,
  *
  * Rolling: each night's paired difference is standardised against the mean of
  * the nights before it, as a recursive residual (Brown, Durbin and Evans 1975),
- * its standard error and degrees of freedom, so that on unchanged code and data
- * the residuals are independent and standard normal from the second night on,
- * with no window to choose. A one-sided CUSUM (Page 1954) adds residual less k
- * and alarms above h = ln(500 M) - 1.17, which gives one false alarm in 1000
- * nights over M cells (Siegmund's approximation, 1985). The change began on the
- * night after the sum was last zero; the new level then becomes the reference.
- * Fixed: bytes compared exactly. STATUS_NO_MEMORY.
+ * the mean error of all nights and its degrees of freedom, so that on unchanged
+ * code and data the residuals are independent and standard normal from the
+ * second night on, with no window to choose. A one-sided CUSUM (Page 1954) adds
+ * residual less k and alarms above h = ln(500 M) - 1.17, which gives one false
+ * alarm in 1000 nights over M cells (Siegmund's approximation, 1985). The
+ * change began on the night after the sum was last zero; the new level then
+ * becomes the reference. Fixed: bytes compared exactly. STATUS_NO_MEMORY.
  */
 MUST_USE enum status trend_find(struct trend *trend);
 /* Accepts {0}. */
@@ -97,8 +97,9 @@ const char *trend_version(const struct trend_night *night, const char *library);
  * spread 1. For trend_find and for simulations of it.
  */
 struct trend_cusum {
-	double mean, variance; /* of the level so far; variance of that mean */
-	size_t nights;         /* that are in the mean */
+	double mean;     /* of the level so far */
+	double variance; /* of one night: mean of the squared errors */
+	size_t nights;   /* that are in both */
 	double sum;
 	double squares; /* of residuals, each at most 9 */
 	size_t residuals;

@@ -54,32 +54,34 @@ static void watch_spread(struct trend_cusum *cusum, double z)
 
 void trend_learn(struct trend_cusum *cusum, const struct baseline_pair *pair)
 {
-	double variance = pair->standard_error * pair->standard_error;
+	double square = pair->standard_error * pair->standard_error;
+	double n = (double)++cusum->nights;
 
-	if (!cusum->nights) {
-		cusum->mean = pair->mean;
-		cusum->variance = variance;
-	} else if (variance + cusum->variance > 0) {
-		double weight = cusum->variance / (cusum->variance + variance);
-
-		cusum->mean += weight * (pair->mean - cusum->mean);
-		cusum->variance *= 1 - weight;
-	}
-	cusum->nights++;
+	cusum->mean += (pair->mean - cusum->mean) / n;
+	cusum->variance += (square - cusum->variance) / n;
 }
 
 bool trend_step(struct trend_cusum *cusum, const struct baseline_pair *pair,
 		double limit)
 {
-	double error = hypot(pair->standard_error, sqrt(cusum->variance));
-	double z;
+	double n = (double)cusum->nights, z, square, error;
 
-	if (!cusum->nights || !(error > 0)) {
+	if (!cusum->nights) {
+		trend_learn(cusum, pair);
+		return false;
+	}
+	/* One night's error is a rough figure; all nights measure the same. */
+	square = pair->standard_error * pair->standard_error;
+	square = cusum->variance + (square - cusum->variance) / (n + 1);
+	error = sqrt(square * (1 + 1 / n));
+	if (!(error > 0)) {
 		trend_learn(cusum, pair);
 		return false;
 	}
 	z = score((pair->mean - cusum->mean) / error,
-		  pair->effective_blocks > 2 ? pair->effective_blocks - 1 : 1);
+		  pair->effective_blocks > 2
+			  ? (pair->effective_blocks - 1) * (n + 1)
+			  : 1);
 	cusum->sum += z / (cusum->spread > 1 ? cusum->spread : 1) - TREND_K;
 	if (cusum->sum < 0)
 		cusum->sum = 0;
