@@ -8,6 +8,13 @@
 #define FINDING_NOTES_MAX 16
 
 /*
+ * The reference: its row, and a number that counts up with every change of the
+ * lengths it gives, so that floors of two versions are never compared.
+ */
+#define REFERENCE_NAME "mix"
+#define REFERENCE_VERSION "2"
+
+/*
  * Counts of the grams of one order over a set of start positions. With N
  * positions and counts c_i: distinct = number of i; once, twice = number of
  * c_i equal to 1 and 2; the three sums are over i, in Q16:

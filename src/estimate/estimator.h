@@ -9,13 +9,6 @@
 
 struct suffix; /* suffix/suffix.h */
 
-/*
- * The reference: its row, and a number that counts up with every change of the
- * lengths it gives, so that floors of two versions are never compared.
- */
-#define REFERENCE_NAME "mix"
-#define REFERENCE_VERSION "2"
-
 /* Which way a row errs against the entropy rate. */
 enum leaning { LEANS_ABOVE, LEANS_NONE, LEANS_UNKNOWN };
 
