@@ -4,6 +4,7 @@
 #include <stdarg.h>
 #include <stdio.h>
 
+#include "gap/fitted.h"
 #include "gap/gram_orders.h"
 
 /* How far an order may move between half of the data and all of it. */
@@ -126,8 +127,8 @@ static enum status upper_of_crossfit(const struct edges *edges,
 {
 	for (size_t i = 0; i < edges->crossfit->series_count; i++) {
 		const struct series *series = &edges->crossfit->series[i];
-		struct contribution contribution = contribution_of_series(
-			series, bits_from_q16(series->costs.headline_q16));
+		struct contribution contribution =
+			contribution_of_crossfit(edges->view, series);
 		bool lowered;
 
 		TRY(try_upper(edges, &contribution, row, &lowered));
@@ -168,8 +169,7 @@ static enum status lower_half_width(const struct edges *edges, double *w,
 		*interval = interval_none("no bits by block were recorded");
 		return STATUS_OK;
 	}
-	contribution = contribution_of_series(
-		series, bits_from_q16(series->costs.headline_q16));
+	contribution = contribution_of_grassberger(edges->view, series);
 	TRY(ground_interval(edges->ground, &contribution, NULL, interval,
 			    &row->not_calibrated));
 	*w = interval_half_width(interval);

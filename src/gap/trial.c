@@ -5,6 +5,7 @@
 
 #include "base/memory.h"
 #include "gap/bracket.h"
+#include "gap/fitted.h"
 #include "gap/gram_orders.h"
 #include "gap/headline.h"
 
@@ -55,7 +56,7 @@ static enum status find_grams(const struct corpus_view *view,
 		method ? series_of_order(&method->findings, order) : NULL;
 	const struct order_row *row;
 	struct contribution contribution;
-	struct interval interval;
+	struct interval interval, corrected;
 
 	if (!series || order > view->order_count) {
 		add_unknown(trial, "plug-in");
@@ -64,14 +65,16 @@ static enum status find_grams(const struct corpus_view *view,
 		return STATUS_OK;
 	}
 	row = &view->orders[order - 1];
-	contribution = contribution_of_series(
-		series, row->h_plugin * (double)view->fact->n);
+	contribution = contribution_of_plugin(
+		view, series, row->h_plugin * (double)view->fact->n);
 	TRY(ground_interval(ground, &contribution, NULL, &interval,
 			    &trial->drifts));
 	trial->drift_known = interval.effective_blocks > 0;
 	add_shifted(trial, "plug-in", row->h_plugin, row->h_plugin, &interval);
-	add_shifted(trial, "grassberger", row->h_corrected, row->h_plugin,
-		    &interval);
+	contribution = contribution_of_grassberger(view, series);
+	TRY(ground_interval(ground, &contribution, NULL, &corrected, NULL));
+	add_shifted(trial, "grassberger", row->h_corrected, row->h_corrected,
+		    &corrected);
 	add_shifted(trial, "chao-wang-jost", row->h_cwj, row->h_plugin,
 		    &interval);
 	return STATUS_OK;
@@ -89,7 +92,8 @@ static enum status find_series(const struct ground *ground, const char *name,
 	return STATUS_OK;
 }
 
-static enum status find_crossfit(const struct ground *ground, unsigned order,
+static enum status find_crossfit(const struct corpus_view *view,
+				 const struct ground *ground, unsigned order,
 				 struct trial *trial)
 {
 	const struct method_fact *method =
@@ -102,8 +106,7 @@ static enum status find_crossfit(const struct ground *ground, unsigned order,
 		add_unknown(trial, "crossfit");
 		return STATUS_OK;
 	}
-	contribution = contribution_of_series(
-		series, bits_from_q16(series->costs.headline_q16));
+	contribution = contribution_of_crossfit(view, series);
 	return find_series(ground, "crossfit", &contribution, trial);
 }
 
@@ -131,9 +134,7 @@ static bool corrected_floor(const struct corpus_view *view, unsigned order,
 
 	if (!series || order > view->order_count)
 		return false;
-	*floor = contribution_of_series(series,
-					view->orders[order - 1].h_corrected *
-						(double)view->fact->n);
+	*floor = contribution_of_grassberger(view, series);
 	return true;
 }
 
@@ -170,7 +171,7 @@ static enum status find_all(struct corpus_view *view,
 	struct bracket_row bracket;
 
 	TRY(find_grams(view, ground, order, trial));
-	TRY(find_crossfit(ground, order, trial));
+	TRY(find_crossfit(view, ground, order, trial));
 	TRY(find_codes(ground, lengths, trial));
 	TRY(find_gap(view, ground, order, trial));
 	TRY(bracket_find(view, ground, lengths, &bracket));

@@ -19,6 +19,8 @@
 /* Facts are rounded to 2^-16 bit: less than this a block is no variance. */
 #define ROUNDING_BITS 0x1p-15
 #define KEPT 6
+/* A correction of higher order that were larger would be no correction. */
+#define EXCESS_SHARE_MOST 0.5
 
 struct bootstrap {
 	struct bootstrap_rules rules;
@@ -118,6 +120,16 @@ static double exact_error(const struct work *work, size_t length)
 	}
 	return sqrt(squares / (double)m * pieces * pieces / (pieces - 1)) /
 	       work->sum_symbols[m];
+}
+
+/* The factor on the error when the series' excess leaves its variance. */
+static double without_excess(double error, double symbols, double excess)
+{
+	double variance = error * error * symbols * symbols;
+
+	if (!(variance > 0))
+		return 1;
+	return sqrt(1 - fmin(excess / variance, EXCESS_SHARE_MOST));
 }
 
 /* Sums over one draw: residuals u, symbols s, and their products. */
@@ -280,7 +292,7 @@ static bool is_constant(const struct work *work)
 }
 
 static enum status interval_of(struct bootstrap *bootstrap, struct work *work,
-			       struct bootstrap_result *result)
+			       double excess, struct bootstrap_result *result)
 {
 	struct block_length automatic;
 	struct batches batches;
@@ -307,6 +319,9 @@ static enum status interval_of(struct bootstrap *bootstrap, struct work *work,
 		TRY(find_reach(bootstrap, work, result->block_length,
 			       result->standard_error, &reach));
 	}
+	result->standard_error *=
+		without_excess(result->standard_error,
+			       work->sum_symbols[work->blocks], excess);
 	guard(result, bootstrap->rules.confidence, &reach);
 	conclude(result, &reach, spread_blocks(work));
 	return STATUS_OK;
@@ -329,7 +344,7 @@ enum status bootstrap_interval(struct bootstrap *bootstrap,
 	made.mean = sum_of(series->bits, series->blocks) /
 		    sum_of(series->symbols, series->blocks);
 	TRY(work_init(&work, series, bootstrap->rules.draws, made.mean));
-	status = interval_of(bootstrap, &work, &made);
+	status = interval_of(bootstrap, &work, series->excess, &made);
 	work_release(&work);
 	if (status == STATUS_OK)
 		*result = made;

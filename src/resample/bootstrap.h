@@ -13,6 +13,12 @@ struct block_series {
 	const double *bits;
 	const double *symbols;
 	size_t blocks; /* 0, or 100 x 2^j up to DRAWS_BLOCKS_MAX */
+	/*
+	 * Known excess, bits^2, >= 0: by so much the variance of the sum of
+	 * bits is smaller than the spread of the blocks makes it. At most half
+	 * of the variance is ever taken away.
+	 */
+	double excess;
 };
 
 struct bootstrap_rules {
@@ -27,7 +33,7 @@ struct bootstrap_rules {
 
 struct bootstrap_result {
 	double mean;           /* sum of bits over sum of symbols */
-	double standard_error; /* of it, after the guard */
+	double standard_error; /* of it, less the excess, after the guard */
 	bool known;            /* an interval; otherwise reason says why not */
 	double low, high;      /* low <= mean <= high */
 	size_t block_length;   /* automatic, in blocks */
