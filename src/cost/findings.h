@@ -5,7 +5,7 @@
 #include "cost/costs.h"
 
 #define FINDING_ORDERS_MAX 32
-#define FINDING_NOTES_MAX 16
+#define FINDING_NOTES_MAX 40
 
 /*
  * Counts of the grams of one order over a set of start positions. With N

@@ -172,6 +172,8 @@ static enum status lower_half_width(const struct edges *edges, double *w,
 	contribution = contribution_of_grassberger(edges->view, series);
 	TRY(ground_interval(edges->ground, &contribution, NULL, interval,
 			    &row->not_calibrated));
+	row->not_calibrated |=
+		grams_drift_within(edges->ngram, (unsigned)edges->stable);
 	*w = interval_half_width(interval);
 	return STATUS_OK;
 }

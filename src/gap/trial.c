@@ -70,6 +70,7 @@ static enum status find_grams(const struct corpus_view *view,
 	TRY(ground_interval(ground, &contribution, NULL, &interval,
 			    &trial->drifts));
 	trial->drift_known = interval.effective_blocks > 0;
+	trial->drifts |= grams_drift_within(&method->findings, order);
 	add_shifted(trial, "plug-in", row->h_plugin, row->h_plugin, &interval);
 	contribution = contribution_of_grassberger(view, series);
 	TRY(ground_interval(ground, &contribution, NULL, &corrected, NULL));
