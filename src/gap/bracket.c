@@ -11,6 +11,7 @@
 #define STABLE_SHARE 0.02
 /* Chao-Jost coverage below which corrections fall short by a percent. */
 #define COVERAGE_LEAST 0.9
+#define UNSEEN_SHARE 0.01
 
 /* What the edges are made of while they are found. */
 struct edges {
@@ -78,7 +79,9 @@ static void find_fitted(struct edges *edges)
 /*
  * h of one more symbol of context. Where many of its grams were never seen,
  * every correction falls short, ever further from the truth than h_k^ is: then
- * one more symbol is taken to win at most what the last one did.
+ * one more symbol is taken to win at most what the last one did. But what was
+ * not seen cannot rule out a percent either, however little it seems to win:
+ * else little data would claim more than ten times as much can.
  */
 static double next_order(const struct edges *edges)
 {
@@ -86,9 +89,12 @@ static double next_order(const struct edges *edges)
 	double seen = fmax(next->h_corrected, next->h_cwj);
 	double here = corrected(edges, edges->stable);
 
-	if (next->coverage >= COVERAGE_LEAST || edges->stable < 2)
+	if (next->coverage >= COVERAGE_LEAST)
 		return seen;
-	return fmax(seen, 2 * here - corrected(edges, edges->stable - 1));
+	if (edges->stable >= 2)
+		seen = fmax(seen,
+			    2 * here - corrected(edges, edges->stable - 1));
+	return fmin(seen, (1 - UNSEEN_SHARE) * here);
 }
 
 static double lower_edge(const struct edges *edges, double w)

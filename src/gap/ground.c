@@ -67,6 +67,7 @@ struct contribution contribution_of_cell(const struct cell_fact *cell,
 	struct contribution made = {
 		.costs = &cell->facts.flushed,
 		.total_bits = total_bits,
+		.learns = true,
 	};
 
 	if (!cell->facts.flushed.blocks)
@@ -168,6 +169,7 @@ enum status ground_interval(const struct ground *ground,
 		.bits = ground->scratch,
 		.symbols = ground->symbols,
 		.blocks = ground->fact->blocks,
+		.learns = a->learns || (b && b->learns),
 		.excess = a->excess + (b ? b->excess : 0),
 	};
 	struct interval refused = usable(ground, a);

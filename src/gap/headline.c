@@ -52,6 +52,7 @@ bool code_contribution(const struct method_fact *fact,
 	*contribution = contribution_of_series(
 		best, bits_from_q16(best->costs.headline_q16) +
 			      log2((double)findings->series_count));
+	contribution->learns = true;
 	if (order)
 		*order = best->order;
 	return true;

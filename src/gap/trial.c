@@ -2,12 +2,15 @@
 
 #include <math.h>
 #include <stdio.h>
+#include <string.h>
 
 #include "base/memory.h"
 #include "gap/bracket.h"
 #include "gap/fitted.h"
 #include "gap/gram_orders.h"
 #include "gap/headline.h"
+
+const char *const trial_codes[] = {"mix", "ctw", NULL};
 
 static struct trial_row *add_row(struct trial *trial, const char *name,
 				 double bits_per_symbol)
@@ -164,6 +167,56 @@ static enum status find_gap(const struct corpus_view *view,
 	return STATUS_OK;
 }
 
+static const struct length *length_of(const struct lengths *lengths,
+				      const char *method)
+{
+	for (size_t i = 0; i < lengths->count; i++) {
+		const struct length *length = &lengths->rows[i];
+
+		if (length->method && !length->page_bytes &&
+		    strcmp(length->method->method, method) == 0)
+			return length;
+	}
+	return NULL;
+}
+
+static void skip_code(struct trial *trial, const char *name)
+{
+	struct trial_row *row = add_row(trial, name, 0);
+
+	if (row) {
+		row->known = false;
+		row->skipped = true;
+	}
+}
+
+/* all: the lengths of fact, slow codes included. */
+static enum status find_slow_codes(const struct corpus_view *view,
+				   const struct ground *ground,
+				   const struct lengths *all,
+				   struct trial *trial)
+{
+	struct bracket_row bracket;
+
+	for (size_t i = 0; trial_codes[i]; i++) {
+		const struct length *length = length_of(all, trial_codes[i]);
+
+		if (!length) {
+			skip_code(trial, trial_codes[i]);
+			continue;
+		}
+		trial->codes_ran = true;
+		TRY(find_series(ground, trial_codes[i], &length->contribution,
+				trial));
+	}
+	if (!trial->codes_ran)
+		return STATUS_OK;
+	TRY(bracket_find(view, ground, all, &bracket));
+	trial->with_codes = (struct trial_bracket){
+		bracket.known, bracket.open_below, bracket.low, bracket.high};
+	return STATUS_OK;
+}
+
 static enum status find_all(struct corpus_view *view,
 			    const struct ground *ground,
 			    const struct lengths *lengths, unsigned order,
@@ -186,23 +239,30 @@ static enum status find_all(struct corpus_view *view,
 	return STATUS_OK;
 }
 
-enum status trial_find(const struct corpus_fact *fact, uint64_t seed,
-		       const struct analysis_rules *rules, unsigned order,
-		       struct trial *trial)
+enum status trial_find(const struct corpus_fact *fact, size_t quick,
+		       uint64_t seed, const struct analysis_rules *rules,
+		       unsigned order, struct trial *trial)
 {
 	const struct survey survey = {.seed = seed};
-	struct corpus_view view = {.fact = fact};
-	struct lengths lengths = {0};
+	struct corpus_fact quick_fact = *fact;
+	struct corpus_view view = {.fact = &quick_fact};
+	struct lengths lengths = {0}, all = {0};
 	struct trial made = {0};
 	struct ground ground;
 	enum status status;
 
-	TRY(ground_init(&ground, &survey, fact, rules));
+	quick_fact.method_count = quick;
+	TRY(ground_init(&ground, &survey, &quick_fact, rules));
 	status = gram_orders_init(&view);
 	if (status == STATUS_OK)
-		status = lengths_init(&lengths, fact);
+		status = lengths_init(&lengths, &quick_fact);
+	if (status == STATUS_OK)
+		status = lengths_init(&all, fact);
 	if (status == STATUS_OK)
 		status = find_all(&view, &ground, &lengths, order, &made);
+	if (status == STATUS_OK)
+		status = find_slow_codes(&view, &ground, &all, &made);
+	lengths_release(&all);
 	lengths_release(&lengths);
 	memory_free(view.orders);
 	ground_release(&ground);

@@ -9,6 +9,7 @@
 #include "resample/block_length.h"
 #include "resample/draws.h"
 #include "resample/normal.h"
+#include "resample/start_up.h"
 
 /* Where the guard begins: 1.7 standard errors of 100 batches. */
 #define GUARD_LAG1 0.17
@@ -78,9 +79,11 @@ static enum status draws_for(struct bootstrap *bootstrap, size_t blocks,
 
 static enum status work_init(struct work *work,
 			     const struct block_series *series, unsigned draws,
-			     double mean)
+			     size_t start_up)
 {
 	size_t m = series->blocks;
+	double mean = sum_of(series->bits + start_up, m - start_up) /
+		      sum_of(series->symbols + start_up, m - start_up);
 	double *numbers;
 
 	TRY(memory_new(5 * m + 2 + draws, sizeof(*numbers), &numbers));
@@ -93,7 +96,8 @@ static enum status work_init(struct work *work,
 		double symbols = series->symbols[i % m];
 
 		if (i < m)
-			work->residual[i] = bits - mean * symbols;
+			work->residual[i] =
+				i < start_up ? 0 : bits - mean * symbols;
 		work->sum_bits[i + 1] =
 			work->sum_bits[i] + work->residual[i % m];
 		work->sum_symbols[i + 1] = work->sum_symbols[i] + symbols;
@@ -314,7 +318,11 @@ static enum status interval_of(struct bootstrap *bootstrap, struct work *work,
 		(double)work->blocks / (double)result->block_length;
 	result->lag1 = batches.lag1;
 	result->drifts = batches.drifts;
-	result->standard_error = exact_error(work, result->block_length);
+	/* Blocks left out spread nothing: the others stand for them. */
+	result->standard_error =
+		exact_error(work, result->block_length) *
+		sqrt((double)work->blocks /
+		     (double)(work->blocks - result->start_up));
 	if (result->effective_blocks >= EFFECTIVE_BLOCKS_MIN) {
 		TRY(find_reach(bootstrap, work, result->block_length,
 			       result->standard_error, &reach));
@@ -343,7 +351,9 @@ enum status bootstrap_interval(struct bootstrap *bootstrap,
 	}
 	made.mean = sum_of(series->bits, series->blocks) /
 		    sum_of(series->symbols, series->blocks);
-	TRY(work_init(&work, series, bootstrap->rules.draws, made.mean));
+	if (series->learns)
+		made.start_up = start_up_blocks(series);
+	TRY(work_init(&work, series, bootstrap->rules.draws, made.start_up));
 	status = interval_of(bootstrap, &work, series->excess, &made);
 	work_release(&work);
 	if (status == STATUS_OK)

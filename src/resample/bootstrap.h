@@ -19,6 +19,12 @@ struct block_series {
 	 * of the variance is ever taken away.
 	 */
 	double excess;
+	/*
+	 * The series of something that learns: its first blocks cost more for
+	 * want of a past. That is in the mean, but it is no spread: blocks
+	 * found to be start-up (resample/start_up.h) are left out of it.
+	 */
+	bool learns;
 };
 
 struct bootstrap_rules {
@@ -39,6 +45,7 @@ struct bootstrap_result {
 	size_t block_length;   /* automatic, in blocks */
 	double effective_blocks; /* blocks / block_length, after the guard;
 				    also on a refusal */
+	size_t start_up;         /* blocks left out of the spread */
 	double lag1;             /* of 100 batch means, bias-corrected */
 	bool guarded;            /* lag1 > .17: the error was widened */
 	bool drifts;             /* see resample/batches.h */

@@ -34,7 +34,7 @@ static struct bootstrap_result interval(size_t blocks, uint64_t seed,
 					const char *corpus)
 {
 	const struct bootstrap_rules rules = {1999, .95, seed, corpus};
-	const struct block_series series = {bits, symbols, blocks, 0};
+	const struct block_series series = {bits, symbols, blocks, 0, false};
 	struct bootstrap_result result;
 	struct bootstrap *bootstrap;
 
