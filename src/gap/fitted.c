@@ -2,9 +2,10 @@
 
 #include <math.h>
 
+#include "estimate/crossfit_folds.h"
 #include "gap/gram_orders.h"
 
-#define FOLDS 8.0 /* of crossfit: estimate/crossfit_folds.h */
+#define FOLDS ((double)CROSSFIT_FOLDS)
 
 /* Grams of an order that were counted often enough to fit, and contexts. */
 struct fitted {
