@@ -5,7 +5,7 @@
 #include "cost/costs.h"
 
 #define FINDING_ORDERS_MAX 32
-#define FINDING_NOTES_MAX 16
+#define FINDING_NOTES_MAX 40
 
 /*
  * The reference: its row, and a number that counts up with every change of the
