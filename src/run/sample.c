@@ -102,11 +102,12 @@ static enum status measure_gap(struct sample *sample, struct reason *why)
 {
 	struct cell_fact *cell = sample->fact.cells;
 	const struct codec *codec = codec_find("zlib");
+	const struct setting_words words = {.level = "9"};
 	struct codec_setting setting;
 
 	if (!codec)
 		return STATUS_OK;
-	TRY(codec->parse("9", &setting, why));
+	TRY(setting_parse(codec, &words, &setting, why));
 	TRY(cell_measure(codec, &setting, 0, &sample->sequence, &sample->cuts,
 			 &cell->facts, why));
 	sample->fact.cell_count = 1;
