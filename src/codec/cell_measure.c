@@ -353,7 +353,9 @@ static MUST_USE enum status measure(struct cell_work *work, struct reason *why)
 	}
 	if (!work->facts->lossless)
 		costs_release(&work->facts->flushed);
-	work->facts->encode_memory_bytes = work->encode.peak_bytes;
+	work->facts->encode_memory_bytes = work->setting->threads
+						   ? CELL_MEMORY_UNKNOWN
+						   : work->encode.peak_bytes;
 	work->facts->decode_memory_bytes = work->decode.peak_bytes;
 	return STATUS_OK;
 }

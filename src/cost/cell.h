@@ -35,9 +35,12 @@ struct cell_facts {
 	 */
 	struct costs flushed;
 	uint64_t flushed_bytes;
-	uint64_t encode_memory_bytes,
-		decode_memory_bytes; /* peak of allocator */
+	/* Peak of the allocator, or CELL_MEMORY_UNKNOWN. */
+	uint64_t encode_memory_bytes, decode_memory_bytes;
 };
+
+/* Not the same twice: a library's own threads meet as they may. */
+#define CELL_MEMORY_UNKNOWN UINT64_MAX
 
 void cell_facts_release(struct cell_facts *facts);
 

@@ -23,7 +23,9 @@
 	X(decode_mb_per_s) X(encode_memory_bytes) X(decode_memory_bytes) \
 	X(lossless) X(H_bits_per_gram) X(h_plugin) X(h_corrected) \
 	X(h_cwj) X(h_crossfit) X(coverage) X(distinct) X(trusted) \
-	X(sha256)
+	X(sha256) X(storage) X(stored_bytes) X(dictionary_bytes) \
+	X(dictionary_own) X(dictionary_won) X(encode_spread) \
+	X(decode_spread) X(timing_noisy)
 /* clang-format on */
 
 #define AS_CONSTANT(name) CSV_##name,
@@ -225,11 +227,38 @@ static void set_costs(struct csv_row *row, const struct cell_row *cell)
 		 cell->encode_mb_per_s);
 	set_real(row, CSV_decode_mb_per_s, timed && cell->decode_mb_per_s > 0,
 		 cell->decode_mb_per_s);
-	set_count(row, CSV_encode_memory_bytes, known,
+	set_count(row, CSV_encode_memory_bytes,
+		  known && facts->encode_memory_bytes != CELL_MEMORY_UNKNOWN,
 		  facts->encode_memory_bytes);
-	set_count(row, CSV_decode_memory_bytes, known,
+	set_count(row, CSV_decode_memory_bytes,
+		  known && facts->decode_memory_bytes != CELL_MEMORY_UNKNOWN,
 		  facts->decode_memory_bytes);
 	set_bool(row, CSV_lossless, facts->lossless != 0);
+}
+
+static void set_extras(struct csv_row *row, const struct cell_row *cell)
+{
+	const struct cell_facts *facts = &cell->fact->facts;
+	const struct dictionary_row *dictionary = &cell->dictionary;
+	bool known = cell->known, timed = known && cell->fact->timed;
+
+	set_real(row, CSV_storage,
+		 known && cell->stack.known && cell->stack.has_storage,
+		 cell->stack.storage);
+	set_count(row, CSV_stored_bytes, known && facts->storage_unit,
+		  facts->stored_bytes);
+	set_count(row, CSV_dictionary_bytes, known && dictionary->has,
+		  facts->dictionary_bytes);
+	set_real(row, CSV_dictionary_own, known && dictionary->known,
+		 dictionary->own);
+	set_real(row, CSV_dictionary_won, known && dictionary->known,
+		 dictionary->won);
+	set_real(row, CSV_encode_spread, timed,
+		 cell->fact->timing.encode_spread);
+	set_real(row, CSV_decode_spread, timed,
+		 cell->fact->timing.decode_spread);
+	if (timed)
+		set_bool(row, CSV_timing_noisy, cell->timing_noisy);
 }
 
 static void cell_line(FILE *out, const struct corpus_view *view,
@@ -248,6 +277,7 @@ static void cell_line(FILE *out, const struct corpus_view *view,
 	set_interval(&row, cell->known, &cell->interval);
 	set_gap(&row, cell);
 	set_costs(&row, cell);
+	set_extras(&row, cell);
 	emit(out, &row);
 }
 

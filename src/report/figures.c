@@ -87,6 +87,8 @@ struct figure figure_memory(uint64_t bytes)
 	double value = (double)bytes;
 	size_t unit = 0;
 
+	if (bytes == CELL_MEMORY_UNKNOWN)
+		return none();
 	if (bytes < 1024) {
 		(void)snprintf(figure.text, sizeof(figure.text), "%u",
 			       (unsigned)bytes);

@@ -23,7 +23,7 @@ struct figure figure_interval(double low, double high);
 struct figure figure_percent(bool known, double percent);
 /* "4,194,304" */
 struct figure figure_count(uint64_t count);
-/* "512", "64K", "1.5M", "12M": 1024-based, at most 5 characters. */
+/* "512", "64K", "1.5M", "12M": 1024-based, at most 5 characters; "-". */
 struct figure figure_memory(uint64_t bytes);
 /* "whole", "4K", "1000": the set file's spelling. */
 struct figure figure_layout(size_t page_bytes);

@@ -110,9 +110,13 @@ static void put_costs(struct json_maker *made, const struct cell_row *row)
 		      timed && row->encode_mb_per_s > 0, row->encode_mb_per_s);
 	json_put_real(made, "decode_mb_per_s",
 		      timed && row->decode_mb_per_s > 0, row->decode_mb_per_s);
-	json_put_known_count(made, "encode_memory_bytes", known,
+	json_put_known_count(made, "encode_memory_bytes",
+			     known && facts->encode_memory_bytes !=
+					      CELL_MEMORY_UNKNOWN,
 			     facts->encode_memory_bytes);
-	json_put_known_count(made, "decode_memory_bytes", known,
+	json_put_known_count(made, "decode_memory_bytes",
+			     known && facts->decode_memory_bytes !=
+					      CELL_MEMORY_UNKNOWN,
 			     facts->decode_memory_bytes);
 	json_put_real(made, "bits_per_record", known && row->has_record,
 		      row->bits_per_record);

@@ -72,8 +72,8 @@ static MUST_USE enum status section_init(struct section *section,
 struct cell_maker {
 	struct plan *plan;
 	const struct selection *selection;
-	const struct section *section;
-	size_t place; /* of the next cell of the set, chosen or not */
+	struct section section; /* the one at hand */
+	size_t place;           /* of the next cell of the set, chosen or not */
 	struct reason *why;
 };
 
@@ -96,7 +96,7 @@ static MUST_USE enum status add_cell(struct cell_maker *maker,
 				     const struct codec_setting *setting,
 				     const char *layout)
 {
-	const struct section *section = maker->section;
+	const struct section *section = &maker->section;
 	const struct selection *selection = maker->selection;
 	struct plan *plan = maker->plan;
 	struct plan_cell cell = {.codec = section->codec, .setting = *setting};
@@ -123,10 +123,10 @@ static MUST_USE enum status add_cell(struct cell_maker *maker,
 static MUST_USE enum status add_setting(struct cell_maker *maker,
 					const struct setting_words *words)
 {
-	const struct text_list *layouts = &maker->section->declared->layouts;
+	const struct text_list *layouts = &maker->section.declared->layouts;
 	struct codec_setting setting;
 
-	TRY(setting_parse(maker->section->codec, words, &setting, maker->why));
+	TRY(setting_parse(maker->section.codec, words, &setting, maker->why));
 	for (size_t i = 0; i < layouts->count; i++)
 		TRY(add_cell(maker, words->level, &setting, layouts->texts[i]));
 	return STATUS_OK;
@@ -146,7 +146,7 @@ static size_t words_of(const struct text_list *list)
 static MUST_USE enum status add_level(struct cell_maker *maker,
 				      const char *level)
 {
-	const struct section *section = maker->section;
+	const struct section *section = &maker->section;
 	struct setting_words words = {.level = level};
 
 	for (size_t c = 0; c < words_of(&section->containers); c++) {
@@ -169,14 +169,13 @@ static MUST_USE enum status add_level(struct cell_maker *maker,
 static MUST_USE enum status add_section(struct cell_maker *maker,
 					const struct set_codec *declared)
 {
-	struct section section;
-	enum status status = section_init(&section, declared, maker->why);
+	enum status status =
+		section_init(&maker->section, declared, maker->why);
 
-	maker->section = &section;
 	for (size_t i = 0; status == STATUS_OK && i < declared->levels.count;
 	     i++)
 		status = add_level(maker, declared->levels.texts[i]);
-	section_release(&section);
+	section_release(&maker->section);
 	if (status != STATUS_OK)
 		reason_prefix(maker->why,
 			      "%s:%u: [codec %s]: ", maker->plan->set->path,
