@@ -118,7 +118,7 @@ build/fuzz/%: tests/fuzz/%.c $(SOURCES) $(SUPPORT)
 	@mkdir -p $(@D)
 	clang -std=c11 -D_POSIX_C_SOURCE=200809L -DRATEFLOOR_VERSION='"$(VERSION)"' -g -O1 \
 		-ffp-contract=off -pthread -fsanitize=fuzzer,address,undefined -Isrc -Itests $(PKG_CFLAGS) \
-		$< $(filter-out src/cli/main.c,$(SOURCES)) $(LIBS) -o $@
+		$< $(filter-out src/cli/%,$(SOURCES)) $(LIBS) -o $@
 
 fuzz: $(FUZZERS) ## libFuzzer on every entry, FUZZ_SECONDS each
 	@set -e; for fuzzer in $(FUZZERS); do \
@@ -134,7 +134,8 @@ coverage: ## line coverage of the tests, by gcov
 CPPCHECK := cppcheck --quiet --error-exitcode=1 --inline-suppr --std=c11 -j2 \
 	--enable=warning,performance,portability --suppress=missingIncludeSystem -Isrc
 SHELL_SCRIPTS := scripts/demo scripts/test scripts/prove-bare scripts/packages.sh scripts/run-tests \
-	scripts/fetch-corpora .ci/run $(wildcard tests/golden/run scripts/facts scripts/same-facts)
+	scripts/fetch-corpora .ci/run scripts/prove-nights scripts/prove-slurm \
+	scripts/nightly/night scripts/nightly/slurm-array $(wildcard tests/golden/run scripts/facts scripts/same-facts)
 
 lint: ## layout, static analysis, headers alone, shell scripts
 	@clang-format --dry-run -Werror $(wildcard src/*/*.[ch] tests/*/*.[ch] tests/*/*/*.[ch])

@@ -7,6 +7,7 @@
 #include <unistd.h>
 
 #define ORDERS_DEFAULT 16
+#define COUNT(array) (sizeof(array) / sizeof((array)[0]))
 
 /* One line rewritten on a terminal; nothing elsewhere. */
 static void show_share(void *context, double share, double seconds)
@@ -20,35 +21,80 @@ static void show_share(void *context, double share, double seconds)
 		      seconds * (1 - share) / share);
 }
 
+struct length_row {
+	uint64_t symbols;
+	size_t runs, codes;
+	unsigned alphabet_least;
+	bool gap;
+};
+
 /*
- * The lengths of a full calibration, or the one that was asked for. The third
- * is for the gap, which needs blocks that can pay for their flushes, on the
- * sources that zlib is quick on.
+ * A full calibration. The third length is for the gap, which needs blocks that
+ * can pay for their flushes, on the sources that zlib is quick on. The fourth
+ * is for the width.
  */
+static const struct length_row lengths[] = {
+	{10000, 2000, 100, 0, false},
+	{100000, 300, 30, 0, false},
+	{400000, 200, 0, 16, true},
+	{1000000, 12, 0, 0, false},
+};
+
+/* Below, flushes cost over what an interval allows. */
+#define GAP_SYMBOLS_MIN 262144
+
+static void add_length(struct calibration_rules *rules,
+		       const struct length_row *row)
+{
+	size_t i = rules->length_count++;
+
+	rules->symbols[i] = row->symbols;
+	rules->runs[i] = row->runs;
+	rules->codes[i] = row->codes;
+	rules->alphabet_least[i] = row->alphabet_least;
+	rules->gap[i] = row->gap;
+}
+
+/* A length of its own takes the samples of the longest below it. */
+static struct length_row row_like(uint64_t symbols)
+{
+	struct length_row row = lengths[symbols < 100000 ? 0 : 1];
+
+	row.symbols = symbols;
+	row.gap = symbols >= GAP_SYMBOLS_MIN;
+	return row;
+}
+
+/* The lengths of a full calibration, or the one that was asked for. */
 static enum status read_lengths(const struct words *words,
 				struct calibration_rules *rules,
 				struct reason *why)
 {
-	uint64_t symbols = 0, samples = 0, thin = 1;
+	uint64_t symbols = 0, samples = 0, thin = 1, longest = UINT64_MAX;
+	uint64_t codes = UINT64_MAX;
 
 	TRY(words_number(words, "symbols", 6400, 100000000, &symbols, why));
 	TRY(words_number(words, "replicates", 2, 1000000, &samples, why));
 	TRY(words_number(words, "thin", 1, 20, &thin, why));
-	*rules = (struct calibration_rules){
-		.symbols = {10000, 100000, 400000},
-		.runs = {2000, 300, 200},
-		.alphabet_least = {0, 0, 16},
-		.length_count = 3,
-		.orders = ORDERS_DEFAULT,
-	};
+	TRY(words_number(words, "longest", 10000, 100000000, &longest, why));
+	TRY(words_number(words, "codes", 0, 1000000, &codes, why));
+	*rules = (struct calibration_rules){.orders = ORDERS_DEFAULT};
 	if (symbols) {
-		rules->symbols[0] = symbols;
-		rules->runs[0] = symbols < 100000 ? 2000 : 300;
-		rules->length_count = 1;
-		rules->alphabet_least[0] = 0;
+		const struct length_row row = row_like(symbols);
+
+		add_length(rules, &row);
 	}
-	for (size_t i = 0; i < rules->length_count; i++)
-		rules->runs[i] = samples ? samples : rules->runs[i] / thin;
+	for (size_t i = 0; !symbols && i < COUNT(lengths); i++) {
+		if (lengths[i].symbols <= longest)
+			add_length(rules, &lengths[i]);
+	}
+	for (size_t i = 0; i < rules->length_count; i++) {
+		size_t all = samples ? samples : rules->runs[i] / thin;
+
+		rules->runs[i] = all < 2 ? 2 : all;
+		rules->codes[i] =
+			codes < UINT64_MAX ? codes : rules->codes[i] / thin;
+	}
 	return STATUS_OK;
 }
 
@@ -130,10 +176,14 @@ static enum exit_code calibrate_run(const struct words *words)
 
 static const struct option_row options[] = {
 	{"symbols", "N",
-	 "length of a sample, from 6400; by default 10000, 100000 and "
-	 "400000"},
+	 "length of a sample, from 6400; by default 10000, 100000, 400000 "
+	 "and 1000000"},
+	{"longest", "N", "of the default lengths only those up to N"},
 	{"replicates", "R",
-	 "samples of each source; by default 2000, 300 and 200"},
+	 "samples of each source; by default 2000, 300, 200 and 12"},
+	{"codes", "C",
+	 "of these, samples on which mix and ctw run too; by default 100, 30, "
+	 "none and none"},
 	{"thin", "N",
 	 "one in N of the default samples; 1 by default, at most 20"},
 	{"source", "NAME", "only this source of the list"},

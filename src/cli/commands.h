@@ -6,6 +6,7 @@
 
 extern const struct command command_survey;
 extern const struct command command_report;
+extern const struct command command_gate;
 extern const struct command command_corpora;
 extern const struct command command_synth;
 extern const struct command command_merge;

@@ -5,7 +5,14 @@
 #include "cost/costs.h"
 
 #define FINDING_ORDERS_MAX 32
-#define FINDING_NOTES_MAX 16
+#define FINDING_NOTES_MAX 40
+
+/*
+ * The reference: its row, and a number that counts up with every change of the
+ * lengths it gives, so that floors of two versions are never compared.
+ */
+#define REFERENCE_NAME "mix"
+#define REFERENCE_VERSION "2"
 
 /*
  * Counts of the grams of one order over a set of start positions. With N

@@ -9,13 +9,6 @@
 
 struct suffix; /* suffix/suffix.h */
 
-/*
- * The reference: its row, and a number that counts up with every change of the
- * lengths it gives, so that floors of two versions are never compared.
- */
-#define REFERENCE_NAME "mix"
-#define REFERENCE_VERSION "1"
-
 /* Which way a row errs against the entropy rate. */
 enum leaning { LEANS_ABOVE, LEANS_NONE, LEANS_UNKNOWN };
 
@@ -39,6 +32,11 @@ struct estimator {
 	bool needs_suffix;
 	bool reads_words; /* runs on the kind word */
 	bool deep;        /* only where asked for by name */
+	/*
+	 * Only for page layouts that some cell has a dictionary for, and no
+	 * code of the corpus: a decoder of one page lives on others.
+	 */
+	bool warm;
 	double work;      /* relative CPU a byte, for progress and scheduling */
 	/*
 	 * Fills findings (released by the caller). STATUS_TOO_SHORT with a

@@ -68,6 +68,7 @@ static MUST_USE enum status measure(const struct estimate_input *input,
 
 	TRY(plan_choose(&request, plan));
 	TRY(predictor_new(plan, &predictor));
+	predictor_set_threads(predictor, input->threads);
 	if (costs_init(costs, input->cuts->blocks) != STATUS_OK) {
 		predictor_free(predictor);
 		return STATUS_NO_MEMORY;

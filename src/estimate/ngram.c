@@ -1,3 +1,4 @@
+#include "estimate/ngram_drift.h"
 #include "estimate/ngram_walk.h"
 #include "estimate/rows.h"
 
@@ -7,6 +8,8 @@
 struct ngram {
 	struct count_logs *logs;
 	struct gram_tally tally;
+	struct cuts fine; /* of the losses; parts to a block */
+	size_t parts;
 	struct block_losses losses;
 	wide_int plugin_q32[FINDING_ORDERS_MAX];
 };
@@ -14,6 +17,7 @@ struct ngram {
 static void ngram_release(struct ngram *ngram)
 {
 	block_losses_release(&ngram->losses);
+	cuts_release(&ngram->fine);
 	gram_tally_release(&ngram->tally);
 	memory_free(ngram->logs);
 }
@@ -25,8 +29,45 @@ static MUST_USE enum status ngram_init(struct ngram *ngram,
 	TRY(gram_tally_init(&ngram->tally, ngram->logs, input->orders));
 	if (input->cuts->blocks == 0)
 		return STATUS_OK;
-	return block_losses_init(&ngram->losses, input->suffix, input->cuts,
+	ngram->parts = drift_parts(input->sequence, input->cuts);
+	TRY(drift_cuts_init(input->cuts, ngram->parts, &ngram->fine));
+	return block_losses_init(&ngram->losses, input->suffix, &ngram->fine,
 				 ngram->logs, input->orders);
+}
+
+/* Block bits of an order: the sums of their parts. */
+static MUST_USE enum status fill_blocks(const struct ngram *ngram,
+					const int64_t *sum_q32,
+					struct costs *costs)
+{
+	size_t blocks = ngram->fine.blocks / ngram->parts;
+	int64_t *block_q32;
+
+	TRY(costs_init(costs, blocks));
+	TRY(memory_new_zeroed(blocks, sizeof(*block_q32), &block_q32));
+	for (size_t i = 0; i < ngram->fine.blocks; i++)
+		block_q32[i / ngram->parts] += sum_q32[i];
+	costs_set_q32(costs, block_q32);
+	memory_free(block_q32);
+	return STATUS_OK;
+}
+
+/* The finer series is not kept: only how it hangs together. */
+static MUST_USE enum status fill_notes(const struct ngram *ngram,
+				       struct findings *findings)
+{
+	if (!ngram->losses.sum_q32 || ngram->parts < 2)
+		return STATUS_OK;
+	drift_note_parts(findings, ngram->fine.blocks);
+	for (size_t i = 0; i < findings->series_count; i++) {
+		int64_t ppm;
+
+		TRY(drift_lag1_ppm(
+			&ngram->fine,
+			ngram->losses.sum_q32 + i * ngram->fine.blocks, &ppm));
+		drift_note(findings, (unsigned)i + 1, ppm);
+	}
+	return STATUS_OK;
 }
 
 /*
@@ -37,22 +78,21 @@ static MUST_USE enum status fill_series(const struct ngram *ngram, size_t n,
 					struct findings *findings)
 {
 	const struct block_losses *losses = &ngram->losses;
-	size_t blocks = losses->sum_q32 ? losses->cuts->blocks : 0;
 	wide_int shorter_q32 = (wide_int)n * (wide_int)log2_q32(n);
 
 	for (size_t i = 0; i < findings->series_count; i++) {
 		struct series *series = &findings->series[i];
 
 		series->order = (unsigned)i + 1;
-		TRY(costs_init(&series->costs, blocks));
-		if (blocks)
-			costs_set_q32(&series->costs,
-				      losses->sum_q32 + i * blocks);
+		if (losses->sum_q32)
+			TRY(fill_blocks(
+				ngram, losses->sum_q32 + i * ngram->fine.blocks,
+				&series->costs));
 		series->costs.headline_q16 =
 			q16_from_q32(shorter_q32 - ngram->plugin_q32[i]);
 		shorter_q32 = ngram->plugin_q32[i];
 	}
-	return STATUS_OK;
+	return fill_notes(ngram, findings);
 }
 
 static MUST_USE enum status count(struct ngram *ngram,

@@ -12,5 +12,6 @@ extern const struct estimator estimator_dirichlet;
 extern const struct estimator estimator_ctw;
 extern const struct estimator estimator_mix;
 extern const struct estimator estimator_mix_deep;
+extern const struct estimator estimator_mix_warm;
 
 #endif

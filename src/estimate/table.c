@@ -14,6 +14,7 @@ const struct estimator *const estimators[] = {
 	&estimator_ctw,
 	&estimator_mix,
 	&estimator_mix_deep,
+	&estimator_mix_warm,
 	NULL,
 };
 /* clang-format on */

@@ -4,12 +4,14 @@
 #include <stdarg.h>
 #include <stdio.h>
 
+#include "gap/fitted.h"
 #include "gap/gram_orders.h"
 
 /* How far an order may move between half of the data and all of it. */
 #define STABLE_SHARE 0.02
 /* Chao-Jost coverage below which corrections fall short by a percent. */
 #define COVERAGE_LEAST 0.9
+#define UNSEEN_SHARE 0.01
 
 /* What the edges are made of while they are found. */
 struct edges {
@@ -77,7 +79,9 @@ static void find_fitted(struct edges *edges)
 /*
  * h of one more symbol of context. Where many of its grams were never seen,
  * every correction falls short, ever further from the truth than h_k^ is: then
- * one more symbol is taken to win at most what the last one did.
+ * one more symbol is taken to win at most what the last one did. But what was
+ * not seen cannot rule out a percent either, however little it seems to win:
+ * else little data would claim more than ten times as much can.
  */
 static double next_order(const struct edges *edges)
 {
@@ -85,9 +89,12 @@ static double next_order(const struct edges *edges)
 	double seen = fmax(next->h_corrected, next->h_cwj);
 	double here = corrected(edges, edges->stable);
 
-	if (next->coverage >= COVERAGE_LEAST || edges->stable < 2)
+	if (next->coverage >= COVERAGE_LEAST)
 		return seen;
-	return fmax(seen, 2 * here - corrected(edges, edges->stable - 1));
+	if (edges->stable >= 2)
+		seen = fmax(seen,
+			    2 * here - corrected(edges, edges->stable - 1));
+	return fmin(seen, (1 - UNSEEN_SHARE) * here);
 }
 
 static double lower_edge(const struct edges *edges, double w)
@@ -126,8 +133,8 @@ static enum status upper_of_crossfit(const struct edges *edges,
 {
 	for (size_t i = 0; i < edges->crossfit->series_count; i++) {
 		const struct series *series = &edges->crossfit->series[i];
-		struct contribution contribution = contribution_of_series(
-			series, bits_from_q16(series->costs.headline_q16));
+		struct contribution contribution =
+			contribution_of_crossfit(edges->view, series);
 		bool lowered;
 
 		TRY(try_upper(edges, &contribution, row, &lowered));
@@ -168,10 +175,11 @@ static enum status lower_half_width(const struct edges *edges, double *w,
 		*interval = interval_none("no bits by block were recorded");
 		return STATUS_OK;
 	}
-	contribution = contribution_of_series(
-		series, bits_from_q16(series->costs.headline_q16));
+	contribution = contribution_of_grassberger(edges->view, series);
 	TRY(ground_interval(edges->ground, &contribution, NULL, interval,
 			    &row->not_calibrated));
+	row->not_calibrated |=
+		grams_drift_within(edges->ngram, (unsigned)edges->stable);
 	*w = interval_half_width(interval);
 	return STATUS_OK;
 }

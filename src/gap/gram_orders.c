@@ -5,7 +5,9 @@
 #include <string.h>
 
 #include "base/memory.h"
+#include "estimate/ngram_drift.h"
 #include "estimate/trust.h"
+#include "resample/batches.h"
 
 const struct method_fact *method_done(const struct corpus_fact *fact,
 				      const char *method)
@@ -29,6 +31,14 @@ const struct series *series_of_order(const struct findings *findings,
 			return &findings->series[i];
 	}
 	return NULL;
+}
+
+bool grams_drift_within(const struct findings *ngram, unsigned order)
+{
+	double lag1, parts;
+
+	return drift_find(ngram, order, &lag1, &parts) &&
+	       lag1_without_bias(lag1, parts) > DRIFT_LAG1;
 }
 
 static double symbol_bits(const struct corpus_fact *fact)

@@ -11,6 +11,14 @@ const struct method_fact *method_done(const struct corpus_fact *fact,
 const struct series *series_of_order(const struct findings *findings,
 				     unsigned order);
 
+/*
+ * Whether the losses of an order drift inside blocks too short to show it:
+ * lag-1 correlation of the finer series (estimate/ngram_drift.h), corrected
+ * for its bias, over the limit that holds for blocks (resample/batches.h).
+ * false where no finer series was made.
+ */
+bool grams_drift_within(const struct findings *ngram, unsigned order);
+
 /* Fills orders, order_count, trusted_order and trust_limit of view. */
 MUST_USE enum status gram_orders_init(struct corpus_view *view);
 

@@ -67,6 +67,7 @@ struct contribution contribution_of_cell(const struct cell_fact *cell,
 	struct contribution made = {
 		.costs = &cell->facts.flushed,
 		.total_bits = total_bits,
+		.learns = true,
 	};
 
 	if (!cell->facts.flushed.blocks)
@@ -166,8 +167,13 @@ enum status ground_interval(const struct ground *ground,
 			    const struct contribution *b,
 			    struct interval *interval, bool *drifts)
 {
-	const struct block_series series = {ground->scratch, ground->symbols,
-					    ground->fact->blocks};
+	const struct block_series series = {
+		.bits = ground->scratch,
+		.symbols = ground->symbols,
+		.blocks = ground->fact->blocks,
+		.learns = a->learns || (b && b->learns),
+		.excess = a->excess + (b ? b->excess : 0),
+	};
 	struct interval refused = usable(ground, a);
 	double bits = a->total_bits - (b ? b->total_bits : 0);
 	struct bootstrap_result result;

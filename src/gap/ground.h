@@ -26,6 +26,10 @@ void ground_release(struct ground *ground);
 struct contribution {
 	const struct costs *costs; /* borrowed; blocks 0: see reason */
 	double total_bits;
+	/* bits^2: how much the block spread overstates the variance of the
+	 * total (resample/bootstrap.h); 0 for a code. */
+	double excess;
+	bool learns; /* a code: its start-up is no spread */
 	char reason[ANALYSIS_REASON_BYTES]; /* why there are no blocks, or "" */
 };
 

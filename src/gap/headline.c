@@ -6,6 +6,7 @@
 
 #include "base/memory.h"
 #include "estimate/estimator.h"
+#include "gap/fitted.h"
 #include "gap/gram_orders.h"
 
 bool method_is_code(const char *method)
@@ -51,6 +52,7 @@ bool code_contribution(const struct method_fact *fact,
 	*contribution = contribution_of_series(
 		best, bits_from_q16(best->costs.headline_q16) +
 			      log2((double)findings->series_count));
+	contribution->learns = true;
 	if (order)
 		*order = best->order;
 	return true;
@@ -70,9 +72,7 @@ static bool ngram_headline(const struct corpus_view *view,
 		return false;
 	}
 	row->order = view->trusted_order;
-	*contribution = contribution_of_series(
-		series, view->orders[view->trusted_order - 1].h_corrected *
-				(double)view->fact->n);
+	*contribution = contribution_of_grassberger(view, series);
 	return true;
 }
 
@@ -89,8 +89,12 @@ static bool headline(const struct corpus_view *view, struct estimate_row *row,
 		return ngram_headline(view, row, contribution);
 	if (row->is_code)
 		return code_contribution(row->fact, contribution, &row->order);
-	if (strcmp(row->fact->method, "crossfit") == 0)
+	if (strcmp(row->fact->method, "crossfit") == 0) {
 		series = lowest(findings);
+		row->order = series->order;
+		*contribution = contribution_of_crossfit(view, series);
+		return true;
+	}
 	row->order = series->order;
 	*contribution = contribution_of_series(
 		series, bits_from_q16(series->costs.headline_q16));

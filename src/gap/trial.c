@@ -2,11 +2,15 @@
 
 #include <math.h>
 #include <stdio.h>
+#include <string.h>
 
 #include "base/memory.h"
 #include "gap/bracket.h"
+#include "gap/fitted.h"
 #include "gap/gram_orders.h"
 #include "gap/headline.h"
+
+const char *const trial_codes[] = {"mix", "ctw", NULL};
 
 static struct trial_row *add_row(struct trial *trial, const char *name,
 				 double bits_per_symbol)
@@ -55,7 +59,7 @@ static enum status find_grams(const struct corpus_view *view,
 		method ? series_of_order(&method->findings, order) : NULL;
 	const struct order_row *row;
 	struct contribution contribution;
-	struct interval interval;
+	struct interval interval, corrected;
 
 	if (!series || order > view->order_count) {
 		add_unknown(trial, "plug-in");
@@ -64,14 +68,17 @@ static enum status find_grams(const struct corpus_view *view,
 		return STATUS_OK;
 	}
 	row = &view->orders[order - 1];
-	contribution = contribution_of_series(
-		series, row->h_plugin * (double)view->fact->n);
+	contribution = contribution_of_plugin(
+		view, series, row->h_plugin * (double)view->fact->n);
 	TRY(ground_interval(ground, &contribution, NULL, &interval,
 			    &trial->drifts));
 	trial->drift_known = interval.effective_blocks > 0;
+	trial->drifts |= grams_drift_within(&method->findings, order);
 	add_shifted(trial, "plug-in", row->h_plugin, row->h_plugin, &interval);
-	add_shifted(trial, "grassberger", row->h_corrected, row->h_plugin,
-		    &interval);
+	contribution = contribution_of_grassberger(view, series);
+	TRY(ground_interval(ground, &contribution, NULL, &corrected, NULL));
+	add_shifted(trial, "grassberger", row->h_corrected, row->h_corrected,
+		    &corrected);
 	add_shifted(trial, "chao-wang-jost", row->h_cwj, row->h_plugin,
 		    &interval);
 	return STATUS_OK;
@@ -89,7 +96,8 @@ static enum status find_series(const struct ground *ground, const char *name,
 	return STATUS_OK;
 }
 
-static enum status find_crossfit(const struct ground *ground, unsigned order,
+static enum status find_crossfit(const struct corpus_view *view,
+				 const struct ground *ground, unsigned order,
 				 struct trial *trial)
 {
 	const struct method_fact *method =
@@ -102,8 +110,7 @@ static enum status find_crossfit(const struct ground *ground, unsigned order,
 		add_unknown(trial, "crossfit");
 		return STATUS_OK;
 	}
-	contribution = contribution_of_series(
-		series, bits_from_q16(series->costs.headline_q16));
+	contribution = contribution_of_crossfit(view, series);
 	return find_series(ground, "crossfit", &contribution, trial);
 }
 
@@ -131,9 +138,7 @@ static bool corrected_floor(const struct corpus_view *view, unsigned order,
 
 	if (!series || order > view->order_count)
 		return false;
-	*floor = contribution_of_series(series,
-					view->orders[order - 1].h_corrected *
-						(double)view->fact->n);
+	*floor = contribution_of_grassberger(view, series);
 	return true;
 }
 
@@ -162,6 +167,56 @@ static enum status find_gap(const struct corpus_view *view,
 	return STATUS_OK;
 }
 
+static const struct length *length_of(const struct lengths *lengths,
+				      const char *method)
+{
+	for (size_t i = 0; i < lengths->count; i++) {
+		const struct length *length = &lengths->rows[i];
+
+		if (length->method && !length->page_bytes &&
+		    strcmp(length->method->method, method) == 0)
+			return length;
+	}
+	return NULL;
+}
+
+static void skip_code(struct trial *trial, const char *name)
+{
+	struct trial_row *row = add_row(trial, name, 0);
+
+	if (row) {
+		row->known = false;
+		row->skipped = true;
+	}
+}
+
+/* all: the lengths of fact, slow codes included. */
+static enum status find_slow_codes(const struct corpus_view *view,
+				   const struct ground *ground,
+				   const struct lengths *all,
+				   struct trial *trial)
+{
+	struct bracket_row bracket;
+
+	for (size_t i = 0; trial_codes[i]; i++) {
+		const struct length *length = length_of(all, trial_codes[i]);
+
+		if (!length) {
+			skip_code(trial, trial_codes[i]);
+			continue;
+		}
+		trial->codes_ran = true;
+		TRY(find_series(ground, trial_codes[i], &length->contribution,
+				trial));
+	}
+	if (!trial->codes_ran)
+		return STATUS_OK;
+	TRY(bracket_find(view, ground, all, &bracket));
+	trial->with_codes = (struct trial_bracket){
+		bracket.known, bracket.open_below, bracket.low, bracket.high};
+	return STATUS_OK;
+}
+
 static enum status find_all(struct corpus_view *view,
 			    const struct ground *ground,
 			    const struct lengths *lengths, unsigned order,
@@ -170,7 +225,7 @@ static enum status find_all(struct corpus_view *view,
 	struct bracket_row bracket;
 
 	TRY(find_grams(view, ground, order, trial));
-	TRY(find_crossfit(ground, order, trial));
+	TRY(find_crossfit(view, ground, order, trial));
 	TRY(find_codes(ground, lengths, trial));
 	TRY(find_gap(view, ground, order, trial));
 	TRY(bracket_find(view, ground, lengths, &bracket));
@@ -184,23 +239,30 @@ static enum status find_all(struct corpus_view *view,
 	return STATUS_OK;
 }
 
-enum status trial_find(const struct corpus_fact *fact, uint64_t seed,
-		       const struct analysis_rules *rules, unsigned order,
-		       struct trial *trial)
+enum status trial_find(const struct corpus_fact *fact, size_t quick,
+		       uint64_t seed, const struct analysis_rules *rules,
+		       unsigned order, struct trial *trial)
 {
 	const struct survey survey = {.seed = seed};
-	struct corpus_view view = {.fact = fact};
-	struct lengths lengths = {0};
+	struct corpus_fact quick_fact = *fact;
+	struct corpus_view view = {.fact = &quick_fact};
+	struct lengths lengths = {0}, all = {0};
 	struct trial made = {0};
 	struct ground ground;
 	enum status status;
 
-	TRY(ground_init(&ground, &survey, fact, rules));
+	quick_fact.method_count = quick;
+	TRY(ground_init(&ground, &survey, &quick_fact, rules));
 	status = gram_orders_init(&view);
 	if (status == STATUS_OK)
-		status = lengths_init(&lengths, fact);
+		status = lengths_init(&lengths, &quick_fact);
+	if (status == STATUS_OK)
+		status = lengths_init(&all, fact);
 	if (status == STATUS_OK)
 		status = find_all(&view, &ground, &lengths, order, &made);
+	if (status == STATUS_OK)
+		status = find_slow_codes(&view, &ground, &all, &made);
+	lengths_release(&all);
 	lengths_release(&lengths);
 	memory_free(view.orders);
 	ground_release(&ground);

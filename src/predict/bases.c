@@ -120,7 +120,7 @@ static unsigned group_log2(unsigned order, size_t bytes)
 static MUST_USE enum status bases_allocate(struct bases *made, size_t bytes)
 {
 	TRY(repeats_init(&made->repeats, bytes));
-	TRY(memory_new_lines((size_t)SETS * SET_ROWS * INPUTS_NIGHTLY,
+	TRY(memory_new_lines((size_t)SETS_NIGHTLY * SET_ROWS * INPUTS_NIGHTLY,
 			     sizeof(int16_t), &made->mixer.weights));
 	for (unsigned i = 0; i < DENSE; i++)
 		TRY(memory_new((size_t)4 << (2 * dense_order[i]),
@@ -144,6 +144,8 @@ enum status bases_new(const struct predict_plan *plan, struct bases **bases)
 	TRY(memory_new_lines(1, sizeof(*made), &made));
 	tables_build(&made->mixer.tables);
 	made->mixer.inputs = INPUTS_NIGHTLY;
+	made->mixer.sets = SETS_NIGHTLY;
+	made->mixer.rate_last = 40;
 	bases_set_plain(made, false);
 	status = bases_allocate(made, plan->bytes);
 	if (status != STATUS_OK) {

@@ -65,60 +65,123 @@ static unsigned digits_percent(const uint64_t histogram[256], size_t count)
 	return (unsigned)(digits * 100 / count);
 }
 
-/* A plan on trial: how much its sample costs. */
+/* Plans tried at most, and samples each is tried on. */
+#define CANDIDATES 6
+#define SAMPLES 2
+/* In percent, how far behind the best one goes on to the next sample. */
+#define CLOSE 8
+
+struct candidate {
+	enum predict_family family;
+	unsigned stride;
+	int64_t cost_q32; /* of the samples so far */
+	bool out;
+};
+
+/* Plans on trial: how much their samples cost. */
 struct trial {
 	const struct plan_request *request;
-	struct predict_plan best;
-	int64_t least_q32;
+	struct candidate candidate[CANDIDATES];
+	unsigned candidates;
 	size_t sample;
 	unsigned handicap[FAMILY_COUNT];
 };
 
-static MUST_USE enum status
-try_plan(struct trial *trial, enum predict_family family, unsigned stride)
+static void enter(struct trial *trial, enum predict_family family,
+		  unsigned stride)
+{
+	struct candidate *candidate = &trial->candidate[trial->candidates++];
+
+	*candidate = (struct candidate){.family = family, .stride = stride};
+}
+
+static struct predict_plan plan_of(const struct plan_request *request,
+				   const struct candidate *candidate)
+{
+	struct predict_plan plan = {.family = candidate->family,
+				    .stride = candidate->stride};
+
+	if (plan.family == FAMILY_FIELDS)
+		fields_choose(&plan, request->bytes, request->count);
+	return plan;
+}
+
+/* Adds what a sample costs. */
+static MUST_USE enum status try_sample(const struct trial *trial,
+				       struct candidate *candidate,
+				       unsigned number)
 {
 	const struct plan_request *request = trial->request;
-	struct predict_plan plan = {.family = family, .stride = stride};
-	size_t room = request->count - trial->sample;
+	struct predict_plan plan = plan_of(request, candidate);
+	size_t from = (request->count - trial->sample) / 4 * (2 * number + 1);
 	struct predictor *predictor;
-	int64_t cost = 0;
+	int64_t cost;
 
 	plan.bytes = trial->sample;
-	if (family == FAMILY_FIELDS)
-		fields_choose(&plan, request->bytes, request->count);
 	TRY(predictor_new(&plan, &predictor));
-	for (unsigned i = 1; i < 4; i += 2) {
-		size_t from = room / 4 * i;
-
-		/* Records begin where the strides of the whole do. */
-		from -= from % stride;
-		predictor_restart(predictor, request->bytes + from);
-		cost += predictor_measure_q32(predictor, trial->sample);
-	}
+	/* Records begin where the strides of the whole do. */
+	from -= from % plan.stride;
+	predictor_restart(predictor, request->bytes + from);
+	cost = predictor_measure_q32(predictor, trial->sample);
 	predictor_free(predictor);
-	cost += cost / 100 * trial->handicap[family];
-	if (cost >= trial->least_q32)
-		return STATUS_OK;
-	trial->least_q32 = cost;
-	trial->best = plan;
+	candidate->cost_q32 += cost + cost / 100 * trial->handicap[plan.family];
 	return STATUS_OK;
 }
 
-static MUST_USE enum status try_binary(struct trial *trial)
+static const struct candidate *cheapest(const struct trial *trial)
+{
+	const struct candidate *best = NULL;
+
+	for (unsigned i = 0; i < trial->candidates; i++) {
+		const struct candidate *own = &trial->candidate[i];
+
+		if (!own->out && (!best || own->cost_q32 < best->cost_q32))
+			best = own;
+	}
+	return best;
+}
+
+/* Those far behind after one sample are spared the next. */
+static MUST_USE enum status try_all(struct trial *trial)
+{
+	for (unsigned number = 0; number < SAMPLES; number++) {
+		int64_t most;
+
+		for (unsigned i = 0; i < trial->candidates; i++) {
+			if (!trial->candidate[i].out)
+				TRY(try_sample(trial, &trial->candidate[i],
+					       number));
+		}
+		most = cheapest(trial)->cost_q32 / 100 * (100 + CLOSE);
+		for (unsigned i = 0; i < trial->candidates; i++)
+			trial->candidate[i].out |=
+				trial->candidate[i].cost_q32 > most;
+	}
+	return STATUS_OK;
+}
+
+static void enter_binary(struct trial *trial)
 {
 	const struct plan_request *request = trial->request;
 	size_t record = request->record_bytes;
 	unsigned lag = lag_find(request->bytes, request->count, STRIDE_MAX);
 
-	TRY(try_plan(trial, FAMILY_BINARY, lag));
-	TRY(try_plan(trial, FAMILY_RECORDS, lag));
+	enter(trial, FAMILY_BINARY, lag);
+	enter(trial, FAMILY_RECORDS, lag);
 	if (lag <= COLUMNS_MAX)
-		TRY(try_plan(trial, FAMILY_FIELDS, lag));
+		enter(trial, FAMILY_FIELDS, lag);
 	if (lag >= 8)
-		TRY(try_plan(trial, FAMILY_IMAGE, lag));
+		enter(trial, FAMILY_IMAGE, lag);
 	if (record > 1 && record <= STRIDE_MAX && record != lag)
-		TRY(try_plan(trial, FAMILY_RECORDS, (unsigned)record));
-	return STATUS_OK;
+		enter(trial, FAMILY_RECORDS, (unsigned)record);
+}
+
+static void enter_text(struct trial *trial, unsigned digits)
+{
+	trial->handicap[digits > DIGITS_MANY ? FAMILY_PROSE : FAMILY_LINES] =
+		TEXT_HANDICAP;
+	enter(trial, FAMILY_PROSE, 1);
+	enter(trial, FAMILY_LINES, 1);
 }
 
 enum status plan_choose(const struct plan_request *request,
@@ -127,34 +190,33 @@ enum status plan_choose(const struct plan_request *request,
 	struct trial trial = {.request = request,
 			      .handicap[FAMILY_FIELDS] = FIELDS_HANDICAP};
 	uint64_t histogram[256] = {0};
-	size_t sample = request->count / SAMPLE_SHARE;
-	bool text;
+	size_t count = request->count, sample = count / SAMPLE_SHARE;
+	const struct candidate *best;
+	struct candidate flat = {.family = FAMILY_FLAT, .stride = 1};
 
-	for (size_t i = 0; i < request->count; i++)
+	for (size_t i = 0; i < count; i++)
 		histogram[request->bytes[i]]++;
 	sample = sample < SAMPLE_LEAST ? SAMPLE_LEAST : sample;
 	sample = sample > SAMPLE_MOST ? SAMPLE_MOST : sample;
-	trial.sample = sample < request->count ? sample : request->count;
+	trial.sample = sample < count ? sample : count;
 	/* What does not fall below 8 bits a byte is left flat. */
-	trial.best = (struct predict_plan){.family = FAMILY_FLAT, .stride = 1};
-	trial.least_q32 = (int64_t)(16 * trial.sample) << 32;
-	text = text_percent(histogram, request->count) > 97;
-	if (bases_only(request->bytes, request->count)) {
-		trial.best.family = FAMILY_BASES;
-	} else if (text) {
-		trial.handicap[digits_percent(histogram, request->count) >
-					       DIGITS_MANY
-				       ? FAMILY_PROSE
-				       : FAMILY_LINES] = TEXT_HANDICAP;
-		TRY(try_plan(&trial, FAMILY_PROSE, 1));
-		TRY(try_plan(&trial, FAMILY_LINES, 1));
+	flat.cost_q32 = (int64_t)(SAMPLES * 8 * trial.sample) << 32;
+	if (bases_only(request->bytes, count)) {
+		flat.family = FAMILY_BASES;
+		best = &flat;
 	} else {
-		TRY(try_binary(&trial));
+		if (text_percent(histogram, count) > 97)
+			enter_text(&trial, digits_percent(histogram, count));
+		else
+			enter_binary(&trial);
+		TRY(try_all(&trial));
+		best = cheapest(&trial);
+		best = best->cost_q32 < flat.cost_q32 ? best : &flat;
 	}
-	*plan = trial.best;
+	*plan = plan_of(request, best);
 	plan->strength = request->strength;
-	plan->bytes = request->count;
-	if (request->page_bytes && request->page_bytes < request->count)
+	plan->bytes = count;
+	if (request->page_bytes && request->page_bytes < count)
 		plan->bytes = request->page_bytes;
 	return STATUS_OK;
 }

@@ -29,6 +29,14 @@ unsigned contexts_deep_bytes(const struct past *past, struct view *view,
 unsigned field_above(const struct past *past);
 unsigned column_above(const struct past *past);
 
+/*
+ * The number that goes on from those above (forecast.c): prepared where a field
+ * begins, compared with the byte taken in; the byte that comes, or 256.
+ */
+void forecast_begin(struct past *past);
+void forecast_push(struct past *past, unsigned c);
+unsigned forecast_byte(const struct past *past, unsigned i);
+
 /* For FAMILY_FIELDS: takes a byte in; the base of the next one. */
 void fields_push(struct past *past, uint8_t byte);
 uint8_t fields_base(const struct past *past);

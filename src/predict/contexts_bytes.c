@@ -99,6 +99,23 @@ unsigned contexts_image(const struct past *past, struct view *view)
 	return k;
 }
 
+/* By the high bits of the last three bytes, or by how forecasts stand. */
+static void select_deep(const struct past *past, struct view *view)
+{
+	uint64_t last = past->last8;
+	unsigned high = (unsigned)((last >> 5 & 7) | (last >> 10 & 0x38) |
+				   (last >> 15 & 0xc0));
+
+	if (past->plan.family == FAMILY_LINES) {
+		unsigned a = forecast_byte(past, 0), b = forecast_byte(past, 1);
+
+		high = (high & 7) * 3 + (a > 511 ? 2 : (a & 1));
+		high = high * 3 + (b > 511 ? 2 : (b & 1));
+		high = high * 2 + (a >> 1 == b >> 1);
+	}
+	view->select[4] = (uint16_t)high;
+}
+
 void contexts_look(const struct past *past, struct view *view)
 {
 	unsigned n, all = past_contexts(&past->plan);
@@ -123,6 +140,8 @@ void contexts_look(const struct past *past, struct view *view)
 		n = contexts_binary(past, view);
 		break;
 	}
+	if (past->plan.strength == STRENGTH_DEEP)
+		select_deep(past, view);
 	while (n < all)
 		view->hash[n++] = 0;
 }

@@ -46,6 +46,10 @@ unsigned contexts_prose(const struct past *past, struct view *view)
 		add(view, &n, pair(past->at - past->line, c1));
 	}
 	view->select[2] = (uint16_t)c1;
+	if (c1 >= 0xc0 && c1 < 0xe0) {
+		view->select[2] = 0xc0 | (past->last8 >> 8 & 63);
+		view->last = (uint8_t)view->select[2];
+	}
 	if (past->plan.strength == STRENGTH_NIGHTLY)
 		return n;
 	return contexts_deep_text(past, view, n);
@@ -77,6 +81,11 @@ unsigned contexts_lines(const struct past *past, struct view *view)
 	unsigned c1 = past->last8 & 255;
 	unsigned field = past->fields[0], above = field_above(past), kind;
 	uint64_t in_field = pair(past->field_hash, field);
+	uint64_t forecasts = pair(
+		forecast_byte(past, 0) * 1024U + forecast_byte(past, 1), field);
+
+	/* In the place of order 4, which lanes ask as well. */
+	view->hash[3] = context_hash(3, pair(forecasts, above));
 
 	add(view, &n, pair(past->word, c1));
 	add(view, &n, pair(column_above(past), last_bytes(past, 2)));

@@ -4,7 +4,7 @@
 
 void mixer_restart(struct mixer *mixer, int16_t even, int16_t odd)
 {
-	size_t rows = (size_t)SETS * SET_ROWS;
+	size_t rows = (size_t)mixer->sets * SET_ROWS;
 	uint16_t first[STAGE_ROOM] = {0};
 
 	for (size_t row = 0; row < rows; row++) {
@@ -15,8 +15,8 @@ void mixer_restart(struct mixer *mixer, int16_t even, int16_t odd)
 		w[mixer->inputs - 1] = 0;
 	}
 	for (size_t row = 0; row < SET_ROWS; row++) {
-		for (unsigned i = 0; i < SETS; i++)
-			mixer->final[row][i] = 65536 / SETS;
+		for (unsigned i = 0; i < mixer->sets; i++)
+			mixer->final[row][i] = (int32_t)(65536 / mixer->sets);
 	}
 	for (int i = 0; i < STAGE_USED; i++) {
 		int x = (i - STAGE_USED / 2) * STAGE_STEP;
@@ -32,7 +32,7 @@ void mixer_restart(struct mixer *mixer, int16_t even, int16_t odd)
 		       sizeof(first));
 	}
 	mixer->seen = 0;
-	mixer->rate = 160;
+	mixer->rate = mixer->rate_last + RATE_MORE;
 }
 
 int64_t tally_q32(const struct tally *tally)

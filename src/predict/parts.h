@@ -12,7 +12,10 @@
 #define INPUTS_MAX INPUTS_DEEP
 #define COMMON 6 /* order 0, order 1, match (2), second match, constant */
 
-#define SETS 3
+/* Weight sets of a mixer: as many as select them (past.h). */
+#define SETS_NIGHTLY 3
+#define SETS_DEEP 5
+#define SETS_MAX SETS_DEEP
 
 /*
  * Final stages: interpolated tables over the logistic domain, a row a cache
@@ -29,11 +32,11 @@
 /* One decision's way through the mixer, from prediction to update. */
 struct mixing {
 	const int16_t *inputs;
-	int16_t *weights[SETS];
+	int16_t *weights[SETS_MAX];
 	int32_t *final;
-	int32_t dot[SETS];
+	int32_t dot[SETS_MAX];
 	int32_t x; /* of the final mixer */
-	unsigned p[SETS], p_final;
+	unsigned p[SETS_MAX], p_final;
 	uint16_t *stage[2]; /* lower of the two entries used */
 	unsigned nearer[2]; /* which of them is nearer */
 };
@@ -47,15 +50,22 @@ struct selection {
 	const struct view *view;
 };
 
+/* By so much larger are the steps of the weights at first. */
+#define RATE_MORE 120
+
 /* The mixer's weights and final stages. */
 struct mixer {
 	struct predict_tables tables;
-	unsigned inputs;
-	int16_t *weights; /* owned; SETS x SET_ROWS x inputs */
-	int32_t final[SET_ROWS][SETS];
+	unsigned inputs, sets;
+	int16_t *weights; /* owned; sets x SET_ROWS x inputs */
+	int32_t final[SET_ROWS][SETS_MAX];
 	_Alignas(64) uint16_t stage[2][STAGE_ROWS * STAGE_ROOM];
 	uint32_t seen; /* decisions, up to the end of fast learning */
-	int32_t rate;  /* of learning, by seen */
+	/*
+	 * Steps of the weights, in 2^-10 of error times input: now, and in the
+	 * end.
+	 */
+	int32_t rate, rate_last;
 };
 
 /* Decisions whose product of probabilities has yet to be turned into bits. */
@@ -131,9 +141,11 @@ struct predictor {
 	unsigned partial, bit;
 	_Alignas(64) int16_t inputs[INPUTS_MAX];
 	/* passes */
-	struct tally tally;
-	struct view *views;    /* owned; 2 x CHUNK */
-	int16_t *chunk_inputs; /* owned; CHUNK x 8 x inputs */
+	struct tally tally, lane_tally;
+	unsigned threads;
+	struct journal *journal; /* owned; NULL: nothing to go back to */
+	struct view *views;      /* owned; 2 x CHUNK */
+	int16_t *chunk_inputs;   /* owned; CHUNK x 8 x inputs */
 };
 
 static inline void tally_add(struct tally *tally, unsigned p16)

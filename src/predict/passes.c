@@ -8,20 +8,16 @@
 #include "predict/predictor.h"
 
 #include "predict/bases.h"
+#include "predict/journal.h"
+#include "predict/passes.h"
 #include "predict/steps.h"
-
-/* A chunk under way. */
-struct chunk {
-	uint8_t bytes[CHUNK]; /* less their bases */
-	size_t count;
-	struct view *views;
-	uint8_t active[CHUNK]; /* bytes that are coded bit by bit */
-	bool lane_failed[CHUNK];
-	size_t actives;
-};
 
 /* How far ahead of the past its match table is called for. */
 #define WARM 24
+/* Bytes of a chunk by which the final stages' rows are called for. */
+#define AHEAD 2
+/* Fewer bytes are not worth a second thread. */
+#define PAIR_LEAST 2048
 
 /* Calls for the rows of the final stages that a byte's bits go through. */
 static void warm_stages(const struct predictor *p, const struct view *view,
@@ -38,27 +34,45 @@ static void warm_stages(const struct predictor *p, const struct view *view,
 	}
 }
 
-/* Takes the views of the bytes at hand, and calls for their lines. */
-static void look_ahead(struct predictor *p, size_t from, size_t end,
-		       struct view *views)
+void passes_look(struct predictor *p, struct chunk *chunk, size_t from,
+		 size_t end)
 {
 	struct past *past = &p->past;
 	const uint8_t *bytes = past->bytes;
-	size_t to = from + CHUNK < end ? from + CHUNK : end;
 
-	for (size_t i = from; i < to; i++) {
-		struct view *view = views + (i - from);
+	chunk->count = from + CHUNK < end ? CHUNK : end - from;
+	for (size_t i = 0; i < chunk->count; i++) {
+		struct view *view = &chunk->views[i];
 
-		if (past->at < i)
+		if (past->at < from + i) {
+			if (p->journal)
+				journal_matches(p->journal, p);
 			past_push(past);
+		}
 		past_look(past, view);
-		if (i + WARM < end)
-			past_warm(past, bytes, i + WARM);
-		if (view->lane &&
-		    view->expected[0] == (uint8_t)(bytes[i] - view->base))
-			continue;
-		warm_stages(p, view, (uint8_t)(bytes[i] - view->base));
-		for (unsigned k = 0; k < p->contexts; k++)
+		chunk->bytes[i] = (uint8_t)(bytes[from + i] - view->base);
+		if (from + i + WARM < end)
+			past_warm(past, bytes, from + i + WARM);
+	}
+	if (p->journal)
+		journal_lines(p->journal, p, chunk);
+}
+
+/* A byte that is likely to go by without a look into the contexts. */
+static bool in_lane(const struct chunk *chunk, size_t i)
+{
+	const struct view *view = &chunk->views[i];
+
+	return view->lane && view->expected[0] == chunk->bytes[i];
+}
+
+void passes_warm(const struct predictor *p, const struct chunk *chunk,
+		 unsigned from, unsigned to)
+{
+	for (size_t i = 0; i < chunk->count; i++) {
+		const struct view *view = &chunk->views[i];
+
+		for (unsigned k = from; k < to && !in_lane(chunk, i); k++)
 			__builtin_prefetch(
 				context_lines(p, k) +
 					(size_t)(view->hash[k] >>
@@ -69,7 +83,7 @@ static void look_ahead(struct predictor *p, size_t from, size_t end,
 }
 
 /* Decides the lanes; what is left goes bit by bit. */
-static void run_lanes(struct predictor *p, struct chunk *chunk)
+void passes_lanes(struct predictor *p, struct chunk *chunk)
 {
 	chunk->actives = 0;
 	for (size_t i = 0; i < chunk->count; i++) {
@@ -80,7 +94,7 @@ static void run_lanes(struct predictor *p, struct chunk *chunk)
 		if (view->lane) {
 			unsigned p16 = lane_predict(p, view);
 
-			tally_add(&p->tally, hit ? p16 : 65536 - p16);
+			tally_add(&p->lane_tally, hit ? p16 : 65536 - p16);
 			lane_update(p, view, hit);
 			if (hit)
 				continue;
@@ -137,7 +151,7 @@ ALWAYS_INLINE void run_duo(struct predictor *p, const struct chunk *chunk,
 			   unsigned k, size_t width)
 {
 	const struct predict_tables *tables = &p->mixer.tables;
-	int16_t *inputs = p->chunk_inputs + 2 * k;
+	int16_t *inputs = chunk->inputs + 2 * k;
 	uint8_t *lines = context_lines(p, k);
 	uint8_t *lines_b = context_lines(p, k + 1);
 	struct duo duo = {.trend_a = p->trend[k], .trend_b = p->trend[k + 1]};
@@ -202,7 +216,7 @@ ALWAYS_INLINE void run_common(struct predictor *p, const struct chunk *chunk,
 	const int16_t *stretch = p->mixer.tables.stretch;
 	/* Without a second match its input is 0 from the beginning. */
 	bool second = p->past.match[1].table != NULL;
-	int16_t *inputs = p->chunk_inputs + width - COMMON;
+	int16_t *inputs = chunk->inputs + width - COMMON;
 
 	for (size_t i = 0; i < chunk->actives; i++) {
 		unsigned at = chunk->active[i], byte = chunk->bytes[at];
@@ -252,29 +266,71 @@ NEVER_INLINE static void common_deep(struct predictor *p,
 	run_common(p, chunk, INPUTS_DEEP);
 }
 
-static void run_chunk(struct predictor *p, struct chunk *chunk)
+void passes_contexts(struct predictor *p, struct chunk *chunk, unsigned from,
+		     unsigned to)
+{
+	bool deep = p->mixer.inputs == INPUTS_DEEP;
+
+	for (unsigned k = from; k < to; k += 2)
+		deep ? duo_deep(p, chunk, k) : duo_nightly(p, chunk, k);
+}
+
+/* Calls for the final stages of an active byte, where there is one. */
+static void warm_active(const struct predictor *p, const struct chunk *chunk,
+			size_t i)
+{
+	if (i < chunk->actives)
+		warm_stages(p, &chunk->views[chunk->active[i]],
+			    chunk->bytes[chunk->active[i]]);
+}
+
+void passes_mix(struct predictor *p, struct chunk *chunk)
 {
 	size_t width = p->mixer.inputs;
-	bool deep = width == INPUTS_DEEP;
 
-	run_lanes(p, chunk);
-	for (unsigned k = 0; k < p->contexts; k += 2)
-		deep ? duo_deep(p, chunk, k) : duo_nightly(p, chunk, k);
-	deep ? common_deep(p, chunk) : common_nightly(p, chunk);
+	width == INPUTS_DEEP ? common_deep(p, chunk) : common_nightly(p, chunk);
+	for (size_t i = 0; i < AHEAD; i++)
+		warm_active(p, chunk, i);
 	for (size_t i = 0; i < chunk->actives; i++) {
 		unsigned at = chunk->active[i];
 
+		warm_active(p, chunk, i + AHEAD);
 		p->lanes->byte(&p->mixer, &chunk->views[at], chunk->bytes[at],
 			       chunk->lane_failed[at],
-			       p->chunk_inputs + i * 8 * width, &p->tally);
+			       chunk->inputs + i * 8 * width, &p->tally);
 	}
+}
+
+/* One chunk is looked at while that before it is under way. */
+static void run_alone(struct predictor *p, size_t from, size_t end)
+{
+	struct chunk chunk[2] = {
+		{.views = p->views, .inputs = p->chunk_inputs},
+		{.views = p->views + CHUNK, .inputs = p->chunk_inputs}};
+	unsigned turn = 0;
+
+	passes_look(p, &chunk[0], from, end);
+	passes_warm(p, &chunk[0], 0, p->contexts);
+	for (size_t at = from; at < end; at += CHUNK, turn ^= 1) {
+		if (at + CHUNK < end) {
+			passes_look(p, &chunk[turn ^ 1], at + CHUNK, end);
+			passes_warm(p, &chunk[turn ^ 1], 0, p->contexts);
+		}
+		passes_lanes(p, &chunk[turn]);
+		passes_contexts(p, &chunk[turn], 0, p->contexts);
+		passes_mix(p, &chunk[turn]);
+	}
+}
+
+static int64_t both_tallies(const struct predictor *p)
+{
+	return tally_q32(&p->tally) + tally_q32(&p->lane_tally);
 }
 
 int64_t predictor_measure_q32(struct predictor *p, size_t count)
 {
-	int64_t before = tally_q32(&p->tally);
+	int64_t before = both_tallies(p);
 	size_t from = p->past.at + p->pending, end = from + count;
-	unsigned turn = 0;
 
 	if (p->bases)
 		return bases_measure_q32(p->bases, count);
@@ -285,21 +341,10 @@ int64_t predictor_measure_q32(struct predictor *p, size_t count)
 	}
 	if (!count)
 		return 0;
-	look_ahead(p, from, end, p->views);
-	for (size_t at = from; at < end; at += CHUNK) {
-		struct chunk chunk;
-
-		chunk.count = end - at < CHUNK ? end - at : CHUNK;
-		chunk.views = p->views + turn * CHUNK;
-		for (size_t i = 0; i < chunk.count; i++)
-			chunk.bytes[i] = (uint8_t)(p->past.bytes[at + i] -
-						   chunk.views[i].base);
-		turn ^= 1;
-		if (at + CHUNK < end)
-			look_ahead(p, at + CHUNK, end, p->views + turn * CHUNK);
-		run_chunk(p, &chunk);
-	}
+	if (p->threads < 2 || p->journal || count < PAIR_LEAST ||
+	    pair_run(p, from, end) != STATUS_OK)
+		run_alone(p, from, end);
 	p->begun = false;
 	p->pending = true;
-	return tally_q32(&p->tally) - before;
+	return both_tallies(p) - before;
 }

@@ -39,7 +39,7 @@ enum status past_init(struct past *past, const struct predict_plan *plan)
 	TRY(match_init(&past->match[0], plan->bytes, text ? 6 : 5));
 	if (plan->strength == STRENGTH_NIGHTLY)
 		return STATUS_OK;
-	if (match_init(&past->match[1], plan->bytes, 8) == STATUS_OK)
+	if (match_init(&past->match[1], plan->bytes, 16) == STATUS_OK)
 		return STATUS_OK;
 	past_release(past);
 	return STATUS_NO_MEMORY;
@@ -83,10 +83,17 @@ void past_restart(struct past *past, const uint8_t *bytes)
 }
 
 /* Where a context of the last bytes (latest lowest) is looked up. */
-static size_t match_entry(const struct match *match, uint64_t last8)
+static size_t match_entry(const struct match *match, uint64_t last8,
+			  uint64_t before8)
 {
-	uint64_t context = last8 << (64 - 8 * match->least);
+	uint64_t context;
 
+	if (match->least > 8) {
+		context = (last8 ^ last8 >> 31) * UINT64_C(0x9fb21c651e98df25);
+		context += before8 << (128 - 8 * match->least);
+	} else {
+		context = last8 << (64 - 8 * match->least);
+	}
 	context ^= context >> 29;
 	return (size_t)(context * UINT64_C(0xd6e8feb86659fd93) >>
 			(32 + match->shift));
@@ -105,7 +112,7 @@ static uint32_t agreement(const uint8_t *bytes, size_t a, size_t b)
 
 /* Follows the match over the byte just taken in, or finds another. */
 static void match_push(struct match *match, const uint8_t *bytes, size_t at,
-		       uint64_t last8)
+		       uint64_t last8, uint64_t before8)
 {
 	uint32_t *entry;
 
@@ -122,7 +129,7 @@ static void match_push(struct match *match, const uint8_t *bytes, size_t at,
 	}
 	if (at < match->least)
 		return;
-	entry = &match->table[match_entry(match, last8)];
+	entry = &match->table[match_entry(match, last8, before8)];
 	if ((!match->at || match->length < FIRM_LENGTH) && *entry) {
 		uint32_t length = agreement(bytes, *entry, at);
 
@@ -173,8 +180,9 @@ static void begin_line(struct past *past)
 {
 	unsigned fields = past->fields[0];
 
-	memcpy(past->field_start[1], past->field_start[0],
-	       sizeof(past->field_start[0]));
+	memmove(past->field_start[1], past->field_start[0],
+		(LINES_KEPT - 1) * sizeof(past->field_start[0]));
+	past->fields[2] = past->fields[1];
 	past->fields[1] = fields;
 	past->fields[0] = 0;
 	past->field_start[0][0] = past->at;
@@ -183,6 +191,7 @@ static void begin_line(struct past *past)
 	past->first = 0;
 	past->line_hash = 0;
 	past->field_hash = past->field_hash1 = 0;
+	forecast_begin(past);
 }
 
 static void push_line(struct past *past, unsigned c)
@@ -197,6 +206,7 @@ static void push_line(struct past *past, unsigned c)
 		past->first = indent << 8 | c;
 	}
 	past->line_hash = (past->line_hash + c + 1) * UINT32_C(0x2c9277b5);
+	forecast_push(past, c);
 	if (!is_field_end(c)) {
 		past->field_hash =
 			(past->field_hash + c + 1) * UINT32_C(0x2c9277b5);
@@ -206,6 +216,7 @@ static void push_line(struct past *past, unsigned c)
 		past->field_start[0][++past->fields[0]] = past->at;
 	past->field_hash1 = past->field_hash;
 	past->field_hash = 0;
+	forecast_begin(past);
 }
 
 void past_push(struct past *past)
@@ -222,9 +233,11 @@ void past_push(struct past *past)
 		push_word(past, c);
 	if (past->plan.family <= FAMILY_LINES)
 		push_line(past, c);
-	match_push(&past->match[0], past->bytes, past->at, past->last8);
+	match_push(&past->match[0], past->bytes, past->at, past->last8,
+		   past->before8);
 	if (past->match[1].table)
-		match_push(&past->match[1], past->bytes, past->at, past->last8);
+		match_push(&past->match[1], past->bytes, past->at, past->last8,
+			   past->before8);
 }
 
 void past_look(const struct past *past, struct view *view)
@@ -240,8 +253,22 @@ void past_look(const struct past *past, struct view *view)
 	}
 	view->hits = 0;
 	view->last = (uint8_t)past->last8;
-	view->lane = match[0].at && match[0].length >= past->lane_length;
+	view->lane =
+		match[0].at &&
+		match[0].length >= past->lane_length +
+					   ((past->last8 & 0x80808080) &&
+							    past->plan.family <=
+								    FAMILY_LINES
+						    ? 8
+						    : 0);
 	contexts_look(past, view);
+}
+
+size_t past_match_entry(const struct past *past, unsigned i)
+{
+	return match_entry(&past->match[i],
+			   past->last8 << 8 | past->bytes[past->at],
+			   past->before8 << 8 | past->last8 >> 56);
 }
 
 void past_warm(const struct past *past, const uint8_t *bytes, size_t position)
@@ -253,7 +280,7 @@ void past_warm(const struct past *past, const uint8_t *bytes, size_t position)
 		return;
 	for (unsigned i = 0; i < 8; i++)
 		last8 = last8 << 8 | bytes[position - 8 + i];
-	__builtin_prefetch(&match->table[match_entry(match, last8)], 1);
+	__builtin_prefetch(&match->table[match_entry(match, last8, 0)], 1);
 }
 
 /* More where each tells something new; even numbers, taken two by two. */

@@ -8,7 +8,7 @@
 
 #define CONTEXTS_MAX 30
 #define FIELDS_MAX 32
-#define SELECTORS 3
+#define SELECTORS 5
 /* Weight sets by partial byte, by match and bit, by the family: so many each.
  */
 #define SET_ROWS 256
@@ -42,6 +42,17 @@ struct match {
 /* Rests of the last records: bytes less their bases. */
 #define RESTS 256
 
+#define LINES_KEPT 3
+#define FORECAST_MAX 24
+#define FORECASTS 2
+
+/* The field under way, as the numbers in the two lines before go on. */
+struct forecast {
+	unsigned length; /* 0: none */
+	bool holds;      /* so far the field is as forecast */
+	uint8_t text[FORECAST_MAX];
+};
+
 struct past {
 	struct predict_plan plan;
 	const uint8_t *bytes; /* borrowed; the first at are read, no more */
@@ -52,8 +63,10 @@ struct past {
 	size_t line, line_before;    /* where this line and that before begin */
 	uint32_t line_hash;
 	uint32_t first; /* first byte that is no blank, and indent */
-	size_t field_start[2][FIELDS_MAX + 1];
-	unsigned fields[2]; /* begun in this line, and in that before */
+	/* this line, that before, and that before it */
+	size_t field_start[LINES_KEPT][FIELDS_MAX + 1];
+	unsigned fields[LINES_KEPT]; /* begun in each */
+	struct forecast forecast[FORECASTS];
 	uint32_t field_hash, field_hash1;
 	uint8_t rest[RESTS]; /* by position modulo RESTS */
 	int carry;           /* into the next byte: -1, 0, 1 */
@@ -71,6 +84,9 @@ void past_push(struct past *past);
 void past_look(const struct past *past, struct view *view);
 /* Contexts that the plan has. */
 unsigned past_contexts(const struct predict_plan *plan);
+
+/* The entry of match i that past_push will set for the byte at bytes[at]. */
+size_t past_match_entry(const struct past *past, unsigned i);
 
 /* Warms the cache for a push of the byte at position; changes nothing. */
 void past_warm(const struct past *past, const uint8_t *bytes, size_t position);

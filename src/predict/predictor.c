@@ -2,6 +2,7 @@
 
 #include "predict/bases.h"
 #include "predict/components.h"
+#include "predict/journal.h"
 #include "predict/steps.h"
 
 #include "base/log2.h"
@@ -18,9 +19,19 @@ static unsigned lines_log2_for(const struct predict_plan *plan)
 {
 	unsigned most = plan->strength == STRENGTH_DEEP ? 19 : 18, log2 = 8;
 
-	while (log2 < most && ((size_t)2 << log2) < plan->bytes)
+	while (log2 < most &&
+	       ((plan->strength == STRENGTH_DEEP ? (size_t)2 : (size_t)4)
+		<< log2) < plan->bytes)
 		log2++;
 	return log2;
+}
+
+/* Prose changes least as it goes on, and deep mixers have most to weigh. */
+static int32_t rate_last_for(const struct predict_plan *plan)
+{
+	if (plan->family != FAMILY_PROSE)
+		return plan->strength == STRENGTH_DEEP ? 60 : 90;
+	return plan->strength == STRENGTH_DEEP ? 28 : 40;
 }
 
 static MUST_USE enum status predictor_allocate(struct predictor *made)
@@ -35,8 +46,8 @@ static MUST_USE enum status predictor_allocate(struct predictor *made)
 		(uint8_t *)(((uintptr_t)made->lines_block + LINE_BYTES - 1) &
 			    ~(uintptr_t)(LINE_BYTES - 1));
 	made->fresh = true;
-	TRY(memory_new_lines((size_t)SETS * SET_ROWS * inputs, sizeof(int16_t),
-			     &made->mixer.weights));
+	TRY(memory_new_lines((size_t)made->mixer.sets * SET_ROWS * inputs,
+			     sizeof(int16_t), &made->mixer.weights));
 	TRY(memory_new_lines(65536, sizeof(uint16_t), &made->order1));
 	TRY(memory_new(2 * CHUNK, sizeof(*made->views), &made->views));
 	return memory_new_lines(CHUNK * 8 * inputs, sizeof(int16_t),
@@ -57,6 +68,9 @@ enum status predictor_new(const struct predict_plan *plan,
 	made->lines_log2 = lines_log2_for(plan);
 	made->mixer.inputs =
 		plan->strength == STRENGTH_DEEP ? INPUTS_DEEP : INPUTS_NIGHTLY;
+	made->mixer.sets =
+		plan->strength == STRENGTH_DEEP ? SETS_DEEP : SETS_NIGHTLY;
+	made->mixer.rate_last = rate_last_for(plan);
 	assert(2 * made->contexts + COMMON <= made->mixer.inputs);
 	tables_build(&made->mixer.tables);
 	predictor_set_lanes(made, LANES_BEST);
@@ -75,6 +89,7 @@ void predictor_free(struct predictor *predictor)
 	if (!predictor)
 		return;
 	bases_free(predictor->bases);
+	journal_free(predictor->journal);
 	past_release(&predictor->past);
 	memory_free(predictor->lines_block);
 	memory_free(predictor->mixer.weights);
@@ -93,6 +108,11 @@ void predictor_set_lanes(struct predictor *predictor, enum predict_lanes lanes)
 	predictor->lanes = lanes == LANES_BEST && fast ? fast : &lanes_plain;
 }
 
+void predictor_set_threads(struct predictor *predictor, unsigned threads)
+{
+	predictor->threads = threads;
+}
+
 void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 {
 	const struct predict_tables *tables = &predictor->mixer.tables;
@@ -101,6 +121,8 @@ void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 		bases_restart(predictor->bases, bytes);
 		return;
 	}
+	journal_free(predictor->journal);
+	predictor->journal = NULL;
 	past_restart(&predictor->past, bytes);
 	/* New ones are zeroed, and not yet touched. */
 	if (!predictor->fresh)
@@ -137,9 +159,31 @@ void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 				(UINT32_MAX / 16 * 15 & ~1023U) | 2;
 	}
 	predictor->tally = (struct tally){.mantissa = UINT64_C(1) << 63};
+	predictor->lane_tally = predictor->tally;
 	predictor->begun = predictor->pending = false;
 	predictor->bit = 0;
 	predictor->partial = 1;
+}
+
+enum status predictor_remember(struct predictor *predictor, size_t bytes)
+{
+	struct journal *journal;
+
+	if (predictor->bases || predictor->plan.family == FAMILY_FLAT)
+		return STATUS_BAD_USAGE;
+	journal_free(predictor->journal);
+	predictor->journal = NULL;
+	TRY(journal_new(predictor, bytes, &journal));
+	predictor->journal = journal;
+	return STATUS_OK;
+}
+
+void predictor_rewind(struct predictor *predictor)
+{
+	struct journal *journal = predictor->journal;
+
+	journal_rewind(journal, predictor);
+	predictor->journal = journal;
 }
 
 static void begin_byte(struct predictor *p)

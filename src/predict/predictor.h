@@ -50,8 +50,22 @@ bool predictor_update(struct predictor *predictor, unsigned decision,
  */
 int64_t predictor_measure_q32(struct predictor *predictor, size_t count);
 
+/*
+ * Remembers where it stands, so that predictor_rewind takes it back there:
+ * pages after the same past, each as if it were the only one. Between the two
+ * at most so many bytes are measured, by predictor_measure_q32 and no other
+ * way. STATUS_NO_MEMORY; STATUS_BAD_USAGE: not for FAMILY_BASES and
+ * FAMILY_FLAT. Forgotten by predictor_restart.
+ */
+MUST_USE enum status predictor_remember(struct predictor *predictor,
+					size_t bytes);
+void predictor_rewind(struct predictor *predictor);
+
 /* Instruction sets: the fastest here, or plain C. Both give equal bits. */
 enum predict_lanes { LANES_BEST, LANES_PLAIN };
 void predictor_set_lanes(struct predictor *predictor, enum predict_lanes lanes);
+
+/* Threads that predictor_measure_q32 may use; more than two do not help. */
+void predictor_set_threads(struct predictor *predictor, unsigned threads);
 
 #endif

@@ -12,7 +12,7 @@ ALWAYS_INLINE unsigned nibble_node(unsigned partial, unsigned bit)
 	return (1U << within) | (partial & ((1U << within) - 1));
 }
 
-ALWAYS_INLINE uint8_t *context_lines(struct predictor *p, unsigned i)
+ALWAYS_INLINE uint8_t *context_lines(const struct predictor *p, unsigned i)
 {
 	return p->lines + ((size_t)i << p->lines_log2) * LINE_BYTES;
 }

@@ -59,6 +59,19 @@ static json_t *bracket_object(const struct calibration_case *one)
 	return json_done(&made);
 }
 
+static json_t *some_brackets_object(const struct calibration_bracket *judged)
+{
+	struct json_maker made;
+
+	json_begin(&made);
+	json_put(&made, "covers", share_object(&judged->covers));
+	json_put(&made, "open_below", share_object(&judged->open_below));
+	json_put(&made, "rate_above", share_object(&judged->above));
+	json_put(&made, "rate_below", share_object(&judged->below));
+	json_put(&made, "width_by_rate", measured_object(&judged->width));
+	return json_done(&made);
+}
+
 static json_t *rows_array(const struct calibration_case *one)
 {
 	json_t *rows = json_array();
@@ -90,10 +103,18 @@ static json_t *case_object(const struct calibration_case *one)
 	json_put_real(&made, "known_rate", true, subject->known_rate);
 	json_put(&made, "estimates", rows_array(one));
 	json_put(&made, "bracket", bracket_object(one));
+	json_put(&made, "bracket_with_codes",
+		 some_brackets_object(&one->with_codes));
+	json_put(&made, "bracket_without_codes",
+		 some_brackets_object(&one->without_codes));
+	json_put(&made, "width_with_by_without",
+		 measured_object(&one->codes_narrow));
 	json_put(&made, "drift_flag", share_object(&one->drifts));
 	json_put(&made, "gap_covers_mean", share_object(&one->gap));
 	json_put(&made, "gap_width_by_unpaired",
 		 measured_object(&one->gap_width_ratio));
+	json_put_real(&made, "gap_width_by_need", one->gap_width_by_need > 0,
+		      one->gap_width_by_need);
 	return json_done(&made);
 }
 

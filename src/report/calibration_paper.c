@@ -115,8 +115,10 @@ static enum status write_rows(const struct writer *writer,
 
 	grid_init(&grid, row_columns, COUNT(row_columns));
 	for (size_t i = 0; i < count; i++) {
-		for (size_t r = 0; r < cases[i].row_count; r++)
-			row_line(&grid, &cases[i], &cases[i].rows[r]);
+		for (size_t r = 0; r < cases[i].row_count; r++) {
+			if (cases[i].rows[r].told.trials)
+				row_line(&grid, &cases[i], &cases[i].rows[r]);
+		}
 	}
 	TRY(grid_finish(&grid, writer));
 	write_paragraph(
@@ -127,7 +129,66 @@ static enum status write_rows(const struct writer *writer,
 		"mean' is how often the interval covers the mean of the "
 		"estimator over all samples, which is what it promises; "
 		"'rate' how often it covers the true rate; 'told' the "
-		"share of samples with an interval.");
+		"share with an interval, of the samples it ran on.");
+	return STATUS_OK;
+}
+
+static const struct column codes_columns[] = {
+	{"source", 14, true},       {"samples", 7, false},
+	{"without", 7, false},      {"width %", 7, false},
+	{"with", 5, false},         {"99%", 13, true},
+	{"width %", 7, false},      {"open", 5, false},
+	{"missed high", 11, false}, {"narrower", 8, false},
+};
+
+static void codes_line(struct grid *grid, const struct calibration_case *one)
+{
+	const struct calibration_bracket *with = &one->with_codes;
+	const struct calibration_bracket *without = &one->without_codes;
+
+	grid_add(grid, "%s", one->subject.source);
+	grid_add(grid, "%zu", with->covers.trials);
+	grid_add(grid, "%.3f", without->covers.value);
+	grid_add(grid, "%.2f", 100 * without->width.value);
+	grid_add(grid, "%.3f", with->covers.value);
+	grid_add(grid, "[%.3f,%.3f]", with->covers.low, with->covers.high);
+	grid_add(grid, "%.2f", 100 * with->width.value);
+	grid_add(grid, "%.3f", with->open_below.value);
+	grid_add(grid, "%.3f", with->above.value);
+	grid_add(grid, "%.3f", one->codes_narrow.value);
+}
+
+static size_t with_codes(const struct calibration_case *cases, size_t count)
+{
+	size_t trials = 0;
+
+	for (size_t i = 0; i < count; i++)
+		trials += cases[i].with_codes.covers.trials;
+	return trials;
+}
+
+static enum status write_codes(const struct writer *writer,
+			       const struct calibration_case *cases,
+			       size_t count)
+{
+	struct grid grid;
+
+	if (!with_codes(cases, count))
+		return STATUS_OK;
+	grid_init(&grid, codes_columns, COUNT(codes_columns));
+	for (size_t i = 0; i < count; i++) {
+		if (cases[i].with_codes.covers.trials)
+			codes_line(&grid, &cases[i]);
+	}
+	TRY(grid_finish(&grid, writer));
+	write_paragraph(
+		writer,
+		"What mix and ctw do to the bracket, on the first samples of "
+		"each source only, for they take longer than all else "
+		"together: coverage and median width without them and with "
+		"them among the upper edges; how often a code is below the "
+		"lower edge then; how often the rate lies above the upper "
+		"edge; and the median of the one width over the other.");
 	return STATUS_OK;
 }
 
@@ -137,7 +198,17 @@ static const struct column gap_columns[] = {
 	{"99%", 13, true},
 	{"samples", 7, false},
 	{"width by unpaired", 17, false},
+	{"width by need", 13, false},
 };
+
+static size_t with_gaps(const struct calibration_case *cases, size_t count)
+{
+	size_t trials = 0;
+
+	for (size_t i = 0; i < count; i++)
+		trials += cases[i].gap.trials;
+	return trials;
+}
 
 static enum status write_gaps(const struct writer *writer,
 			      const struct calibration_case *cases,
@@ -145,6 +216,8 @@ static enum status write_gaps(const struct writer *writer,
 {
 	struct grid grid;
 
+	if (!with_gaps(cases, count))
+		return STATUS_OK;
 	grid_init(&grid, gap_columns, COUNT(gap_columns));
 	for (size_t i = 0; i < count; i++) {
 		const struct calibration_case *one = &cases[i];
@@ -154,15 +227,17 @@ static enum status write_gaps(const struct writer *writer,
 		grid_add(&grid, "[%.3f,%.3f]", one->gap.low, one->gap.high);
 		grid_add(&grid, "%zu", one->gap.trials);
 		grid_add(&grid, "%.3f", one->gap_width_ratio.value);
+		grid_add(&grid, "%.2f", one->gap_width_by_need);
 	}
 	TRY(grid_finish(&grid, writer));
 	write_paragraph(writer,
 			"The gap of zlib 9 over the corrected entropy, by "
 			"paired blocks: how often its interval covers the mean "
 			"gap over all samples, and its median width beside "
-			"that of two unpaired intervals. Samples whose flushes "
-			"cost over 10%% have no interval, and shorter ones "
-			"than 262,144 symbols are not tried.");
+			"that of two unpaired intervals, and beside the width "
+			"that the scatter of the gaps over all samples asks "
+			"for. Samples whose flushes cost over 10%% have no "
+			"interval.");
 	return STATUS_OK;
 }
 
@@ -178,6 +253,7 @@ static enum status write_length(const struct writer *writer,
 	write_heading(writer, 2, title);
 	TRY(write_goals(writer, cases, count));
 	TRY(write_brackets(writer, cases, count));
+	TRY(write_codes(writer, cases, count));
 	TRY(write_rows(writer, cases, count));
 	return write_gaps(writer, cases, count);
 }

@@ -4,9 +4,13 @@
 
 #define COARSE 10
 
-/* Set where 12 sources of known rate gave under 2% false alarms. */
-#define DRIFT_LAG1 0.25
+/* Set like DRIFT_LAG1. */
 #define DRIFT_VARIANCE_RATIO 2.6
+
+double lag1_without_bias(double lag1, double count)
+{
+	return (lag1 + 1 / count) / (1 - 4 / count);
+}
 
 static double spread(const double *means, size_t count, double *mean)
 {
@@ -23,12 +27,11 @@ static double spread(const double *means, size_t count, double *mean)
 static double lag1_corrected(const double *means, size_t count, double mean,
 			     double squares)
 {
-	double products = 0, n = (double)count, raw;
+	double products = 0;
 
 	for (size_t i = 0; i + 1 < count; i++)
 		products += (means[i] - mean) * (means[i + 1] - mean);
-	raw = products / squares;
-	return (raw + 1 / n) / (1 - 4 / n);
+	return lag1_without_bias(products / squares, (double)count);
 }
 
 void batches_find(const double *residuals, size_t count,

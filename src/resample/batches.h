@@ -7,10 +7,20 @@
 
 #define BATCHES 100
 
+/* Beyond this a series drifts: set where 12 sources of known rate gave under
+ * 2% false alarms. */
+#define DRIFT_LAG1 0.25
+
+/*
+ * A lag-1 correlation without the bias that a series of count values gives it
+ * (Kendall 1954: -(1 + 4 rho) / n).
+ */
+double lag1_without_bias(double lag1, double count);
+
 struct batches {
 	/*
-	 * Lag-1 correlation of the 100 batch means, corrected for its bias
-	 * (Kendall 1954: -(1 + 4 rho) / n). 0 for a constant series.
+	 * Lag-1 correlation of the 100 batch means, without its bias. 0 for a
+	 * constant series.
 	 */
 	double lag1;
 	/* Long-run variance of 10 batches over that of 100; 1 if constant. */

@@ -9,6 +9,7 @@
 #include "resample/block_length.h"
 #include "resample/draws.h"
 #include "resample/normal.h"
+#include "resample/start_up.h"
 
 /* Where the guard begins: 1.7 standard errors of 100 batches. */
 #define GUARD_LAG1 0.17
@@ -19,6 +20,8 @@
 /* Facts are rounded to 2^-16 bit: less than this a block is no variance. */
 #define ROUNDING_BITS 0x1p-15
 #define KEPT 6
+/* A correction of higher order that were larger would be no correction. */
+#define EXCESS_SHARE_MOST 0.5
 
 struct bootstrap {
 	struct bootstrap_rules rules;
@@ -76,9 +79,11 @@ static enum status draws_for(struct bootstrap *bootstrap, size_t blocks,
 
 static enum status work_init(struct work *work,
 			     const struct block_series *series, unsigned draws,
-			     double mean)
+			     size_t start_up)
 {
 	size_t m = series->blocks;
+	double mean = sum_of(series->bits + start_up, m - start_up) /
+		      sum_of(series->symbols + start_up, m - start_up);
 	double *numbers;
 
 	TRY(memory_new(5 * m + 2 + draws, sizeof(*numbers), &numbers));
@@ -91,7 +96,8 @@ static enum status work_init(struct work *work,
 		double symbols = series->symbols[i % m];
 
 		if (i < m)
-			work->residual[i] = bits - mean * symbols;
+			work->residual[i] =
+				i < start_up ? 0 : bits - mean * symbols;
 		work->sum_bits[i + 1] =
 			work->sum_bits[i] + work->residual[i % m];
 		work->sum_symbols[i + 1] = work->sum_symbols[i] + symbols;
@@ -118,6 +124,16 @@ static double exact_error(const struct work *work, size_t length)
 	}
 	return sqrt(squares / (double)m * pieces * pieces / (pieces - 1)) /
 	       work->sum_symbols[m];
+}
+
+/* The factor on the error when the series' excess leaves its variance. */
+static double without_excess(double error, double symbols, double excess)
+{
+	double variance = error * error * symbols * symbols;
+
+	if (!(variance > 0))
+		return 1;
+	return sqrt(1 - fmin(excess / variance, EXCESS_SHARE_MOST));
 }
 
 /* Sums over one draw: residuals u, symbols s, and their products. */
@@ -280,7 +296,7 @@ static bool is_constant(const struct work *work)
 }
 
 static enum status interval_of(struct bootstrap *bootstrap, struct work *work,
-			       struct bootstrap_result *result)
+			       double excess, struct bootstrap_result *result)
 {
 	struct block_length automatic;
 	struct batches batches;
@@ -302,11 +318,18 @@ static enum status interval_of(struct bootstrap *bootstrap, struct work *work,
 		(double)work->blocks / (double)result->block_length;
 	result->lag1 = batches.lag1;
 	result->drifts = batches.drifts;
-	result->standard_error = exact_error(work, result->block_length);
+	/* Blocks left out spread nothing: the others stand for them. */
+	result->standard_error =
+		exact_error(work, result->block_length) *
+		sqrt((double)work->blocks /
+		     (double)(work->blocks - result->start_up));
 	if (result->effective_blocks >= EFFECTIVE_BLOCKS_MIN) {
 		TRY(find_reach(bootstrap, work, result->block_length,
 			       result->standard_error, &reach));
 	}
+	result->standard_error *=
+		without_excess(result->standard_error,
+			       work->sum_symbols[work->blocks], excess);
 	guard(result, bootstrap->rules.confidence, &reach);
 	conclude(result, &reach, spread_blocks(work));
 	return STATUS_OK;
@@ -328,8 +351,10 @@ enum status bootstrap_interval(struct bootstrap *bootstrap,
 	}
 	made.mean = sum_of(series->bits, series->blocks) /
 		    sum_of(series->symbols, series->blocks);
-	TRY(work_init(&work, series, bootstrap->rules.draws, made.mean));
-	status = interval_of(bootstrap, &work, &made);
+	if (series->learns)
+		made.start_up = start_up_blocks(series);
+	TRY(work_init(&work, series, bootstrap->rules.draws, made.start_up));
+	status = interval_of(bootstrap, &work, series->excess, &made);
 	work_release(&work);
 	if (status == STATUS_OK)
 		*result = made;

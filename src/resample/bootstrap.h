@@ -13,6 +13,18 @@ struct block_series {
 	const double *bits;
 	const double *symbols;
 	size_t blocks; /* 0, or 100 x 2^j up to DRAWS_BLOCKS_MAX */
+	/*
+	 * Known excess, bits^2, >= 0: by so much the variance of the sum of
+	 * bits is smaller than the spread of the blocks makes it. At most half
+	 * of the variance is ever taken away.
+	 */
+	double excess;
+	/*
+	 * The series of something that learns: its first blocks cost more for
+	 * want of a past. That is in the mean, but it is no spread: blocks
+	 * found to be start-up (resample/start_up.h) are left out of it.
+	 */
+	bool learns;
 };
 
 struct bootstrap_rules {
@@ -27,12 +39,13 @@ struct bootstrap_rules {
 
 struct bootstrap_result {
 	double mean;           /* sum of bits over sum of symbols */
-	double standard_error; /* of it, after the guard */
+	double standard_error; /* of it, less the excess, after the guard */
 	bool known;            /* an interval; otherwise reason says why not */
 	double low, high;      /* low <= mean <= high */
 	size_t block_length;   /* automatic, in blocks */
 	double effective_blocks; /* blocks / block_length, after the guard;
 				    also on a refusal */
+	size_t start_up;         /* blocks left out of the spread */
 	double lag1;             /* of 100 batch means, bias-corrected */
 	bool guarded;            /* lag1 > .17: the error was widened */
 	bool drifts;             /* see resample/batches.h */

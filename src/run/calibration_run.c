@@ -14,6 +14,7 @@
 struct batch {
 	const struct calibration_rules *rules;
 	struct sample_rules sample; /* but for its seed */
+	size_t codes; /* samples that the slow codes run on: the first ones */
 	struct trial *trials;
 	pthread_mutex_t lock;
 	enum status status; /* the first failure */
@@ -64,6 +65,7 @@ static void measure_one(void *context, size_t i)
 		return;
 	/* Samples of one seed never meet those of another. */
 	sample.seed = (batch->rules->seed << 32) + i;
+	sample.codes = i < batch->codes;
 	status = sample_measure(&sample, &batch->trials[i], &why);
 	if (status != STATUS_OK && !why.text[0])
 		(void)reason_give(&why, status, "%s", status_words(status));
@@ -160,7 +162,9 @@ static enum status run_case(struct batch *batch, size_t length,
 		.symbols = rules->symbols[length],
 		.order = subject.order,
 		.orders = rules->orders,
+		.gap = rules->gap[length],
 	};
+	batch->codes = rules->codes[length];
 	if (status == STATUS_OK)
 		status =
 			run_samples(batch, rules->runs[length], &subject, made);

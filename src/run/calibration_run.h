@@ -14,6 +14,9 @@ struct calibration_rules {
 	size_t runs[CALIBRATION_LENGTHS_MAX]; /* at least 2 */
 	/* Sources with fewer symbols are left out at this length. */
 	unsigned alphabet_least[CALIBRATION_LENGTHS_MAX];
+	/* Of the samples of a source, so many are given to the slow codes. */
+	size_t codes[CALIBRATION_LENGTHS_MAX];
+	bool gap[CALIBRATION_LENGTHS_MAX]; /* calibrate the gap of zlib 9 */
 	size_t length_count;
 	const char *source; /* only this one; NULL: all frozen ones */
 	unsigned orders;    /* K */

@@ -11,14 +11,10 @@
 /* Draws of each bootstrap, and its confidence: the survey's own. */
 static const struct analysis_rules interval_rules = {1999, 0.95};
 
-#define GAP_SYMBOLS_MIN 262144
-
-/*
- * Rows that are run. ctw and mix would take more time than all else together,
- * and on these sources the cross-fit is the shorter of the upper edges.
- */
+/* Rows that are always run; the slow codes are those of gap/trial.h. */
 static const char *const row_names[] = {"ngram", "crossfit", "dirichlet"};
 #define ROW_COUNT (sizeof(row_names) / sizeof(row_names[0]))
+#define CODES_MOST 4
 
 /* Everything made of one sample; released whole. */
 struct sample {
@@ -72,7 +68,7 @@ static enum status describe(const struct sample_rules *rules,
 	TRY(memory_new(cuts->blocks, sizeof(uint64_t), &fact->block_symbols));
 	for (size_t i = 0; i < cuts->blocks; i++)
 		fact->block_symbols[i] = cuts->symbol[i + 1] - cuts->symbol[i];
-	TRY(memory_new_zeroed(ROW_COUNT, sizeof(*fact->methods),
+	TRY(memory_new_zeroed(ROW_COUNT + CODES_MOST, sizeof(*fact->methods),
 			      &fact->methods));
 	return memory_new_zeroed(1, sizeof(*fact->cells), &fact->cells);
 }
@@ -101,19 +97,17 @@ static enum status measure_row(const struct sample_rules *rules,
 	return STATUS_OK;
 }
 
-/*
- * The codec whose gap is calibrated. On shorter samples flushing its blocks
- * costs far over what an interval allows, so that nothing would be learnt.
- */
+/* The codec whose gap is calibrated. */
 static enum status measure_gap(struct sample *sample, struct reason *why)
 {
 	struct cell_fact *cell = sample->fact.cells;
 	const struct codec *codec = codec_find("zlib");
+	const struct setting_words words = {.level = "9"};
 	struct codec_setting setting;
 
-	if (!codec || sample->sequence.n < GAP_SYMBOLS_MIN)
+	if (!codec)
 		return STATUS_OK;
-	TRY(codec->parse("9", &setting, why));
+	TRY(setting_parse(codec, &words, &setting, why));
 	TRY(cell_measure(codec, &setting, 0, &sample->sequence, &sample->cuts,
 			 &cell->facts, why));
 	sample->fact.cell_count = 1;
@@ -124,6 +118,8 @@ static enum status measure(const struct sample_rules *rules,
 			   struct sample *sample, struct trial *trial,
 			   struct reason *why)
 {
+	size_t quick;
+
 	TRY(draw(rules, sample, why));
 	TRY(describe(rules, sample));
 	for (size_t i = 0; i < ROW_COUNT; i++) {
@@ -132,8 +128,16 @@ static enum status measure(const struct sample_rules *rules,
 		if (row)
 			TRY(measure_row(rules, sample, row, why));
 	}
-	TRY(measure_gap(sample, why));
-	return trial_find(&sample->fact, rules->seed, &interval_rules,
+	quick = sample->fact.method_count;
+	for (size_t i = 0; rules->codes && trial_codes[i]; i++) {
+		const struct estimator *row = estimator_find(trial_codes[i]);
+
+		if (row)
+			TRY(measure_row(rules, sample, row, why));
+	}
+	if (rules->gap)
+		TRY(measure_gap(sample, why));
+	return trial_find(&sample->fact, quick, rules->seed, &interval_rules,
 			  rules->order, trial);
 }
 

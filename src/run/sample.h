@@ -12,11 +12,14 @@ struct sample_rules {
 	uint64_t seed;
 	unsigned orders; /* K counted */
 	unsigned order;  /* at which estimators are read */
+	bool codes;      /* run the slow codes too (gap/trial.h) */
+	bool gap;        /* run zlib 9 */
 };
 
 /*
- * Draws the sample, runs ngram, crossfit, the quick code rows and zlib 9 on it
- * and reads off what they show. A row that declines is left out.
+ * Draws the sample, runs ngram, crossfit, the quick code rows and what else is
+ * asked for on it and reads off what they show. A row that declines is left
+ * out.
  */
 MUST_USE enum status sample_measure(const struct sample_rules *rules,
 				    struct trial *trial, struct reason *why);

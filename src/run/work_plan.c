@@ -85,8 +85,8 @@ static bool row_wanted(const struct estimator *row,
 	return row->deep ? selection->deep : !selection->estimators.count;
 }
 
-/* The page sizes of the cells, each once, in order of size. */
-static size_t page_sizes(const struct plan *plan,
+/* Page sizes of the cells, or of those with dictionaries; each once, in order. */
+static size_t page_sizes(const struct plan *plan, bool taught,
 			 size_t pages[PLACES_A_ROW - 1])
 {
 	size_t count = 0, last = 0;
@@ -97,6 +97,9 @@ static size_t page_sizes(const struct plan *plan,
 		for (size_t i = 0; i < plan->cell_count; i++) {
 			size_t page = plan->cells[i].page_bytes;
 
+			if (taught &&
+			    !plan->cells[i].setting.dictionary_bytes)
+				continue;
 			if (page > last && page < next)
 				next = page;
 		}
@@ -120,8 +123,9 @@ static void add_row(struct plan *plan, size_t group, size_t row,
 static MUST_USE enum status choose_rows(struct plan *plan,
 					const struct selection *selection)
 {
-	size_t pages[PLACES_A_ROW - 1];
-	size_t page_count = page_sizes(plan, pages), rows = 0;
+	size_t pages[PLACES_A_ROW - 1], taught[PLACES_A_ROW - 1];
+	size_t page_count = page_sizes(plan, false, pages), rows = 0;
+	size_t taught_count = page_sizes(plan, true, taught);
 
 	while (estimators[rows])
 		rows++;
@@ -133,6 +137,10 @@ static MUST_USE enum status choose_rows(struct plan *plan,
 		const struct estimator *row = estimators[i];
 
 		if (!row_wanted(row, selection))
+			continue;
+		for (size_t j = 0; row->warm && j < taught_count; j++)
+			add_row(plan, plan->rows_count++, i, j + 1, taught[j]);
+		if (row->warm)
 			continue;
 		if (row->needs_suffix) {
 			add_row(plan, 0, i, 0, 0);

@@ -91,12 +91,14 @@ static void judge_row(const struct trial *trials, size_t count, size_t r,
 	size_t known;
 	double mean = mean_estimate(trials, count, r, &known);
 	size_t told = 0, own = 0, truth = 0, trusted = 0, trusted_truth = 0;
+	size_t asked = 0;
 
 	memcpy(row->name, trials[0].rows[r].name, sizeof(row->name));
 	for (size_t i = 0; i < count; i++) {
 		const struct trial_row *run = &trials[i].rows[r];
 		bool hit;
 
+		asked += !run->skipped;
 		if (!run->has_interval)
 			continue;
 		own += covers(run->low, run->high, mean);
@@ -111,7 +113,7 @@ static void judge_row(const struct trial *trials, size_t count, size_t r,
 	row->own_mean = share(own, told);
 	row->true_rate = share(truth, told);
 	row->trusted_rate = share(trusted_truth, trusted);
-	row->told = share(told, count);
+	row->told = share(told, asked);
 	row->width = median_of(scratch, told);
 	judge_errors(trials, count, r, known_rate, row);
 }
@@ -146,6 +148,60 @@ static void judge_bracket(const struct trial *trials, size_t count,
 	made->bracket_width = median_of(scratch, wide);
 }
 
+/* with: the brackets with slow codes; else the plain ones, same samples. */
+static struct trial_bracket bracket_of(const struct trial *run, bool with)
+{
+	if (with)
+		return run->with_codes;
+	return (struct trial_bracket){run->bracket_known, run->open_below,
+				      run->bracket_low, run->bracket_high};
+}
+
+static void judge_codes(const struct trial *trials, size_t count, bool with,
+			double *scratch, struct calibration_case *made)
+{
+	struct calibration_bracket *judged =
+		with ? &made->with_codes : &made->without_codes;
+	double rate = made->subject.known_rate;
+	size_t told = 0, open = 0, above = 0, below = 0, wide = 0;
+
+	for (size_t i = 0; i < count; i++) {
+		struct trial_bracket bracket = bracket_of(&trials[i], with);
+
+		if (!trials[i].codes_ran || !bracket.known)
+			continue;
+		told++;
+		open += bracket.open_below;
+		above += rate > bracket.high + 1e-9;
+		below += rate < bracket.low - 1e-9;
+		if (!bracket.open_below)
+			scratch[wide++] =
+				(bracket.high - bracket.low) / fmax(rate, 1e-9);
+	}
+	judged->covers = share(told - above - below, told);
+	judged->open_below = share(open, told);
+	judged->above = share(above, told);
+	judged->below = share(below, told);
+	judged->width = median_of(scratch, wide);
+}
+
+static void judge_narrowing(const struct trial *trials, size_t count,
+			    double *scratch, struct calibration_case *made)
+{
+	size_t both = 0;
+
+	for (size_t i = 0; i < count; i++) {
+		struct trial_bracket with = bracket_of(&trials[i], true);
+		struct trial_bracket plain = bracket_of(&trials[i], false);
+
+		if (with.known && plain.known && !with.open_below &&
+		    !plain.open_below && plain.high > plain.low)
+			scratch[both++] = (with.high - with.low) /
+					  (plain.high - plain.low);
+	}
+	made->codes_narrow = median_of(scratch, both);
+}
+
 static void judge_drift(const struct trial *trials, size_t count,
 			struct calibration_case *made)
 {
@@ -156,6 +212,33 @@ static void judge_drift(const struct trial *trials, size_t count,
 		drifts += trials[i].drift_known && trials[i].drifts;
 	}
 	made->drifts = share(drifts, known);
+}
+
+/* Normal quantile of the intervals' 95%. */
+#define REACH_95 1.959964
+
+static void judge_gap_need(const struct trial *trials, size_t count,
+			   double mean, double *scratch,
+			   struct calibration_case *made)
+{
+	struct sum squares = {0};
+	size_t told = 0;
+	double spread;
+
+	for (size_t i = 0; i < count; i++) {
+		double off = trials[i].gap - mean;
+
+		if (!trials[i].gap_known)
+			continue;
+		sum_add(&squares, off * off);
+		scratch[told++] = trials[i].gap_high - trials[i].gap_low;
+	}
+	if (told < 2)
+		return;
+	spread = sqrt(sum_value(&squares) / (double)(told - 1));
+	if (spread > 0)
+		made->gap_width_by_need = median_of(scratch, told).value /
+					  (2 * REACH_95 * spread);
 }
 
 static void judge_gap(const struct trial *trials, size_t count, double *scratch,
@@ -186,6 +269,7 @@ static void judge_gap(const struct trial *trials, size_t count, double *scratch,
 	}
 	made->gap = share(hits, told);
 	made->gap_width_ratio = median_of(scratch, told);
+	judge_gap_need(trials, count, mean, scratch, made);
 }
 
 enum status calibration_judge(const struct calibration_subject *subject,
@@ -200,6 +284,9 @@ enum status calibration_judge(const struct calibration_subject *subject,
 	for (size_t r = 0; r < judged.row_count; r++)
 		judge_row(trials, count, r, subject, scratch, &judged.rows[r]);
 	judge_bracket(trials, count, scratch, &judged);
+	judge_codes(trials, count, true, scratch, &judged);
+	judge_codes(trials, count, false, scratch, &judged);
+	judge_narrowing(trials, count, scratch, &judged);
 	judge_drift(trials, count, &judged);
 	judge_gap(trials, count, scratch, &judged);
 	memory_free(scratch);

@@ -41,6 +41,13 @@ struct calibration_subject {
 	double known_rate; /* bits per symbol */
 };
 
+/* Brackets of some of the samples. */
+struct calibration_bracket {
+	struct proportion covers; /* of the brackets given */
+	struct proportion open_below, above, below;
+	struct measured width; /* median, share of the rate; those not open */
+};
+
 struct calibration_case {
 	struct calibration_subject subject;
 	size_t runs;
@@ -52,8 +59,15 @@ struct calibration_case {
 					   it; of the brackets given */
 	struct measured bracket_width;  /* median, share of the rate; brackets
 					 that  are not open below */
-	struct proportion gap; /* paired interval covers the mean gap */
+	/* Of the samples that mix and ctw ran on: the bracket with them among
+	 * the upper edges, and without. No trials: they ran on none. */
+	struct calibration_bracket with_codes, without_codes;
+	struct measured codes_narrow; /* median of width with over without */
+	struct proportion gap;        /* paired interval covers the mean gap */
 	struct measured gap_width_ratio; /* median of paired over unpaired */
+	/* Median of the paired width over 2 x 1.96 times how the gap really
+	 * scatters from sample to sample: 1 is as wide as need be. */
+	double gap_width_by_need;
 };
 
 /*
@@ -79,13 +93,14 @@ struct calibration_goal {
 };
 
 /* At each length, at most so many. */
-#define CALIBRATION_GOALS 12
+#define CALIBRATION_GOALS 14
 
 /*
  * Judges the cases of one length against the promises; goals has room for
  * CALIBRATION_GOALS; returns how many the cases speak to. Coverage of own
- * means, averaged over plug-in and crossfit, is met where its Wilson interval
- * meets the range, all else by value. Pure.
+ * means, averaged over plug-in and crossfit, and of the rate by the worst
+ * source are met where their Wilson interval meets the range, all else by
+ * value. Nothing is said of worst sources of fewer than 100 runs. Pure.
  */
 size_t calibration_goals(const struct calibration_case *cases, size_t count,
 			 struct calibration_goal *goals);

@@ -36,7 +36,7 @@ static double seconds(void)
 static int measure(double phi, const char *what)
 {
 	const struct bootstrap_rules rules = {2000, .95, 1, "bench"};
-	const struct block_series series = {bits, symbols, BLOCKS};
+	const struct block_series series = {bits, symbols, BLOCKS, 0, false};
 	struct bootstrap *bootstrap;
 	struct bootstrap_result result = {0};
 	double spent = 0, start;

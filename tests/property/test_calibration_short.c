@@ -4,14 +4,18 @@
 
 #include "support/near.h"
 
+#include <math.h>
 #include <string.h>
 
-static struct calibration run(const char *source, uint64_t symbols, size_t runs,
-			      unsigned jobs)
+/* With slow codes on so many samples; longer ones with the gap of zlib. */
+static struct calibration run_codes(const char *source, uint64_t symbols,
+				    size_t runs, unsigned jobs, size_t codes)
 {
 	const struct calibration_rules rules = {
 		.symbols = {symbols},
 		.runs = {runs},
+		.codes = {codes},
+		.gap = {symbols > 200000},
 		.length_count = 1,
 		.source = source,
 		.orders = 16,
@@ -23,6 +27,12 @@ static struct calibration run(const char *source, uint64_t symbols, size_t runs,
 	assert_int_equal(calibration_run(&rules, &made, NULL), STATUS_OK);
 	assert_int_equal(made.case_count, 1);
 	return made;
+}
+
+static struct calibration run(const char *source, uint64_t symbols, size_t runs,
+			      unsigned jobs)
+{
+	return run_codes(source, symbols, runs, jobs, 0);
 }
 
 /* Nominal .95; at 60 runs Wilson's 99% interval reaches from .83 to .99. */
@@ -45,6 +55,84 @@ static void coverage_is_not_refuted(void **state)
 		assert_true(one->drifts.low <= .05);
 		calibration_release(&made);
 	}
+}
+
+/* Median width over what the scatter of the estimates asks for. */
+static double width_by_need(const struct calibration_row *row)
+{
+	double variance = row->rmse.value * row->rmse.value -
+			  row->bias.value * row->bias.value;
+
+	return row->width.value / (2 * 1.959964 * sqrt(variance));
+}
+
+/*
+ * Where all symbols are alike, an estimate moves by chi-square terms alone:
+ * n H has variance (K - 1) / 2 (Basharin 1959), the losses spread by K - 1.
+ * The error of a scatter of 150 samples is 6%.
+ */
+static void intervals_on_even_symbols_are_no_wider(void **state)
+{
+	struct calibration made = run("uniform-201", 10000, 150, 1);
+	const struct calibration_case *one = &made.cases[0];
+
+	(void)state;
+	for (size_t r = 0; r < 4; r++) {
+		double ratio = width_by_need(&one->rows[r]);
+
+		print_message("%s: width by need %.3f\n", one->rows[r].name,
+			      ratio);
+		assert_near(ratio, 1, .18);
+	}
+	calibration_release(&made);
+}
+
+/* zlib fills its window first: that is no scatter from sample to sample. */
+static void a_paired_gap_is_as_wide_as_it_scatters(void **state)
+{
+	struct calibration made = run("sparse-order-2", 262144, 16, 2);
+	const struct calibration_case *one = &made.cases[0];
+
+	(void)state;
+	print_message("%zu gaps, width by need %.3f\n", one->gap.trials,
+		      one->gap_width_by_need);
+	assert_true(one->gap.trials >= 13);
+	/* The scatter of 16 is known to 18%. */
+	assert_near(one->gap_width_by_need, 1, .5);
+	assert_true(one->gap.high >= .92);
+	calibration_release(&made);
+}
+
+/* A regime lasts as long as a block: blocks alone find 8 of 10. */
+static void regimes_inside_blocks_are_found(void **state)
+{
+	struct calibration made = run("regimes-bits", 100000, 25, 1);
+	struct calibration still = run("noisy-long", 100000, 25, 1);
+
+	(void)state;
+	assert_int_equal(made.cases[0].drifts.hits,
+			 made.cases[0].drifts.trials);
+	assert_true(still.cases[0].drifts.value <= .12);
+	calibration_release(&made);
+	calibration_release(&still);
+}
+
+/* One more code can only lower the upper edge. */
+static void codes_never_widen_the_bracket(void **state)
+{
+	struct calibration made = run_codes("noisy-long", 10000, 12, 1, 6);
+	const struct calibration_case *one = &made.cases[0];
+
+	(void)state;
+	assert_true(one->with_codes.covers.trials >= 3);
+	assert_true(one->with_codes.covers.trials <= 6);
+	assert_true(one->with_codes.covers.trials ==
+		    one->without_codes.covers.trials);
+	assert_true(one->codes_narrow.value > 0);
+	assert_true(one->codes_narrow.value <= 1 + 1e-12);
+	assert_string_equal(one->rows[one->row_count - 2].name, "mix");
+	assert_int_equal(one->rows[one->row_count - 2].told.trials, 6);
+	calibration_release(&made);
 }
 
 static void slow_regimes_are_found(void **state)
@@ -143,6 +231,10 @@ int main(void)
 {
 	const struct CMUnitTest tests[] = {
 		cmocka_unit_test(coverage_is_not_refuted),
+		cmocka_unit_test(intervals_on_even_symbols_are_no_wider),
+		cmocka_unit_test(a_paired_gap_is_as_wide_as_it_scatters),
+		cmocka_unit_test(regimes_inside_blocks_are_found),
+		cmocka_unit_test(codes_never_widen_the_bracket),
 		cmocka_unit_test(slow_regimes_are_found),
 		cmocka_unit_test(more_data_narrows_the_bracket),
 		cmocka_unit_test(jobs_change_nothing),

@@ -181,10 +181,11 @@ static double chain_error(double a, double b, unsigned runs, double *mean)
 				at ^= leaves;
 			}
 		}
-		assert_int_equal(bootstrap_interval(bootstrap,
-						    &(struct block_series){
-							    bits, symbols, 100},
-						    &result),
+		assert_int_equal(bootstrap_interval(
+					 bootstrap,
+					 &(struct block_series){bits, symbols,
+								100, 0, false},
+					 &result),
 				 STATUS_OK);
 		squares += result.standard_error * result.standard_error;
 		first += result.mean;

@@ -40,7 +40,7 @@ struct findings coded_findings(struct coded_run run,
 		.threads = 1,
 	};
 	struct reason why = {""};
-	struct findings findings;
+	struct findings findings = {0};
 	enum status status = STATUS_OK;
 
 	assert_non_null(row);

@@ -140,6 +140,21 @@ static void unseen_grams_do_not_widen_it(void **state)
 	assert_near(row.low, .98, 1e-6);
 }
 
+/* Order 3 won nothing; but unseen grams of order 4 cannot rule out 1%. */
+static void unseen_grams_leave_a_percent(void **state)
+{
+	struct survey survey;
+	struct bracket_row row;
+
+	(void)state;
+	build(&survey, fits, 0);
+	make_order_4_unseen(&survey);
+	row = bracket_of(&survey);
+	assert_true(row.known);
+	assert_int_equal(row.order, 3);
+	assert_near(row.low, .99, 1e-6);
+}
+
 /* Seen well, the same fall of h_4 is believed. */
 static void seen_grams_do(void **state)
 {
@@ -185,6 +200,26 @@ static void drifting_blocks_are_not_calibrated(void **state)
 			(i / 4 % 2 ? 1 : -1) * (int64_t)(1 << 16) * 300;
 	row = bracket_of(&survey);
 	assert_true(!row.known || row.not_calibrated);
+}
+
+/* Blocks that are still, in which parts hang together: .3 of 400. */
+static void drift_inside_blocks_is_flagged(void **state)
+{
+	(void)state;
+	for (int ppm = 200000; ppm <= 300000; ppm += 100000) {
+		struct survey survey;
+		struct findings *ngram;
+		struct bracket_row row;
+
+		build(&survey, fits, .01);
+		ngram = &survey.corpora[0].methods[0].findings;
+		findings_note(ngram, "lag1_parts", 400);
+		findings_note(ngram, "lag1_ppm_3", ppm);
+		row = bracket_of(&survey);
+		assert_true(row.known);
+		assert_int_equal(row.order, 3);
+		assert_int_equal(row.not_calibrated, ppm > 250000);
+	}
 }
 
 static void refusals_say_what_would_do(void **state)
@@ -252,9 +287,11 @@ int main(void)
 		cmocka_unit_test(the_lower_edge_lies_w_below),
 		cmocka_unit_test(growth_between_halves_lowers_it),
 		cmocka_unit_test(unseen_grams_do_not_widen_it),
+		cmocka_unit_test(unseen_grams_leave_a_percent),
 		cmocka_unit_test(seen_grams_do),
 		cmocka_unit_test(a_code_below_refutes_it),
 		cmocka_unit_test(drifting_blocks_are_not_calibrated),
+		cmocka_unit_test(drift_inside_blocks_is_flagged),
 		cmocka_unit_test(refusals_say_what_would_do),
 		cmocka_unit_test(one_symbol),
 	};

@@ -23,6 +23,7 @@ static struct calibration_case case_of(uint64_t symbols, size_t hits)
 	(void)snprintf(made.rows[0].name, TRIAL_NAME_BYTES, "crossfit");
 	made.rows[0].bias = (struct measured){.0057206942, .0028603471};
 	made.rows[0].own_mean = proportion_of(hits, 400, .99);
+	made.rows[0].told = proportion_of(400, 400, .99);
 	made.bracket = proportion_of(hits, 400, .99);
 	made.bracket_width.value = .0875;
 	return made;
@@ -65,6 +66,9 @@ static void paper_names_lengths_and_figures(void **state)
 	assert_non_null(strstr(text, "0.500"));
 	assert_non_null(strstr(text, "0.950"));
 	assert_non_null(strstr(text, "8.75"));
+	/* Nothing was said of slow codes and gaps. */
+	assert_null(strstr(text, "narrower"));
+	assert_null(strstr(text, "unpaired"));
 	free(text);
 	text = written("markdown", 1);
 	assert_non_null(strstr(text, "# Calibration"));
