@@ -1,7 +1,8 @@
 /*
  * Code length and CPU of mix and mix-deep beside xz 9e on real corpora.
  *
- * usage: bench_mix [ROW [CORPUS ...]], ROW "mix", "mix-deep" or "both". The
+ * usage: bench_mix [ROW [CORPUS ...]], ROW "mix", "mix-deep", "pair" (what a
+ * second thread gains of wall time) or "both", which is all three. The
  * corpora lie in the folder RATEFLOOR_CORPORA, or corpora/fetched; absent ones
  * are passed over with a line.
  */
@@ -11,6 +12,7 @@
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
+#include <sys/resource.h>
 #include <time.h>
 
 /* Bits a byte that each row is to stay below (asked for with the rows). */
@@ -49,7 +51,7 @@ static const struct wanted table[] = {
 #define DEEP_ROW 8.0
 
 struct result {
-	double bits_per_byte, seconds;
+	double bits_per_byte, seconds, wall;
 };
 
 static double cpu_seconds(void)
@@ -57,6 +59,14 @@ static double cpu_seconds(void)
 	struct timespec now;
 
 	clock_gettime(CLOCK_PROCESS_CPUTIME_ID, &now);
+	return (double)now.tv_sec + (double)now.tv_nsec * 1e-9;
+}
+
+static double wall_seconds(void)
+{
+	struct timespec now;
+
+	clock_gettime(CLOCK_MONOTONIC, &now);
 	return (double)now.tv_sec + (double)now.tv_nsec * 1e-9;
 }
 
@@ -90,7 +100,7 @@ static struct result run_xz(struct slice bytes)
 	size_t room = lzma_stream_buffer_bound(bytes.length), length = 0;
 	uint8_t *out = malloc(room);
 	double start = cpu_seconds();
-	struct result result = {0, 0};
+	struct result result = {0, 0, 0};
 
 	if (out &&
 	    lzma_easy_buffer_encode(9 | LZMA_PRESET_EXTREME, LZMA_CHECK_CRC64,
@@ -104,7 +114,7 @@ static struct result run_xz(struct slice bytes)
 }
 
 static struct result run_row(const char *row, struct slice bytes,
-			     enum symbol_kind kind)
+			     enum symbol_kind kind, unsigned threads)
 {
 	struct sequence sequence = {.kind = kind,
 				    .canonical = bytes.bytes,
@@ -113,11 +123,11 @@ static struct result run_row(const char *row, struct slice bytes,
 				    .alphabet = 256};
 	struct cuts cuts = {0};
 	struct estimate_input input = {
-		.sequence = &sequence, .cuts = &cuts, .threads = 1};
+		.sequence = &sequence, .cuts = &cuts, .threads = threads};
 	struct findings findings;
 	struct reason why;
-	double start = cpu_seconds();
-	struct result result = {0, 0};
+	double start = cpu_seconds(), wall = wall_seconds();
+	struct result result = {0, 0, 0};
 
 	if (estimator_find(row)->measure(&input, &findings, &why) !=
 	    STATUS_OK) {
@@ -125,6 +135,7 @@ static struct result run_row(const char *row, struct slice bytes,
 		return result;
 	}
 	result.seconds = cpu_seconds() - start;
+	result.wall = wall_seconds() - wall;
 	result.bits_per_byte =
 		bits_from_q16(findings.series[0].costs.headline_q16) /
 		(double)bytes.length;
@@ -162,7 +173,7 @@ static void print_table(const char *row, bool deep, int count, char **names)
 			continue;
 		}
 		xz = run_xz(bytes);
-		own = run_row(row, bytes, table[i].kind);
+		own = run_row(row, bytes, table[i].kind, 1);
 		times = own.seconds / xz.seconds;
 		printf("%-24s %9zu %8.4f %8.4f %8.3f%s %6.2f%s %7.3f\n",
 		       table[i].name, bytes.length, xz.bits_per_byte,
@@ -183,14 +194,74 @@ static void print_table(const char *row, bool deep, int count, char **names)
 		       worst, deep ? DEEP_ROW : MIX_ROW);
 }
 
+/* The most the process has held, in MiB. */
+static double peak_mib(void)
+{
+	struct rusage usage;
+
+	getrusage(RUSAGE_SELF, &usage);
+	return (double)usage.ru_maxrss / 1024;
+}
+
+#define PAIR_GAIN 1.6
+
+/* One thread against two, by wall; the least of three times each. */
+static void print_pair(int count, char **names)
+{
+	const char *folder = getenv("RATEFLOOR_CORPORA");
+	double alone = 0, both = 0;
+
+	for (size_t i = 0; i < sizeof(table) / sizeof(*table); i++) {
+		double least[2] = {1e9, 1e9}, bits[2] = {0, 0};
+		struct slice bytes;
+
+		/* Nucleotides have a predictor of their own, on one thread. */
+		if (!chosen(table[i].name, count, names) ||
+		    table[i].kind == SYMBOL_NUCLEOTIDE)
+			continue;
+		bytes = read_file(folder ? folder : "corpora/fetched",
+				  table[i].name);
+		if (!bytes.length)
+			continue;
+		for (unsigned turn = 0; turn < 6; turn++) {
+			struct result own = run_row("mix", bytes, table[i].kind,
+						    1 + turn % 2);
+
+			if (own.wall < least[turn % 2])
+				least[turn % 2] = own.wall;
+			bits[turn % 2] = own.bits_per_byte;
+		}
+		printf("%-24s two threads %.2f times as fast%s\n",
+		       table[i].name, least[0] / least[1],
+		       bits[0] == bits[1] ? "" : ", OTHER LENGTH");
+		fflush(stdout);
+		alone += least[0];
+		both += least[1];
+		free((void *)(uintptr_t)bytes.bytes);
+	}
+	if (both > 0)
+		printf("two threads: %.2f times as fast (at least %.1f)\n\n",
+		       alone / both, PAIR_GAIN);
+}
+
 int main(int argc, char **argv)
 {
 	const char *row = argc > 1 ? argv[1] : "both";
 	int count = argc > 2 ? argc - 2 : 0;
 
-	if (strcmp(row, "mix-deep") != 0)
+	bool all = strcmp(row, "both") == 0;
+
+	if (all || strcmp(row, "mix") == 0) {
 		print_table("mix", false, count, argv + 2);
-	if (strcmp(row, "mix") != 0)
+		printf("peak memory, corpora and xz included: %.0f MiB\n\n",
+		       peak_mib());
+	}
+	if (all || strcmp(row, "pair") == 0)
+		print_pair(count, argv + 2);
+	if (all || strcmp(row, "mix-deep") == 0) {
 		print_table("mix-deep", true, count, argv + 2);
+		printf("peak memory, corpora and xz included: %.0f MiB\n",
+		       peak_mib());
+	}
 	return 0;
 }
