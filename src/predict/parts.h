@@ -125,8 +125,8 @@ struct predictor {
 	bool fresh;           /* lines are zero as they came */
 	unsigned lines_log2;
 	uint32_t trend[CONTEXTS_MAX][256]; /* by bit history */
-	uint16_t order0[256];
-	uint16_t *order1; /* owned; 65536 */
+	uint32_t order0[256];              /* cells */
+	uint16_t *order1;                  /* owned; 65536 */
 	uint32_t match_cell[2][MATCH_STEPS];
 	uint32_t lane_cell[MATCH_STEPS][256];
 	uint32_t lane_row[LANE_CELLS - 1][LANE_ROWS];

@@ -208,10 +208,12 @@ ALWAYS_INLINE void run_common(struct predictor *p, const struct chunk *chunk,
 			unsigned partial = (byte | 256) >> (8 - bit);
 			unsigned value = byte >> (7 - bit) & 1;
 
-			inputs[0] = stretch[p->order0[partial] >> 4];
+			inputs[0] = stretch[p->order0[partial] >> 20];
 			inputs[1] = stretch[order1[partial] >> 4];
 			inputs[5] = 256;
-			direct_update(&p->order0[partial], value, 5);
+			p->order0[partial] = cell_update(&p->mixer.tables,
+							 p->order0[partial],
+							 value, ORDER0_LIMIT);
 			direct_update(&order1[partial], value, 5);
 			inputs += width;
 		}

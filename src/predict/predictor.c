@@ -138,7 +138,7 @@ void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 		memcpy(predictor->trend[i], tables->start,
 		       sizeof(tables->start));
 	for (unsigned i = 0; i < 256; i++)
-		predictor->order0[i] = 32768;
+		predictor->order0[i] = cell_half();
 	for (unsigned i = 0; i < 65536; i++)
 		predictor->order1[i] = 32768;
 	for (unsigned i = 0; i < MATCH_STEPS; i++) {
