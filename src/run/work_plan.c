@@ -85,7 +85,8 @@ static bool row_wanted(const struct estimator *row,
 	return row->deep ? selection->deep : !selection->estimators.count;
 }
 
-/* Page sizes of the cells, or of those with dictionaries; each once, in order. */
+/* Page sizes of the cells, or of those with dictionaries; each once, in order.
+ */
 static size_t page_sizes(const struct plan *plan, bool taught,
 			 size_t pages[PLACES_A_ROW - 1])
 {
@@ -97,8 +98,7 @@ static size_t page_sizes(const struct plan *plan, bool taught,
 		for (size_t i = 0; i < plan->cell_count; i++) {
 			size_t page = plan->cells[i].page_bytes;
 
-			if (taught &&
-			    !plan->cells[i].setting.dictionary_bytes)
+			if (taught && !plan->cells[i].setting.dictionary_bytes)
 				continue;
 			if (page > last && page < next)
 				next = page;
