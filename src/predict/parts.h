@@ -74,6 +74,15 @@ struct tally {
 	uint64_t halvings;
 };
 
+/* What a mixer of a strength has, and where its steps end. */
+static inline void mixer_shape(struct mixer *mixer, bool deep,
+			       int32_t rate_last)
+{
+	mixer->inputs = deep ? INPUTS_DEEP : INPUTS_NIGHTLY;
+	mixer->sets = deep ? SETS_DEEP : SETS_NIGHTLY;
+	mixer->rate_last = rate_last;
+}
+
 /*
  * Fresh weights and final stages: every input of even and odd number starts
  * with this weight, in 2^-14, and every set has the same say.

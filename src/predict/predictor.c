@@ -66,11 +66,8 @@ enum status predictor_new(const struct predict_plan *plan,
 		made->plan.stride = 1;
 	made->contexts = past_contexts(plan);
 	made->lines_log2 = lines_log2_for(plan);
-	made->mixer.inputs =
-		plan->strength == STRENGTH_DEEP ? INPUTS_DEEP : INPUTS_NIGHTLY;
-	made->mixer.sets =
-		plan->strength == STRENGTH_DEEP ? SETS_DEEP : SETS_NIGHTLY;
-	made->mixer.rate_last = rate_last_for(plan);
+	mixer_shape(&made->mixer, plan->strength == STRENGTH_DEEP,
+		    rate_last_for(plan));
 	assert(2 * made->contexts + COMMON <= made->mixer.inputs);
 	tables_build(&made->mixer.tables);
 	predictor_set_lanes(made, LANES_BEST);
