@@ -232,9 +232,9 @@ static MUST_USE enum status take_reply(const struct child *child,
 		return reason_give(why, STATUS_CODEC, "failed: %.*s",
 				   HOST_WORDS_BYTES, reply->words);
 	case HOST_REFUSED:
-		return reason_give(
-			why, STATUS_CODEC, "missing program: %s: %.*s",
-			child->plan->words[0], HOST_WORDS_BYTES, reply->words);
+		return reason_give(why, STATUS_CODEC, "not loaded: %s: %.*s",
+				   child->plan->words[0], HOST_WORDS_BYTES,
+				   reply->words);
 	case HOST_NO_MEMORY:
 		break;
 	}
@@ -296,6 +296,20 @@ enum status child_ask(struct child *child, const struct host_request *request,
 	status = read_reply(child, &sink, out, usage, why);
 	buffer_release(&sink);
 	return status;
+}
+
+enum status child_end(struct child *child, struct reason *why)
+{
+	struct buffer nothing;
+	struct pumping pumping = {.close_after = true, .sink = &nothing};
+
+	if (child->host < 0)
+		return reason_give(why, STATUS_CODEC, "has ended already");
+	buffer_init(&nothing, 0);
+	child_pump(child, &pumping);
+	finish(child);
+	buffer_release(&nothing);
+	return judge(child, why);
 }
 
 void child_close(struct child *child)

@@ -53,7 +53,19 @@ MUST_USE enum status child_ask(struct child *child,
 			       const struct host_request *request,
 			       struct slice input, struct buffer *out,
 			       struct child_usage *usage, struct reason *why);
+/*
+ * Lets it end by itself. STATUS_CODEC: it did not end well, or left a process
+ * running; as child_run. It is still to be closed.
+ */
+MUST_USE enum status child_end(struct child *child, struct reason *why);
 /* Ends it with all that it started; NULL is allowed. */
 void child_close(struct child *child);
+
+/*
+ * Where a program lies: its own path where it has a slash, otherwise what PATH
+ * says. False: nowhere, or the path is too long.
+ */
+#define CHILD_PATH_BYTES 4096
+bool child_find(const char *program, char path[CHILD_PATH_BYTES]);
 
 #endif

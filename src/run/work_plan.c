@@ -85,7 +85,8 @@ static bool row_wanted(const struct estimator *row,
 	return row->deep ? selection->deep : !selection->estimators.count;
 }
 
-/* Page sizes of the cells, or of those with dictionaries; each once, in order. */
+/* Page sizes of the cells, or of those with dictionaries; each once, in order.
+ */
 static size_t page_sizes(const struct plan *plan, bool taught,
 			 size_t pages[PLACES_A_ROW - 1])
 {
@@ -97,8 +98,7 @@ static size_t page_sizes(const struct plan *plan, bool taught,
 		for (size_t i = 0; i < plan->cell_count; i++) {
 			size_t page = plan->cells[i].page_bytes;
 
-			if (taught &&
-			    !plan->cells[i].setting.dictionary_bytes)
+			if (taught && !plan->cells[i].setting.dictionary_bytes)
 				continue;
 			if (page > last && page < next)
 				next = page;
@@ -279,6 +279,9 @@ enum status plan_init(struct plan *plan, const struct set *set,
 
 void plan_release(struct plan *plan)
 {
+	for (size_t i = 0; i < plan->house_count; i++)
+		house_free(plan->houses[i]);
+	memory_free(plan->houses);
 	memory_free(plan->cells);
 	memory_free(plan->rows);
 	memory_free(plan->corpora);

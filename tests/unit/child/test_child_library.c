@@ -130,7 +130,7 @@ static void test_failures_have_names(void **state)
 	fails(BROKEN, "error", "failed: error 42");
 	fails(BROKEN, "exit", "failed: exit code 5");
 	fails(RUNS, "300", "failed: a level is a run's length, 1 to 255");
-	fails("tests/support/codecs/no.so", "", "missing program");
+	fails("tests/support/codecs/no.so", "", "not loaded");
 }
 
 static void test_prints_stay_out_of_the_stream(void **state)
@@ -144,6 +144,26 @@ static void test_prints_stay_out_of_the_stream(void **state)
 			 STATUS_OK);
 	assert_int_equal(opened.out.length, 3);
 	assert_memory_equal(opened.out.bytes, "bay", 3);
+	close_object(&opened);
+}
+
+static void test_what_is_left_running(void **state)
+{
+	struct opened opened;
+
+	(void)state;
+	open_object(&opened, BROKEN, 20);
+	assert_int_equal(ask(&opened, HOST_COMPRESS, "leave",
+			     (struct slice){(const uint8_t *)"bay", 3}, 100),
+			 STATUS_OK);
+	assert_int_equal(child_end(opened.child, &opened.why), STATUS_CODEC);
+	assert_non_null(strstr(opened.why.text, "left a process running"));
+	close_object(&opened);
+	open_object(&opened, BROKEN, 20);
+	assert_int_equal(ask(&opened, HOST_COMPRESS, "",
+			     (struct slice){(const uint8_t *)"bay", 3}, 100),
+			 STATUS_OK);
+	assert_int_equal(child_end(opened.child, &opened.why), STATUS_OK);
 	close_object(&opened);
 }
 
@@ -171,6 +191,7 @@ int main(void)
 		cmocka_unit_test(test_large_requests),
 		cmocka_unit_test(test_failures_have_names),
 		cmocka_unit_test(test_prints_stay_out_of_the_stream),
+		cmocka_unit_test(test_what_is_left_running),
 		cmocka_unit_test(test_no_room),
 	};
 
