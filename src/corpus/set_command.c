@@ -206,7 +206,8 @@ enum status own_codec_finish(struct set_codec *codec, const char *folder,
 		return finish_commands(codec, folder, outside, why);
 	if (!*codec->library)
 		return STATUS_OK;
-	status = command_path(folder, outside, &codec->library, why);
+	TRY(value_text(codec->library, &codec->library_path));
+	status = command_path(folder, outside, &codec->library_path, why);
 	if (status != STATUS_OK)
 		reason_prefix(why, "library: ");
 	return status;

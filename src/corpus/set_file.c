@@ -213,6 +213,7 @@ static void release_codec(struct set_codec *codec)
 	memory_free(codec->options);
 	memory_free(codec->dictionary);
 	memory_free(codec->containers);
+	memory_free(codec->library_path);
 	text_list_release(&codec->compress_words);
 	text_list_release(&codec->decompress_words);
 }
