@@ -37,7 +37,7 @@ struct estimator {
 	 * code of the corpus: a decoder of one page lives on others.
 	 */
 	bool warm;
-	double work;      /* relative CPU a byte, for progress and scheduling */
+	double work; /* relative CPU a byte, for progress and scheduling */
 	/*
 	 * Fills findings (released by the caller). STATUS_TOO_SHORT with a
 	 * reason is a normal answer; STATUS_NO_MEMORY, STATUS_CANCELLED.

@@ -25,6 +25,7 @@ static const uint8_t sparse_limit[SPARSE] = {15, 15, 6};
 /* A sparse cell: 12 bits of probability over 4 bits of count. */
 #define CELL_HALF 0x8000
 #define TREND_RATE 6
+#define REPEAT_FIRST ((UINT32_MAX / 8 * 7 & ~1023U) | 4)
 
 /* Cells of a context: a check, the first bit, and the second after either. */
 struct group {
@@ -109,8 +110,8 @@ static uint16_t *cells_of(struct sparse *sparse, uint64_t context)
 
 static unsigned group_log2(unsigned order, size_t bytes)
 {
-	unsigned log2 = 8,
-		 most = order <= DIRECT_ORDER ? 2 * order : SHARED_LOG2;
+	unsigned most = order <= DIRECT_ORDER ? 2 * order : SHARED_LOG2;
+	unsigned log2 = 8;
 
 	while (log2 < most && ((size_t)1 << log2) < 2 * bytes)
 		log2++;
@@ -143,9 +144,7 @@ enum status bases_new(const struct predict_plan *plan, struct bases **bases)
 
 	TRY(memory_new_lines(1, sizeof(*made), &made));
 	tables_build(&made->mixer.tables);
-	made->mixer.inputs = INPUTS_NIGHTLY;
-	made->mixer.sets = SETS_NIGHTLY;
-	made->mixer.rate_last = 40;
+	mixer_shape(&made->mixer, false, 40);
 	bases_set_plain(made, false);
 	status = bases_allocate(made, plan->bytes);
 	if (status != STATUS_OK) {
@@ -198,9 +197,8 @@ void bases_restart(struct bases *bases, const uint8_t *bytes)
 	}
 	for (unsigned i = 0; i < SPARSE; i++)
 		restart_sparse(&bases->sparse[i]);
-	for (unsigned i = 0; i < REPEAT_STEPS; i++)
-		bases->repeat_cell[0][i] = bases->repeat_cell[1][i] =
-			(UINT32_MAX / 8 * 7 & ~1023U) | 4;
+	for (unsigned i = 0; i < 2 * REPEAT_STEPS; i++)
+		bases->repeat_cell[i & 1][i / 2] = REPEAT_FIRST;
 	bases->bytes = bytes;
 	bases->at = 0;
 	bases->begun = false;

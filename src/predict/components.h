@@ -10,6 +10,8 @@
 #define TREND_HALF (1U << (TREND_BITS - 1))
 #define MATCH_LIMIT 1020
 #define LANE_LIMIT 255
+/* Slow, for data in which nothing but the frequencies is to be had. */
+#define ORDER0_LIMIT 255
 
 /*
  * The two inputs of a bit history: the probability of what follows it in the

@@ -49,8 +49,7 @@ static void *fill(void *argument)
 		if (at < ring->end) {
 			if (number >= RING)
 				wait_above(&ring->emptied, number - RING);
-			passes_look(p, chunk, at, ring->end);
-			passes_warm(p, chunk, 0, ring->split);
+			passes_look(p, chunk, at, ring->end, ring->split);
 			number++;
 		}
 		if (before) {
@@ -74,7 +73,8 @@ static void empty(struct ring *ring)
 		struct chunk *chunk = &ring->chunk[number % RING];
 
 		wait_above(&ring->filled, number);
-		passes_warm(p, chunk, ring->split, p->contexts);
+		for (size_t i = 0; i < chunk->count; i++)
+			warm_byte(p, chunk, i, ring->split, p->contexts);
 		passes_contexts(p, chunk, ring->split, p->contexts);
 		passes_mix(p, chunk);
 		atomic_fetch_add_explicit(&ring->emptied, 1,

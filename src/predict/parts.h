@@ -74,6 +74,15 @@ struct tally {
 	uint64_t halvings;
 };
 
+/* What a mixer of a strength has, and where its steps end. */
+static inline void mixer_shape(struct mixer *mixer, bool deep,
+			       int32_t rate_last)
+{
+	mixer->inputs = deep ? INPUTS_DEEP : INPUTS_NIGHTLY;
+	mixer->sets = deep ? SETS_DEEP : SETS_NIGHTLY;
+	mixer->rate_last = rate_last;
+}
+
 /*
  * Fresh weights and final stages: every input of even and odd number starts
  * with this weight, in 2^-14, and every set has the same say.
@@ -125,8 +134,8 @@ struct predictor {
 	bool fresh;           /* lines are zero as they came */
 	unsigned lines_log2;
 	uint32_t trend[CONTEXTS_MAX][256]; /* by bit history */
-	uint16_t order0[256];
-	uint16_t *order1; /* owned; 65536 */
+	uint32_t order0[256];              /* cells */
+	uint16_t *order1;                  /* owned; 65536 */
 	uint32_t match_cell[2][MATCH_STEPS];
 	uint32_t lane_cell[MATCH_STEPS][256];
 	uint32_t lane_row[LANE_CELLS - 1][LANE_ROWS];

@@ -20,8 +20,8 @@
 #define PAIR_LEAST 2048
 
 /* Calls for the rows of the final stages that a byte's bits go through. */
-static void warm_stages(const struct predictor *p, const struct view *view,
-			unsigned byte)
+ALWAYS_INLINE void warm_stages(const struct predictor *p,
+			       const struct view *view, unsigned byte)
 {
 	for (unsigned bit = 0; bit < 8; bit++) {
 		unsigned partial = (byte | 256) >> (8 - bit);
@@ -35,7 +35,7 @@ static void warm_stages(const struct predictor *p, const struct view *view,
 }
 
 void passes_look(struct predictor *p, struct chunk *chunk, size_t from,
-		 size_t end)
+		 size_t end, unsigned contexts)
 {
 	struct past *past = &p->past;
 	const uint8_t *bytes = past->bytes;
@@ -53,33 +53,10 @@ void passes_look(struct predictor *p, struct chunk *chunk, size_t from,
 		chunk->bytes[i] = (uint8_t)(bytes[from + i] - view->base);
 		if (from + i + WARM < end)
 			past_warm(past, bytes, from + i + WARM);
+		warm_byte(p, chunk, i, 0, contexts);
 	}
 	if (p->journal)
 		journal_lines(p->journal, p, chunk);
-}
-
-/* A byte that is likely to go by without a look into the contexts. */
-static bool in_lane(const struct chunk *chunk, size_t i)
-{
-	const struct view *view = &chunk->views[i];
-
-	return view->lane && view->expected[0] == chunk->bytes[i];
-}
-
-void passes_warm(const struct predictor *p, const struct chunk *chunk,
-		 unsigned from, unsigned to)
-{
-	for (size_t i = 0; i < chunk->count; i++) {
-		const struct view *view = &chunk->views[i];
-
-		for (unsigned k = from; k < to && !in_lane(chunk, i); k++)
-			__builtin_prefetch(
-				context_lines(p, k) +
-					(size_t)(view->hash[k] >>
-						 (32 - p->lines_log2)) *
-						LINE_BYTES,
-				1);
-	}
 }
 
 /* Decides the lanes; what is left goes bit by bit. */
@@ -231,10 +208,12 @@ ALWAYS_INLINE void run_common(struct predictor *p, const struct chunk *chunk,
 			unsigned partial = (byte | 256) >> (8 - bit);
 			unsigned value = byte >> (7 - bit) & 1;
 
-			inputs[0] = stretch[p->order0[partial] >> 4];
+			inputs[0] = stretch[p->order0[partial] >> 20];
 			inputs[1] = stretch[order1[partial] >> 4];
 			inputs[5] = 256;
-			direct_update(&p->order0[partial], value, 5);
+			p->order0[partial] = cell_update(&p->mixer.tables,
+							 p->order0[partial],
+							 value, ORDER0_LIMIT);
 			direct_update(&order1[partial], value, 5);
 			inputs += width;
 		}
@@ -276,8 +255,8 @@ void passes_contexts(struct predictor *p, struct chunk *chunk, unsigned from,
 }
 
 /* Calls for the final stages of an active byte, where there is one. */
-static void warm_active(const struct predictor *p, const struct chunk *chunk,
-			size_t i)
+ALWAYS_INLINE void warm_active(const struct predictor *p,
+			       const struct chunk *chunk, size_t i)
 {
 	if (i < chunk->actives)
 		warm_stages(p, &chunk->views[chunk->active[i]],
@@ -309,12 +288,11 @@ static void run_alone(struct predictor *p, size_t from, size_t end)
 		{.views = p->views + CHUNK, .inputs = p->chunk_inputs}};
 	unsigned turn = 0;
 
-	passes_look(p, &chunk[0], from, end);
-	passes_warm(p, &chunk[0], 0, p->contexts);
+	passes_look(p, &chunk[0], from, end, p->contexts);
 	for (size_t at = from; at < end; at += CHUNK, turn ^= 1) {
 		if (at + CHUNK < end) {
-			passes_look(p, &chunk[turn ^ 1], at + CHUNK, end);
-			passes_warm(p, &chunk[turn ^ 1], 0, p->contexts);
+			passes_look(p, &chunk[turn ^ 1], at + CHUNK, end,
+				    p->contexts);
 		}
 		passes_lanes(p, &chunk[turn]);
 		passes_contexts(p, &chunk[turn], 0, p->contexts);

@@ -66,11 +66,8 @@ enum status predictor_new(const struct predict_plan *plan,
 		made->plan.stride = 1;
 	made->contexts = past_contexts(plan);
 	made->lines_log2 = lines_log2_for(plan);
-	made->mixer.inputs =
-		plan->strength == STRENGTH_DEEP ? INPUTS_DEEP : INPUTS_NIGHTLY;
-	made->mixer.sets =
-		plan->strength == STRENGTH_DEEP ? SETS_DEEP : SETS_NIGHTLY;
-	made->mixer.rate_last = rate_last_for(plan);
+	mixer_shape(&made->mixer, plan->strength == STRENGTH_DEEP,
+		    rate_last_for(plan));
 	assert(2 * made->contexts + COMMON <= made->mixer.inputs);
 	tables_build(&made->mixer.tables);
 	predictor_set_lanes(made, LANES_BEST);
@@ -138,7 +135,7 @@ void predictor_restart(struct predictor *predictor, const uint8_t *bytes)
 		memcpy(predictor->trend[i], tables->start,
 		       sizeof(tables->start));
 	for (unsigned i = 0; i < 256; i++)
-		predictor->order0[i] = 32768;
+		predictor->order0[i] = cell_half();
 	for (unsigned i = 0; i < 65536; i++)
 		predictor->order1[i] = 32768;
 	for (unsigned i = 0; i < MATCH_STEPS; i++) {

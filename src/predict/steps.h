@@ -76,7 +76,7 @@ ALWAYS_INLINE void common_inputs(struct predictor *p, const struct view *view,
 	const struct predict_tables *tables = &p->mixer.tables;
 	int16_t second[2] = {0, 0};
 
-	inputs[0] = tables->stretch[p->order0[partial] >> 4];
+	inputs[0] = tables->stretch[p->order0[partial] >> 20];
 	inputs[1] =
 		tables->stretch[p->order1[view->last * 256U + partial] >> 4];
 	for (unsigned i = 0; i < 2; i++) {
@@ -96,7 +96,8 @@ ALWAYS_INLINE void common_update(struct predictor *p, const struct view *view,
 {
 	const struct predict_tables *tables = &p->mixer.tables;
 
-	direct_update(&p->order0[partial], value, 5);
+	p->order0[partial] =
+		cell_update(tables, p->order0[partial], value, ORDER0_LIMIT);
 	direct_update(&p->order1[view->last * 256U + partial], value, 5);
 	for (unsigned i = 0; i < 2; i++) {
 		unsigned step = match_holds(view, i, partial, bit, lane_failed);
