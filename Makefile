@@ -39,7 +39,7 @@ LIBS := $(PKG_LIBS) -lm -pthread
 
 SOURCES := $(sort $(wildcard src/*/*.c))
 OBJECTS := $(SOURCES:src/%.c=$(B)/src/%.o)
-LIB_OBJECTS := $(filter-out $(B)/src/cli/main.o,$(OBJECTS))
+LIB_OBJECTS := $(filter-out $(B)/src/cli/main.o $(B)/src/host/%,$(OBJECTS))
 
 SUPPORT := $(sort $(wildcard tests/support/*.c))
 SUPPORT_OBJECTS := $(SUPPORT:%.c=$(B)/%.o)
@@ -54,13 +54,36 @@ BENCHES := $(patsubst %.c,$(B)/%,$(sort $(wildcard tests/bench/bench_*.c)))
 .SECONDARY:
 .PHONY: all FORCE
 
-all: $(B)/ratefloor ## build the program: build/release/ratefloor
+all: $(B)/ratefloor $(B)/codec-host ## build the program: build/release/ratefloor
 
 # Objects depend on this stamp, which changes with compiler and flags only.
 $(B)/flags: FORCE
 	@mkdir -p $(@D)
 	@echo '$(CC) $(subst ','\'',$(ALL_CFLAGS))' | cmp -s - $@ || \
 		echo '$(CC) $(subst ','\'',$(ALL_CFLAGS))' > $@
+
+# Sanitizers reserve more addresses than a codec's limit allows, so what runs
+# users' codecs, and the example codecs of the tests, are built without.
+PLAIN_CFLAGS := $(filter-out $(MODE_$(MODE)),$(ALL_CFLAGS)) -O2 -g
+HOST_OBJECTS := $(patsubst src/%.c,$(B)/plain/%.o,$(sort $(wildcard src/host/*.c)))
+
+$(B)/plain/%.o: src/%.c $(B)/flags
+	@mkdir -p $(@D)
+	$(CC) $(PLAIN_CFLAGS) -Isrc -MMD -MP -c $< -o $@
+
+$(B)/codec-host: $(HOST_OBJECTS)
+	$(CC) $(PLAIN_CFLAGS) $^ -ldl -o $@
+
+CODECS := $(patsubst tests/%.c,$(B)/tests/%,$(wildcard tests/support/codecs/*_command.c)) \
+	$(patsubst tests/%.c,$(B)/tests/%.so,$(wildcard tests/support/codecs/*_library.c))
+
+$(B)/tests/support/codecs/%: tests/support/codecs/%.c $(B)/flags
+	@mkdir -p $(@D)
+	$(CC) $(PLAIN_CFLAGS) $< -o $@
+
+$(B)/tests/support/codecs/%.so: tests/support/codecs/%.c src/host/house_codec.h $(B)/flags
+	@mkdir -p $(@D)
+	$(CC) $(PLAIN_CFLAGS) -shared -fPIC -Isrc/host $< -o $@
 
 $(B)/src/%.o: src/%.c $(B)/flags
 	@mkdir -p $(@D)
@@ -91,13 +114,13 @@ $(B)/tests/faults/%: $(B)/tests/faults/%.o $(B)/tests/faults/inject.o $(SUPPORT_
 .PHONY: test faults golden asan valgrind fuzz coverage lint rooms format check bench \
 	corpora results install uninstall dist clean help
 
-test: $(B)/ratefloor $(TESTS) ## unit, property and reference tests
+test: $(B)/ratefloor $(B)/codec-host $(CODECS) $(TESTS) ## unit, property and reference tests
 	@scripts/run-tests $(B) $(TESTS)
 
 faults: $(B)/ratefloor $(FAULTS) ## every allocation fails in turn, full disk, kills
 	@scripts/run-tests $(B) $(FAULTS)
 
-golden: $(B)/ratefloor ## command lines with their expected output and exit code
+golden: $(B)/ratefloor $(B)/codec-host $(CODECS) ## command lines with their expected output and exit code
 	@tests/golden/run $(B)/ratefloor
 
 asan: ## tests and faults under the address and undefined-behaviour sanitizers
@@ -108,7 +131,7 @@ VALGRIND := valgrind --quiet --error-exitcode=9 --leak-check=full --errors-for-l
 VALGRIND_SLOW := %/test_ledger_kill %/test_bootstrap %/test_crossfit %/test_cell %/test_codepoint
 VALGRIND_TESTS := $(filter-out $(VALGRIND_SLOW),$(filter $(B)/tests/unit/% %/test_codec_framing,$(TESTS)))
 
-valgrind: $(VALGRIND_TESTS) ## the unit tests, and hostile streams, under valgrind
+valgrind: $(B)/codec-host $(CODECS) $(VALGRIND_TESTS) ## the unit tests, and hostile streams, under valgrind
 	@RUNNER="$(VALGRIND)" scripts/run-tests $(B) $(VALGRIND_TESTS)
 
 FUZZ_SECONDS ?= 60
@@ -118,7 +141,7 @@ build/fuzz/%: tests/fuzz/%.c $(SOURCES) $(SUPPORT)
 	@mkdir -p $(@D)
 	clang -std=c11 -D_POSIX_C_SOURCE=200809L -DRATEFLOOR_VERSION='"$(VERSION)"' -g -O1 \
 		-ffp-contract=off -pthread -fsanitize=fuzzer,address,undefined -Isrc -Itests $(PKG_CFLAGS) \
-		$< $(filter-out src/cli/%,$(SOURCES)) $(LIBS) -o $@
+		$< $(filter-out src/cli/% src/host/%,$(SOURCES)) $(LIBS) -o $@
 
 fuzz: $(FUZZERS) ## libFuzzer on every entry, FUZZ_SECONDS each
 	@set -e; for fuzzer in $(FUZZERS); do \
@@ -178,6 +201,9 @@ install: all ## install program, man pages and the fetch script (PREFIX, DESTDIR
 		$(DESTDIR)$(PREFIX)/libexec/ratefloor
 	install -m 755 $(B)/ratefloor $(DESTDIR)$(PREFIX)/bin/ratefloor
 	install -m 755 scripts/fetch-corpora $(DESTDIR)$(PREFIX)/libexec/ratefloor/fetch-corpora
+	install -m 755 $(B)/codec-host $(DESTDIR)$(PREFIX)/libexec/ratefloor/codec-host
+	install -d $(DESTDIR)$(PREFIX)/include/ratefloor
+	install -m 644 src/host/house_codec.h $(DESTDIR)$(PREFIX)/include/ratefloor/house_codec.h
 	$(B)/ratefloor --help=man > $(DESTDIR)$(PREFIX)/share/man/man1/ratefloor.1
 	set -e; for command in $(MAN_PAGES); do \
 		$(B)/ratefloor $$command --help=man \
@@ -186,7 +212,7 @@ install: all ## install program, man pages and the fetch script (PREFIX, DESTDIR
 uninstall: ## remove what install put there
 	rm -f $(DESTDIR)$(PREFIX)/bin/ratefloor $(DESTDIR)$(PREFIX)/share/man/man1/ratefloor.1 \
 		$(DESTDIR)$(PREFIX)/share/man/man1/ratefloor-*.1
-	rm -rf $(DESTDIR)$(PREFIX)/libexec/ratefloor
+	rm -rf $(DESTDIR)$(PREFIX)/libexec/ratefloor $(DESTDIR)$(PREFIX)/include/ratefloor
 
 dist: ## a source archive: build/ratefloor-VERSION.tar.xz
 	@mkdir -p build

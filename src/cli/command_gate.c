@@ -27,6 +27,7 @@ static bool open_set(const struct gating *gating, struct remeasure *again)
 		return false;
 	if (remeasure_init(again, gating->set_path,
 			   words_get(gating->words, "outside") != NULL,
+			   words_get(gating->words, "own-codecs") != NULL,
 			   &why) == STATUS_OK) {
 		again->quiet = quiet;
 		return true;
@@ -289,6 +290,8 @@ static const struct option_row options[] = {
 	{"survey", "ID", "this survey of the ledger; the newest by default"},
 	{"set", "FILE", "the set file; by default where the survey found it"},
 	{"outside", NULL, "corpora may lie outside the set file's folder"},
+	{"own-codecs", NULL,
+	 "codecs that the set file declares may run: they are programs"},
 	{"no-repeat", NULL,
 	 "measure nothing again: what is slow is then suspected only"},
 	{"junit", "FILE", "also write the XML that CI servers read"},

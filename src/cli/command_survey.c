@@ -1,3 +1,4 @@
+#include "cli/beside.h"
 #include "cli/commands.h"
 #include "cli/meter.h"
 #include "cli/show.h"
@@ -36,6 +37,7 @@ struct request {
 	struct selection selection;
 	struct run_rules rules;
 	char ledger[512];
+	char codec_host[BESIDE_BYTES];
 	const struct report_format *format;
 };
 
@@ -102,6 +104,10 @@ static MUST_USE enum status take_options(const struct words *words,
 	};
 	request->selection.deep = words_get(words, "deep") != NULL;
 	TRY(take_part(words, request, why));
+	if (words_get(words, "own-codecs")) {
+		TRY(beside_host(request->codec_host, why));
+		request->selection.codec_host = request->codec_host;
+	}
 	return show_format(words, "table", &request->format, why);
 }
 
@@ -217,7 +223,10 @@ static const struct option_row options[] = {
 	{"no-timing", NULL, "no speeds; sizes and intervals only"},
 	{"seed", "S", "of the resampling; 1 by default"},
 	{"orders", "K", "highest n-gram order, 1 to 32; 16 by default"},
-	{"outside", NULL, "corpora may lie outside the set file's folder"},
+	{"outside", NULL,
+	 "corpora and codecs may lie outside the set file's folder"},
+	{"own-codecs", NULL,
+	 "codecs that the set file declares may run: they are programs"},
 	{"as", "FORMAT",
 	 "the report's format: table (the default), text, "
 	 "markdown, csv or json"},
@@ -256,6 +265,16 @@ const struct command command_survey = {
 		"those\n"
 		"whose rounds differ by more than 10%.\n"
 		"\n"
+		"A set file can declare codecs of its own: commands and "
+		"shared\n"
+		"objects. They run in child processes with limits on time, "
+		"memory\n"
+		"and output, and only with --own-codecs: a set file from a\n"
+		"stranger runs nothing. What crashes, hangs, writes too much, "
+		"loses\n"
+		"a byte or gives other bytes the second time is a failed "
+		"cell.\n"
+		"\n"
 		"A corpus that is absent and could be fetched is skipped with "
 		"a\n"
 		"line. One that is unreadable, empty, of the wrong digest or\n"
@@ -270,6 +289,7 @@ const struct command command_survey = {
 		"--level '3 dict:64K'\n"
 		"  ratefloor survey corpora/starter.set --deep --as text --out "
 		"review.txt\n"
+		"  ratefloor survey corpora/house.set --own-codecs\n"
 		"  ratefloor survey corpora/nightly.set --jobs 2 --no-timing "
 		"--as json --out tonight.json",
 	.options = options,

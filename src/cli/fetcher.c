@@ -1,6 +1,7 @@
 #include "cli/fetcher.h"
 
 #include "base/memory.h"
+#include "cli/beside.h"
 
 #include <errno.h>
 #include <spawn.h>
@@ -12,32 +13,10 @@
 extern char **environ;
 
 /* Beside an installed program, and beside a build tree. */
-static const char *const places[] = {
+static const char *const places[2] = {
 	"/../libexec/ratefloor/fetch-corpora",
 	"/../../scripts/fetch-corpora",
 };
-
-static MUST_USE enum status find_script(char path[4096], struct reason *why)
-{
-	char program[2048];
-	ssize_t length =
-		readlink("/proc/self/exe", program, sizeof(program) - 1);
-
-	if (length < 0)
-		return reason_give(why, STATUS_IO, "/proc/self/exe: %s",
-				   strerror(errno));
-	program[length] = '\0';
-	*strrchr(program, '/') = '\0';
-	for (size_t i = 0; i < sizeof(places) / sizeof(*places); i++) {
-		(void)snprintf(path, 4096, "%s%s", program, places[i]);
-		if (access(path, X_OK) == 0)
-			return STATUS_OK;
-	}
-	return reason_give(why, STATUS_NOT_FOUND,
-			   "the script fetch-corpora is not there; it was "
-			   "looked for at %s%s and %s%s",
-			   program, places[0], program, places[1]);
-}
 
 static MUST_USE enum status run_script(char *const *arguments, int *all_there,
 				       struct reason *why)
@@ -70,11 +49,11 @@ enum status fetcher_run(const char *folder, const char *const *names,
 			size_t count, int *all_there, struct reason *why)
 {
 	static char into[] = "--into";
-	char script[4096];
+	char script[BESIDE_BYTES];
 	char **arguments;
 	enum status status;
 
-	TRY(find_script(script, why));
+	TRY(beside_find(places, script, why));
 	TRY(memory_new_zeroed(count + 4, sizeof(*arguments), &arguments));
 	/* posix_spawn takes char * for strings that it does not change. */
 	arguments[0] = script;

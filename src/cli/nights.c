@@ -40,15 +40,19 @@ void night_release(struct night *night)
 }
 
 enum status remeasure_init(struct remeasure *again, const char *path,
-			   bool outside, struct reason *why)
+			   bool outside, bool own_codecs, struct reason *why)
 {
-	const struct selection all = {.part = 1, .parts = 1};
+	struct selection all = {.part = 1, .parts = 1};
 	enum status status;
 
 	if (!*path)
 		return reason_give(why, STATUS_NOT_FOUND,
 				   "the ledger does not say where the set file "
 				   "lies: give --set");
+	if (own_codecs) {
+		TRY(beside_host(again->codec_host, why));
+		all.codec_host = again->codec_host;
+	}
 	TRY(set_load(path, outside, &again->set, why));
 	status = plan_init(&again->plan, &again->set, &all, why);
 	if (status != STATUS_OK)

@@ -2,6 +2,7 @@
 #ifndef CLI_NIGHTS_H
 #define CLI_NIGHTS_H
 
+#include "cli/beside.h"
 #include "cli/command.h"
 #include "corpus/set_file.h"
 #include "ledger/ledger.h"
@@ -25,11 +26,16 @@ struct remeasure {
 	struct set set;
 	struct plan plan;
 	bool quiet;
+	char codec_host[BESIDE_BYTES]; /* "": the set's codecs do not run */
 };
 
-/* path: of the set file. Statuses of set_load and plan_init. */
+/*
+ * path: of the set file; own_codecs: those that it declares may run. Statuses
+ * of set_load, beside_host and plan_init.
+ */
 MUST_USE enum status remeasure_init(struct remeasure *again, const char *path,
-				    bool outside, struct reason *why);
+				    bool outside, bool own_codecs,
+				    struct reason *why);
 void remeasure_release(struct remeasure *again);
 
 /* Replaces the times and memory of every cell by careful ones. */

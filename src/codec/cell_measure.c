@@ -3,6 +3,7 @@
 #include <stdio.h>
 #include <string.h>
 
+#include "codec/house.h"
 #include "codec/page_dictionaries.h"
 
 /* What one cell needs while it is measured. */
@@ -17,6 +18,8 @@ struct cell_work {
 	struct codec_memory encode, decode;
 	struct page_dictionaries dictionaries;
 	const struct codec_dictionary *dictionary; /* of the page at hand */
+	struct house_session *session;
+	bool again;   /* a second run to compare with the first */
 	size_t block; /* pages: block of the first byte not yet spread */
 };
 
@@ -43,6 +46,8 @@ static MUST_USE enum status encode(struct cell_work *work, struct slice input,
 		.cut_count = cut_count,
 		.piece_bytes = piece_bytes,
 		.memory = cuts ? NULL : &work->encode,
+		.session = work->session,
+		.again = work->again,
 	};
 
 	work->packed.length = 0;
@@ -50,8 +55,8 @@ static MUST_USE enum status encode(struct cell_work *work, struct slice input,
 }
 
 /*
- * A library's own threads may cut the work as they meet it: what they give must
- * be what they gave, or it is no fact.
+ * A library's own threads may cut the work as they meet it, and a user's codec
+ * may do anything: what they give must be what they gave, or it is no fact.
  */
 static MUST_USE enum status encode_again(struct cell_work *work,
 					 struct slice input, struct reason *why)
@@ -59,18 +64,19 @@ static MUST_USE enum status encode_again(struct cell_work *work,
 	struct buffer first = work->packed;
 	enum status status;
 
-	if (!work->setting->threads)
+	if (!work->setting->threads && !work->codec->house)
 		return STATUS_OK;
 	buffer_init(&work->packed, SIZE_MAX / 2);
+	work->again = true;
 	status = encode(work, input, NULL, 0, NULL, why);
+	work->again = false;
 	if (status == STATUS_OK &&
 	    (work->packed.length != first.length ||
 	     memcmp(work->packed.bytes, first.bytes, first.length) != 0))
 		status = reason_give(why, STATUS_CODEC,
-				     "not reproducible: %u threads gave %zu "
-				     "bytes, then other bytes (%zu)",
-				     work->setting->threads, first.length,
-				     work->packed.length);
+				     "not reproducible: %zu bytes, then other "
+				     "bytes (%zu) for the same input",
+				     first.length, work->packed.length);
 	buffer_release(&work->packed);
 	work->packed = first;
 	return status;
@@ -101,6 +107,7 @@ static MUST_USE enum status check(struct cell_work *work, struct slice input,
 		.page_bytes = work->page_bytes,
 		.dictionary = work->dictionary,
 		.memory = &work->decode,
+		.session = work->session,
 	};
 
 	work->plain.length = 0;
@@ -330,6 +337,18 @@ static MUST_USE enum status measure_pages(struct cell_work *work,
 	return STATUS_OK;
 }
 
+/* What threads and other processes take is not the same twice. */
+static void note_memory(struct cell_work *work)
+{
+	bool elsewhere = work->codec->house != NULL;
+
+	work->facts->encode_memory_bytes = work->setting->threads || elsewhere
+						   ? CELL_MEMORY_UNKNOWN
+						   : work->encode.peak_bytes;
+	work->facts->decode_memory_bytes =
+		elsewhere ? CELL_MEMORY_UNKNOWN : work->decode.peak_bytes;
+}
+
 static MUST_USE enum status measure(struct cell_work *work, struct reason *why)
 {
 	const struct slice input = {work->sequence->canonical,
@@ -353,11 +372,25 @@ static MUST_USE enum status measure(struct cell_work *work, struct reason *why)
 	}
 	if (!work->facts->lossless)
 		costs_release(&work->facts->flushed);
-	work->facts->encode_memory_bytes = work->setting->threads
-						   ? CELL_MEMORY_UNKNOWN
-						   : work->encode.peak_bytes;
-	work->facts->decode_memory_bytes = work->decode.peak_bytes;
+	note_memory(work);
 	return STATUS_OK;
+}
+
+static MUST_USE enum status measure_in_session(struct cell_work *work,
+					       struct reason *why)
+{
+	size_t bytes = work->sequence->canonical_bytes;
+	size_t page = work->page_bytes ? work->page_bytes : bytes;
+	enum status status;
+
+	TRY(house_open(work->codec->house, work->setting,
+		       page ? (bytes + page - 1) / page : 1, &work->session,
+		       why));
+	status = measure(work, why);
+	if (status == STATUS_OK && work->facts->lossless)
+		status = house_end(work->session, why);
+	house_close(work->session);
+	return status;
 }
 
 enum status cell_measure(const struct codec *codec,
@@ -377,7 +410,7 @@ enum status cell_measure(const struct codec *codec,
 
 	buffer_init(&work.packed, SIZE_MAX / 2);
 	buffer_init(&work.plain, SIZE_MAX / 2);
-	status = measure(&work, why);
+	status = measure_in_session(&work, why);
 	buffer_release(&work.packed);
 	buffer_release(&work.plain);
 	page_dictionaries_release(&work.dictionaries);

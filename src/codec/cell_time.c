@@ -1,5 +1,6 @@
 #include "codec/codec.h"
 
+#include "codec/house.h"
 #include "codec/page_dictionaries.h"
 
 /* One encode and decode of one page or of the whole. */
@@ -10,7 +11,49 @@ struct timed_piece {
 	size_t page_bytes;
 	struct page_dictionaries dictionaries;
 	struct buffer packed, plain;
+	struct house_session *session;
 };
+
+/* One call of a row: what the clock saw, or what was seen elsewhere. */
+static MUST_USE enum status
+time_call(struct timed_piece *piece,
+	  enum status (*call)(const struct codec_job *job, struct buffer *out,
+			      struct reason *why),
+	  struct codec_job *job, struct buffer *out, struct child_usage *took,
+	  struct reason *why)
+{
+	double cpu = piece->clock->cpu_seconds();
+	double wall = piece->clock->wall_seconds();
+
+	job->session = piece->session;
+	job->usage = took;
+	out->length = 0;
+	TRY(call(job, out, why));
+	if (piece->codec->house)
+		return STATUS_OK;
+	took->cpu_seconds = piece->clock->cpu_seconds() - cpu;
+	took->wall_seconds = piece->clock->wall_seconds() - wall;
+	return STATUS_OK;
+}
+
+static uint64_t larger(uint64_t a, uint64_t b)
+{
+	return a > b ? a : b;
+}
+
+static void add_round(struct cell_round *round,
+		      const struct child_usage *encode,
+		      const struct child_usage *decode)
+{
+	round->encode_cpu += encode->cpu_seconds;
+	round->encode_wall += encode->wall_seconds;
+	round->decode_cpu += decode->cpu_seconds;
+	round->decode_wall += decode->wall_seconds;
+	round->encode_peak_bytes =
+		larger(round->encode_peak_bytes, encode->peak_bytes);
+	round->decode_peak_bytes =
+		larger(round->decode_peak_bytes, decode->peak_bytes);
+}
 
 static MUST_USE enum status time_piece(struct timed_piece *piece,
 				       struct slice input, size_t start,
@@ -23,21 +66,15 @@ static MUST_USE enum status time_piece(struct timed_piece *piece,
 		.page_bytes = piece->page_bytes,
 		.dictionary = page_dictionary(&piece->dictionaries, start,
 					      piece->page_bytes)};
-	double cpu = piece->clock->cpu_seconds();
-	double wall = piece->clock->wall_seconds();
+	struct child_usage encode = {0, 0, 0}, decode = {0, 0, 0};
 
-	piece->packed.length = 0;
-	TRY(piece->codec->encode(&job, &piece->packed, why));
-	round->encode_cpu += piece->clock->cpu_seconds() - cpu;
-	round->encode_wall += piece->clock->wall_seconds() - wall;
-	piece->plain.length = 0;
+	TRY(time_call(piece, piece->codec->encode, &job, &piece->packed,
+		      &encode, why));
 	piece->plain.limit = input.length + 1;
 	job.input = (struct slice){piece->packed.bytes, piece->packed.length};
-	cpu = piece->clock->cpu_seconds();
-	wall = piece->clock->wall_seconds();
-	TRY(piece->codec->decode(&job, &piece->plain, why));
-	round->decode_cpu += piece->clock->cpu_seconds() - cpu;
-	round->decode_wall += piece->clock->wall_seconds() - wall;
+	TRY(time_call(piece, piece->codec->decode, &job, &piece->plain, &decode,
+		      why));
+	add_round(round, &encode, &decode);
 	return STATUS_OK;
 }
 
@@ -50,20 +87,23 @@ enum status cell_time(const struct codec *codec,
 				    .setting = setting,
 				    .clock = clock,
 				    .page_bytes = page_bytes};
-	struct cell_round sum = {0, 0, 0, 0};
+	struct cell_round sum = {0};
 	size_t step = page_bytes ? page_bytes : input.length, start = 0;
 	enum status status;
 
 	/* Trained and made ready once, as whoever ships them does. */
 	TRY(page_dictionaries_init(&piece.dictionaries, codec, setting, input,
 				   page_bytes, why));
-	status = STATUS_OK;
+	status = house_open(codec->house, setting,
+			    step ? (input.length + step - 1) / step : 1,
+			    &piece.session, why);
 	buffer_init(&piece.packed, SIZE_MAX / 2);
 	buffer_init(&piece.plain, SIZE_MAX / 2);
 	/* The pages of the heap are touched before the clock starts. */
-	if (buffer_reserve(&piece.packed, step + step / 8 + 1024) !=
-		    STATUS_OK ||
-	    buffer_reserve(&piece.plain, step + 1) != STATUS_OK)
+	if (status == STATUS_OK &&
+	    (buffer_reserve(&piece.packed, step + step / 8 + 1024) !=
+		     STATUS_OK ||
+	     buffer_reserve(&piece.plain, step + 1) != STATUS_OK))
 		status = reason_give(why, STATUS_NO_MEMORY, "out of memory");
 	while (status == STATUS_OK && start < input.length) {
 		size_t length = input.length - start;
@@ -76,6 +116,7 @@ enum status cell_time(const struct codec *codec,
 	buffer_release(&piece.packed);
 	buffer_release(&piece.plain);
 	page_dictionaries_release(&piece.dictionaries);
+	house_close(piece.session);
 	if (status == STATUS_OK)
 		*round = sum;
 	return status;

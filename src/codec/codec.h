@@ -3,6 +3,7 @@
 #define CODEC_CODEC_H
 
 #include "base/memory.h"
+#include "child/child.h"
 #include "cost/cell.h"
 #include "symbols/sequence.h"
 
@@ -68,6 +69,10 @@ struct codec_job {
 	size_t cut_count;
 	uint64_t *piece_bytes;
 	struct codec_memory *memory;
+	/* A user's own codec only: what runs it, and what this took. */
+	struct house_session *session;
+	struct child_usage *usage; /* NULL: not asked */
+	bool again; /* encode: a second run, apart from the first */
 };
 
 struct codec {
@@ -105,6 +110,12 @@ struct codec {
 	enum status (*option)(const char *word, struct codec_setting *setting,
 			      struct reason *why);
 	const struct codec_trainer *trainer; /* NULL: no dictionaries */
+	/*
+	 * A user's own codec, borrowed; see house.h. It takes a session, runs
+	 * elsewhere, and is a fact only if it gives the same bytes twice. NULL:
+	 * built in.
+	 */
+	const struct house *house;
 };
 
 /* What a row does with dictionaries. */
@@ -157,8 +168,9 @@ void layout_format(size_t page_bytes, char text[CELL_NAME_BYTES]);
  * round, so that no page was seen in training and all are measured; the bytes
  * of both are counted, spread evenly. facts is released by the caller. A
  * difference is STATUS_OK with lossless 0 and the place in why; a library that
- * fails is STATUS_CODEC, also one whose threads give other bytes in a second
- * run; too few pages for a dictionary is STATUS_TOO_SHORT.
+ * fails is STATUS_CODEC, also one whose threads, or which as a user's own,
+ * gives other bytes in a second run; too few pages for a dictionary is
+ * STATUS_TOO_SHORT.
  */
 MUST_USE enum status cell_measure(const struct codec *codec,
 				  const struct codec_setting *setting,
@@ -174,6 +186,8 @@ MUST_USE enum status cell_measure(const struct codec *codec,
  */
 struct cell_round {
 	double encode_cpu, encode_wall, decode_cpu, decode_wall;
+	/* A user's own codec: resident bytes at their most; 0: not known. */
+	uint64_t encode_peak_bytes, decode_peak_bytes;
 };
 struct cell_clock {
 	double (*cpu_seconds)(void);

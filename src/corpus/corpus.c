@@ -1,27 +1,11 @@
-#define _XOPEN_SOURCE 700 /* realpath */
 #include "corpus/corpus.h"
 
 #include "corpus/file_read.h"
+#include "corpus/set_path.h"
 
-#include <limits.h>
 #include <stdlib.h>
 #include <string.h>
 #include <sys/stat.h>
-
-/* Is path, with every link followed, below the folder? */
-static bool is_within(const char *path, const char *folder)
-{
-	char real[PATH_MAX], top[PATH_MAX];
-	size_t length;
-
-	/* What cannot be followed cannot be read either: reading says why. */
-	if (!realpath(path, real) || !realpath(folder, top))
-		return true;
-	length = strlen(top);
-	if (length == 1)
-		return true;
-	return strncmp(real, top, length) == 0 && real[length] == '/';
-}
 
 static enum status check_digest(const struct set_corpus *entry,
 				const struct corpus *corpus, struct reason *why)
@@ -55,7 +39,7 @@ enum status corpus_open(const struct set_corpus *entry, uint64_t memory_limit,
 	struct corpus made = {0};
 	enum status status;
 
-	if (entry->within && !is_within(entry->file, entry->within))
+	if (entry->within && !path_is_within(entry->file, entry->within))
 		return reason_give(why, STATUS_BAD_USAGE,
 				   "%s: is a link out of the set's folder %s; "
 				   "allow it with --outside",

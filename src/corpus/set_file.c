@@ -1,6 +1,7 @@
 #include "corpus/set_file.h"
 
 #include "corpus/file_read.h"
+#include "corpus/set_command.h"
 #include "corpus/set_loader.h"
 #include "corpus/set_path.h"
 #include "corpus/set_values.h"
@@ -95,9 +96,10 @@ static enum status finish_codec(const struct loader *loader,
 	if (!codec->levels.count && !*codec->compress && !*codec->library)
 		return reason_give(why, STATUS_BAD_USAGE,
 				   "no key levels: write levels = 1 6 9, say");
-	if (codec->layouts.count)
-		return STATUS_OK;
-	return value_list("whole", &codec->layouts, why);
+	if (!codec->layouts.count)
+		TRY(value_list("whole", &codec->layouts, why));
+	return own_codec_finish(codec, loader->set->folder, loader->outside,
+				why);
 }
 
 /* What can only be said once all keys of all sections are there. */
@@ -211,6 +213,9 @@ static void release_codec(struct set_codec *codec)
 	memory_free(codec->options);
 	memory_free(codec->dictionary);
 	memory_free(codec->containers);
+	memory_free(codec->library_path);
+	text_list_release(&codec->compress_words);
+	text_list_release(&codec->decompress_words);
 }
 
 void set_release(struct set *set)

@@ -51,6 +51,14 @@ struct set_codec {
 	/* Kept as written; what runs the codec reads them. */
 	char *compress, *decompress, *library, *options, *dictionary,
 		*containers;
+	/*
+	 * A user's own codec: the words of the two commands, none where the
+	 * codec is a library or built in; see command_words in set_command.h.
+	 */
+	struct text_list compress_words, decompress_words;
+	char *library_path;          /* owned; from the root; NULL: none */
+	unsigned time_limit_seconds; /* of one run; 0: not given */
+	size_t memory_limit_bytes;   /* likewise */
 };
 
 struct set {

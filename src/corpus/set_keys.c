@@ -19,6 +19,8 @@ enum value_sort {
 	VALUE_DIGEST,
 	VALUE_FEED,
 	VALUE_UNIT,
+	VALUE_SECONDS,
+	VALUE_MEMORY,
 	VALUE_LIST
 };
 
@@ -59,6 +61,10 @@ static const struct key codec_keys[] = {
 	{"options", VALUE_TEXT, offsetof(struct set_codec, options)},
 	{"dictionary", VALUE_TEXT, offsetof(struct set_codec, dictionary)},
 	{"containers", VALUE_TEXT, offsetof(struct set_codec, containers)},
+	{"time-limit", VALUE_SECONDS,
+	 offsetof(struct set_codec, time_limit_seconds)},
+	{"memory-limit", VALUE_MEMORY,
+	 offsetof(struct set_codec, memory_limit_bytes)},
 };
 
 #define COUNT_OF(array) (sizeof(array) / sizeof((array)[0]))
@@ -156,6 +162,10 @@ enum status key_store(enum section_sort sort, size_t key, void *section,
 		return value_feed(value, field, why);
 	case VALUE_UNIT:
 		return value_unit(value, field, why);
+	case VALUE_SECONDS:
+		return value_seconds(value, field, why);
+	case VALUE_MEMORY:
+		return value_memory(value, field, why);
 	case VALUE_LIST:
 		return value_list(value, field, why);
 	}

@@ -1,7 +1,10 @@
+#define _XOPEN_SOURCE 700 /* realpath */
 #include "corpus/set_path.h"
 
 #include "base/memory.h"
 
+#include <limits.h>
+#include <stdlib.h>
 #include <string.h>
 
 enum status path_folder(const char *path, char **folder)
@@ -49,7 +52,7 @@ enum status path_join(const char *folder, bool outside, char **file,
 	if (!outside && leaves_folder(*file))
 		return reason_give(why, STATUS_BAD_USAGE,
 				   "\"%s\" leaves the folder of the set file; "
-				   "move the corpus there, or allow it with "
+				   "move it there, or allow it with "
 				   "--outside",
 				   *file);
 	if ((*file)[0] == '/')
@@ -61,4 +64,33 @@ enum status path_join(const char *folder, bool outside, char **file,
 	memory_free(*file);
 	*file = joined;
 	return STATUS_OK;
+}
+
+enum status path_absolute(const char *folder, char **absolute)
+{
+	char real[PATH_MAX];
+	const char *found = realpath(folder, real);
+	char *copy;
+
+	/* A folder that is not there is told by what is looked for in it. */
+	if (!found)
+		found = folder;
+	TRY(memory_new(strlen(found) + 1, 1, &copy));
+	strcpy(copy, found);
+	*absolute = copy;
+	return STATUS_OK;
+}
+
+bool path_is_within(const char *path, const char *folder)
+{
+	char real[PATH_MAX], top[PATH_MAX];
+	size_t length;
+
+	/* What cannot be followed cannot be read either: reading says why. */
+	if (!realpath(path, real) || !realpath(folder, top))
+		return true;
+	length = strlen(top);
+	if (length == 1)
+		return true;
+	return strncmp(real, top, length) == 0 && real[length] == '/';
 }

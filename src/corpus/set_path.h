@@ -16,4 +16,9 @@ MUST_USE enum status path_folder(const char *path, char **folder);
 MUST_USE enum status path_join(const char *folder, bool outside, char **file,
 			       struct reason *why);
 
+/* The folder as a path from the root, links followed; owned by caller. */
+MUST_USE enum status path_absolute(const char *folder, char **absolute);
+/* Is path, with every link followed, below the folder? True if not there. */
+bool path_is_within(const char *path, const char *folder);
+
 #endif

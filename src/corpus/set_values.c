@@ -48,6 +48,40 @@ enum status value_bits(const char *text, double *bits, struct reason *why)
 	return STATUS_OK;
 }
 
+enum status value_seconds(const char *text, unsigned *seconds,
+			  struct reason *why)
+{
+	size_t digits = strspn(text, "0123456789");
+	unsigned long value = digits < 6 ? strtoul(text, NULL, 10) : 0;
+
+	if (!digits || text[digits] || value < 1 || value > 86400)
+		return reason_give(why, STATUS_BAD_USAGE,
+				   "\"%s\" is no number of seconds from 1 to "
+				   "86400; write 60",
+				   text);
+	*seconds = (unsigned)value;
+	return STATUS_OK;
+}
+
+enum status value_memory(const char *text, size_t *bytes, struct reason *why)
+{
+	size_t digits = strspn(text, "0123456789");
+	size_t value = digits < 8 ? strtoul(text, NULL, 10) : 0;
+	size_t mebibytes = 0;
+
+	if (digits && strcmp(text + digits, "M") == 0)
+		mebibytes = value;
+	else if (digits && strcmp(text + digits, "G") == 0)
+		mebibytes = value * 1024;
+	if (mebibytes < 16 || mebibytes > (size_t)1 << 20)
+		return reason_give(why, STATUS_BAD_USAGE,
+				   "\"%s\" is no amount of memory from 16M to "
+				   "1024G; write 512M",
+				   text);
+	*bytes = mebibytes << 20;
+	return STATUS_OK;
+}
+
 enum status value_digest(const char *text, char sha256[65], struct reason *why)
 {
 	size_t length = strspn(text, "0123456789abcdefABCDEF");

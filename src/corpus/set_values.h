@@ -27,6 +27,12 @@ MUST_USE enum status value_feed(const char *text, bool *rolling,
 /* "512" or "4096" bytes, the units of disks and pages. */
 MUST_USE enum status value_unit(const char *text, size_t *bytes,
 				struct reason *why);
+/* Whole seconds from 1 to a day. */
+MUST_USE enum status value_seconds(const char *text, unsigned *seconds,
+				   struct reason *why);
+/* "64M" or "2G", from 16M to 1024G. */
+MUST_USE enum status value_memory(const char *text, size_t *bytes,
+				  struct reason *why);
 /* Letters, digits, - _ and ., at most SET_NAME_BYTES - 1. */
 MUST_USE enum status value_name(const char *text, char name[SET_NAME_BYTES],
 				struct reason *why);

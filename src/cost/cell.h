@@ -39,7 +39,7 @@ struct cell_facts {
 	uint64_t encode_memory_bytes, decode_memory_bytes;
 };
 
-/* Not the same twice: a library's own threads meet as they may. */
+/* Not the same twice: threads, and other people's processes. */
 #define CELL_MEMORY_UNKNOWN UINT64_MAX
 
 void cell_facts_release(struct cell_facts *facts);
@@ -51,6 +51,11 @@ struct cell_timing {
 	double encode_wall_seconds, decode_wall_seconds;
 	/* (largest - smallest) / median over the rounds, CPU time. */
 	double encode_spread, decode_spread;
+	/*
+	 * Resident bytes of a user's own codec at their most; 0: not known.
+	 * They are not the same twice, so they are no facts.
+	 */
+	uint64_t encode_peak_bytes, decode_peak_bytes;
 };
 
 #endif

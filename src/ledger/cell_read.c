@@ -33,6 +33,8 @@ static void read_timing(struct query *query, struct cell_fact *cell)
 	timing->decode_wall_seconds = query_real(query);
 	timing->encode_spread = query_real(query);
 	timing->decode_spread = query_real(query);
+	timing->encode_peak_bytes = query_count(query);
+	timing->decode_peak_bytes = query_count(query);
 }
 
 static void read_cell(struct query *query, size_t blocks,
@@ -70,7 +72,8 @@ enum status read_cells(struct owner owner)
 		" storage_unit, stored_bytes, rounds,"
 		" encode_cpu_seconds, decode_cpu_seconds,"
 		" encode_wall_seconds, decode_wall_seconds, encode_spread,"
-		" decode_spread FROM cell LEFT JOIN timing"
+		" decode_spread, encode_peak_bytes, decode_peak_bytes"
+		" FROM cell LEFT JOIN timing"
 		" USING (survey, corpus, codec, level, layout)"
 		" WHERE survey = ? AND corpus = ?"
 		" ORDER BY place, codec, level, layout",

@@ -37,7 +37,7 @@ static enum status timing_row(struct ledger *ledger, const void *context,
 	/* No row refers to a timing: plain replacing is enough. */
 	query_init(&query, ledger,
 		   "INSERT OR REPLACE INTO timing VALUES"
-		   " (?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?)",
+		   " (?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?)",
 		   "timing", why);
 	bind_key(&query, put->survey, put->corpus, put->key);
 	query_bind_count(&query, timing->rounds);
@@ -47,6 +47,8 @@ static enum status timing_row(struct ledger *ledger, const void *context,
 	query_bind_real(&query, timing->decode_wall_seconds);
 	query_bind_real(&query, timing->encode_spread);
 	query_bind_real(&query, timing->decode_spread);
+	query_bind_count(&query, timing->encode_peak_bytes);
+	query_bind_count(&query, timing->decode_peak_bytes);
 	return query_run(&query);
 }
 

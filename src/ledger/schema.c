@@ -89,7 +89,8 @@ const char *const schema_sql[] = {
 	"rounds INTEGER NOT NULL, encode_cpu_seconds REAL NOT NULL,"
 	"decode_cpu_seconds REAL NOT NULL, encode_wall_seconds REAL NOT NULL,"
 	"decode_wall_seconds REAL NOT NULL, encode_spread REAL NOT NULL,"
-	"decode_spread REAL NOT NULL,"
+	"decode_spread REAL NOT NULL, encode_peak_bytes INTEGER NOT NULL,"
+	"decode_peak_bytes INTEGER NOT NULL,"
 	"PRIMARY KEY (survey, corpus, codec, level, layout),"
 	"FOREIGN KEY (survey, corpus, codec, level, layout)"
 	" REFERENCES cell ON DELETE CASCADE" TABLE_END,

@@ -5,7 +5,7 @@
 /* "RFLR" in the file's header says that this is a ledger. */
 #define SCHEMA_APPLICATION_ID 0x52464c52
 /* Counts up with every change that an older program could not read. */
-#define SCHEMA_NUMBER 2
+#define SCHEMA_NUMBER 3
 
 /*
  * Facts lie in survey, library, corpus, method, series, gram, note and cell;

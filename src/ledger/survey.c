@@ -11,6 +11,24 @@ void method_fact_release(struct method_fact *method)
 	*method = (struct method_fact){.reason = NULL};
 }
 
+static uint64_t memory_of(const struct cell_fact *cell, uint64_t fact,
+			  uint64_t peak)
+{
+	return fact == CELL_MEMORY_UNKNOWN && cell->timed && peak ? peak : fact;
+}
+
+uint64_t cell_encode_memory(const struct cell_fact *cell)
+{
+	return memory_of(cell, cell->facts.encode_memory_bytes,
+			 cell->timing.encode_peak_bytes);
+}
+
+uint64_t cell_decode_memory(const struct cell_fact *cell)
+{
+	return memory_of(cell, cell->facts.decode_memory_bytes,
+			 cell->timing.decode_peak_bytes);
+}
+
 void cell_fact_release(struct cell_fact *cell)
 {
 	memory_free(cell->reason);

@@ -92,6 +92,12 @@ const struct corpus_fact *survey_corpus(const struct survey *survey,
 /* Each accepts an initialised-empty one. */
 void method_fact_release(struct method_fact *method);
 void cell_fact_release(struct cell_fact *cell);
+/*
+ * Bytes of memory: of the facts, or else the peak that was seen while timing;
+ * CELL_MEMORY_UNKNOWN.
+ */
+uint64_t cell_encode_memory(const struct cell_fact *cell);
+uint64_t cell_decode_memory(const struct cell_fact *cell);
 void corpus_fact_release(struct corpus_fact *corpus);
 void survey_release(struct survey *survey);
 

@@ -212,6 +212,8 @@ static void set_gap(struct csv_row *row, const struct cell_row *cell)
 static void set_costs(struct csv_row *row, const struct cell_row *cell)
 {
 	const struct cell_facts *facts = &cell->fact->facts;
+	uint64_t encode_memory = cell_encode_memory(cell->fact);
+	uint64_t decode_memory = cell_decode_memory(cell->fact);
 	bool known = cell->known;
 	bool timed = known && cell->fact->timed;
 
@@ -228,11 +230,9 @@ static void set_costs(struct csv_row *row, const struct cell_row *cell)
 	set_real(row, CSV_decode_mb_per_s, timed && cell->decode_mb_per_s > 0,
 		 cell->decode_mb_per_s);
 	set_count(row, CSV_encode_memory_bytes,
-		  known && facts->encode_memory_bytes != CELL_MEMORY_UNKNOWN,
-		  facts->encode_memory_bytes);
+		  known && encode_memory != CELL_MEMORY_UNKNOWN, encode_memory);
 	set_count(row, CSV_decode_memory_bytes,
-		  known && facts->decode_memory_bytes != CELL_MEMORY_UNKNOWN,
-		  facts->decode_memory_bytes);
+		  known && decode_memory != CELL_MEMORY_UNKNOWN, decode_memory);
 	set_bool(row, CSV_lossless, facts->lossless != 0);
 }
 

@@ -102,7 +102,8 @@ static void put_sizes(struct json_maker *made, const struct cell_row *row)
 
 static void put_costs(struct json_maker *made, const struct cell_row *row)
 {
-	const struct cell_facts *facts = &row->fact->facts;
+	uint64_t encode_memory = cell_encode_memory(row->fact);
+	uint64_t decode_memory = cell_decode_memory(row->fact);
 	bool known = row->known;
 	bool timed = known && row->fact->timed;
 
@@ -111,13 +112,11 @@ static void put_costs(struct json_maker *made, const struct cell_row *row)
 	json_put_real(made, "decode_mb_per_s",
 		      timed && row->decode_mb_per_s > 0, row->decode_mb_per_s);
 	json_put_known_count(made, "encode_memory_bytes",
-			     known && facts->encode_memory_bytes !=
-					      CELL_MEMORY_UNKNOWN,
-			     facts->encode_memory_bytes);
+			     known && encode_memory != CELL_MEMORY_UNKNOWN,
+			     encode_memory);
 	json_put_known_count(made, "decode_memory_bytes",
-			     known && facts->decode_memory_bytes !=
-					      CELL_MEMORY_UNKNOWN,
-			     facts->decode_memory_bytes);
+			     known && decode_memory != CELL_MEMORY_UNKNOWN,
+			     decode_memory);
 	json_put_real(made, "bits_per_record", known && row->has_record,
 		      row->bits_per_record);
 }

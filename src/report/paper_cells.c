@@ -107,8 +107,9 @@ static void cost_line(struct grid *grid, const struct corpus_view *view,
 			 figure_speed(row->decode_mb_per_s).text);
 	else
 		grid_add(grid, "-");
-	grid_add(grid, "%s/%s", figure_memory(facts->encode_memory_bytes).text,
-		 figure_memory(facts->decode_memory_bytes).text);
+	grid_add(grid, "%s/%s",
+		 figure_memory(cell_encode_memory(row->fact)).text,
+		 figure_memory(cell_decode_memory(row->fact)).text);
 }
 
 static enum status cost_table(const struct writer *writer,

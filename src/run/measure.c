@@ -1,5 +1,7 @@
 #include "run/measure.h"
 
+#include "base/digest.h"
+#include "corpus/file_read.h"
 #include "suffix/suffix.h"
 
 #include <stdio.h>
@@ -130,14 +132,40 @@ void measure_cell(const struct plan_cell *cell, const struct sequence *sequence,
 	fact->reason = keep_words(&why);
 }
 
-MUST_USE enum status measure_libraries(struct survey *survey)
+/* Programs and objects are small against what a machine has. */
+#define OWN_BYTES_MOST ((uint64_t)1 << 30)
+
+/* Digits of a digest that tell two builds apart. */
+#define OWN_DIGITS 16
+
+/* What nobody can read is told when it is to run. */
+static void note_own(const struct house *house, struct library_fact *fact)
+{
+	const struct read_limit limit = {OWN_BYTES_MOST, 1};
+	char path[HOUSE_PATH_BYTES], digest[DIGEST_TEXT_BYTES];
+	uint8_t *bytes;
+	size_t length;
+
+	(void)snprintf(fact->name, sizeof(fact->name), "%s",
+		       house_codec(house)->name);
+	(void)snprintf(fact->version, sizeof(fact->version), "unreadable");
+	if (!house_program(house, path) ||
+	    file_read(path, &limit, &bytes, &length, NULL) != STATUS_OK)
+		return;
+	digest_sha256(bytes, length, digest);
+	memory_free(bytes);
+	(void)snprintf(fact->version, sizeof(fact->version), "sha256 %.*s",
+		       OWN_DIGITS, digest);
+}
+
+enum status measure_libraries(const struct plan *plan, struct survey *survey)
 {
 	size_t count = 0;
 
 	while (codecs[count])
 		count++;
-	TRY(memory_new_zeroed(count + 1, sizeof(*survey->libraries),
-			      &survey->libraries));
+	TRY(memory_new_zeroed(count + 1 + plan->house_count,
+			      sizeof(*survey->libraries), &survey->libraries));
 	for (size_t i = 0; i < count; i++) {
 		struct library_fact *fact =
 			&survey->libraries[survey->library_count];
@@ -150,6 +178,9 @@ MUST_USE enum status measure_libraries(struct survey *survey)
 			       codecs[i]->version());
 		survey->library_count++;
 	}
+	for (size_t i = 0; i < plan->house_count; i++)
+		note_own(plan->houses[i],
+			 &survey->libraries[survey->library_count++]);
 	survey->libraries[survey->library_count++] =
 		(struct library_fact){REFERENCE_NAME, REFERENCE_VERSION};
 	return STATUS_OK;

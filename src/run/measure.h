@@ -24,9 +24,11 @@ void measure_cell(const struct plan_cell *cell, const struct sequence *sequence,
 		  const struct cuts *cuts, struct cell_fact *fact);
 
 /*
- * Fills the libraries that the codecs run on, with versions at run time, and
- * last the reference with its version.
+ * Fills the libraries that the codecs run on, with versions at run time; of
+ * the set's own codecs the digest of the program or object; and last the
+ * reference with its version.
  */
-MUST_USE enum status measure_libraries(struct survey *survey);
+MUST_USE enum status measure_libraries(const struct plan *plan,
+				       struct survey *survey);
 
 #endif

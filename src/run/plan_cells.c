@@ -11,10 +11,68 @@ struct section {
 	struct text_list containers, options, dictionaries; /* owned */
 };
 
-static MUST_USE enum status find_codec(const struct set_codec *declared,
+/* What all cells of a plan are made with. */
+struct cell_maker {
+	struct plan *plan;
+	const struct selection *selection;
+	struct section section; /* the one at hand */
+	size_t place;           /* of the next cell of the set, chosen or not */
+	struct reason *why;
+};
+
+static bool is_own(const struct set_codec *declared)
+{
+	return *declared->compress || *declared->library;
+}
+
+static MUST_USE enum status add_house(struct plan *plan,
+				      const struct set_codec *declared,
+				      const char *host, struct reason *why)
+{
+	const struct house_words words = {
+		.name = declared->name,
+		.compress = declared->compress_words.texts,
+		.compress_count = declared->compress_words.count,
+		.decompress = declared->decompress_words.texts,
+		.decompress_count = declared->decompress_words.count,
+		.library = declared->library_path,
+		.host = host,
+		.time_limit_seconds = declared->time_limit_seconds,
+		.memory_limit_bytes = declared->memory_limit_bytes,
+	};
+
+	TRY(memory_resize(&plan->houses, plan->house_count + 1,
+			  sizeof(*plan->houses)));
+	TRY(house_new(&words, &plan->houses[plan->house_count], why));
+	plan->house_count++;
+	return STATUS_OK;
+}
+
+/* What belongs to a stranger runs only when its user says so. */
+static MUST_USE enum status find_own(struct plan *plan,
+				     const struct set_codec *declared,
+				     const struct selection *selection,
+				     const struct codec **codec,
+				     struct reason *why)
+{
+	TRY(add_house(plan, declared, selection->codec_host, why));
+	*codec = house_codec(plan->houses[plan->house_count - 1]);
+	if (selection->codec_host ||
+	    !names_hold(&selection->codecs, declared->name))
+		return STATUS_OK;
+	return reason_give(why, STATUS_BAD_USAGE,
+			   "runs a program that the set file names: allow it "
+			   "with --own-codecs, or choose others with --codec");
+}
+
+static MUST_USE enum status find_codec(struct plan *plan,
+				       const struct set_codec *declared,
+				       const struct selection *selection,
 				       const struct codec **codec,
 				       struct reason *why)
 {
+	if (is_own(declared))
+		return find_own(plan, declared, selection, codec, why);
 	*codec = codec_find(declared->name);
 	if (*codec)
 		return STATUS_OK;
@@ -51,12 +109,15 @@ static bool has_pages(const struct set_codec *declared)
 	return false;
 }
 
-static MUST_USE enum status section_init(struct section *section,
-					 const struct set_codec *declared,
-					 struct reason *why)
+static MUST_USE enum status section_init(struct cell_maker *maker,
+					 const struct set_codec *declared)
 {
+	struct section *section = &maker->section;
+	struct reason *why = maker->why;
+
 	*section = (struct section){.declared = declared};
-	TRY(find_codec(declared, &section->codec, why));
+	TRY(find_codec(maker->plan, declared, maker->selection, &section->codec,
+		       why));
 	if (*declared->dictionary && !has_pages(declared))
 		return reason_give(why, STATUS_BAD_USAGE,
 				   "dictionary: is for pages, and layouts has "
@@ -67,15 +128,6 @@ static MUST_USE enum status section_init(struct section *section,
 	return read_list("dictionary", declared->dictionary,
 			 &section->dictionaries, why);
 }
-
-/* What all cells of a plan are made with. */
-struct cell_maker {
-	struct plan *plan;
-	const struct selection *selection;
-	struct section section; /* the one at hand */
-	size_t place;           /* of the next cell of the set, chosen or not */
-	struct reason *why;
-};
 
 /* Two spellings of one setting would be one row of the ledger. */
 static bool is_there(const struct plan *plan, const struct plan_cell *cell)
@@ -169,12 +221,13 @@ static MUST_USE enum status add_level(struct cell_maker *maker,
 static MUST_USE enum status add_section(struct cell_maker *maker,
 					const struct set_codec *declared)
 {
-	enum status status =
-		section_init(&maker->section, declared, maker->why);
+	enum status status = section_init(maker, declared);
 
 	for (size_t i = 0; status == STATUS_OK && i < declared->levels.count;
 	     i++)
 		status = add_level(maker, declared->levels.texts[i]);
+	if (status == STATUS_OK && !declared->levels.count)
+		status = add_level(maker, HOUSE_LEVEL);
 	section_release(&maker->section);
 	if (status != STATUS_OK)
 		reason_prefix(maker->why,

@@ -124,6 +124,14 @@ static struct relative over(double value, double yardstick)
 	return ratio;
 }
 
+/* What is not the same twice says nothing about a build. */
+static struct relative over_memory(uint64_t bytes, uint64_t yardstick)
+{
+	if (bytes == CELL_MEMORY_UNKNOWN || yardstick == CELL_MEMORY_UNKNOWN)
+		return (struct relative){.known = false};
+	return over((double)bytes, (double)yardstick);
+}
+
 static bool is_enough(const struct retime_job *job,
 		      const struct relative ratios[RATIO_COUNT])
 {
@@ -181,11 +189,11 @@ static void weigh_pair(const struct pair *pair, const struct resident *resident,
 	measure_cell(pair->yardstick, &resident->sequence, &resident->cuts,
 		     &yardstick);
 	ratios[RATIO_ENCODE_MEMORY] =
-		over((double)cell.facts.encode_memory_bytes,
-		     (double)yardstick.facts.encode_memory_bytes);
+		over_memory(cell.facts.encode_memory_bytes,
+			    yardstick.facts.encode_memory_bytes);
 	ratios[RATIO_DECODE_MEMORY] =
-		over((double)cell.facts.decode_memory_bytes,
-		     (double)yardstick.facts.decode_memory_bytes);
+		over_memory(cell.facts.decode_memory_bytes,
+			    yardstick.facts.decode_memory_bytes);
 	cell_fact_release(&cell);
 	cell_fact_release(&yardstick);
 }

@@ -253,7 +253,7 @@ static MUST_USE enum status begin_survey(struct run *run, struct reason *why)
 		       run->plan->set->yardstick);
 	(void)snprintf(survey.set_path, sizeof(survey.set_path), "%s",
 		       run->plan->set->path);
-	TRY(measure_libraries(&survey));
+	TRY(measure_libraries(run->plan, &survey));
 	status = ledger_begin(run->ledger, &survey, digest, why);
 	run->survey = survey.id;
 	survey_release(&survey);

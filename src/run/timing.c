@@ -14,6 +14,7 @@ struct timed {
 	bool failed;
 	double encode_cpu[ROUNDS_MAX], encode_wall[ROUNDS_MAX];
 	double decode_cpu[ROUNDS_MAX], decode_wall[ROUNDS_MAX];
+	uint64_t encode_peak_bytes, decode_peak_bytes;
 };
 
 /* Nothing else runs: all CPU is the codec's, its own threads' too. */
@@ -48,13 +49,19 @@ static size_t choose(const struct timing_job *job, size_t corpus,
 #define DECODE_SECONDS 0.002
 #define READINGS_MOST 50
 
+static void raise_to(uint64_t *most, uint64_t value)
+{
+	if (value > *most)
+		*most = value;
+}
+
 /* Mean of as many readings as it takes. */
 static MUST_USE enum status read_times(const struct plan_cell *cell,
 				       struct slice input,
 				       struct cell_round *mean,
 				       struct reason *why)
 {
-	struct cell_round sum = {0, 0, 0, 0};
+	struct cell_round sum = {0};
 	unsigned readings = 0;
 
 	do {
@@ -66,13 +73,16 @@ static MUST_USE enum status read_times(const struct plan_cell *cell,
 		sum.encode_wall += one.encode_wall;
 		sum.decode_cpu += one.decode_cpu;
 		sum.decode_wall += one.decode_wall;
+		raise_to(&sum.encode_peak_bytes, one.encode_peak_bytes);
+		raise_to(&sum.decode_peak_bytes, one.decode_peak_bytes);
 		readings++;
 	} while (!cell->setting.dictionary_bytes && readings < READINGS_MOST &&
 		 (sum.encode_cpu < ENCODE_SECONDS ||
 		  sum.decode_cpu < DECODE_SECONDS));
 	*mean = (struct cell_round){
 		sum.encode_cpu / readings, sum.encode_wall / readings,
-		sum.decode_cpu / readings, sum.decode_wall / readings};
+		sum.decode_cpu / readings, sum.decode_wall / readings,
+		sum.encode_peak_bytes,     sum.decode_peak_bytes};
 	return STATUS_OK;
 }
 
@@ -93,6 +103,8 @@ static void time_round(const struct resident *resident, struct timed *timed,
 	timed->encode_wall[round] = reading.encode_wall;
 	timed->decode_cpu[round] = reading.decode_cpu;
 	timed->decode_wall[round] = reading.decode_wall;
+	raise_to(&timed->encode_peak_bytes, reading.encode_peak_bytes);
+	raise_to(&timed->decode_peak_bytes, reading.decode_peak_bytes);
 }
 
 static double median_of(double *values, unsigned count, double *spread)
@@ -123,6 +135,8 @@ static MUST_USE enum status keep_times(const struct timing_job *job,
 		median_of(timed->encode_wall, rounds, NULL);
 	timing.decode_wall_seconds =
 		median_of(timed->decode_wall, rounds, NULL);
+	timing.encode_peak_bytes = timed->encode_peak_bytes;
+	timing.decode_peak_bytes = timed->decode_peak_bytes;
 	(void)snprintf(key.codec, sizeof(key.codec), "%s", cell->codec->name);
 	(void)snprintf(key.level, sizeof(key.level), "%s", cell->setting.text);
 	layout_format(cell->page_bytes, key.layout);

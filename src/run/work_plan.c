@@ -279,6 +279,9 @@ enum status plan_init(struct plan *plan, const struct set *set,
 
 void plan_release(struct plan *plan)
 {
+	for (size_t i = 0; i < plan->house_count; i++)
+		house_free(plan->houses[i]);
+	memory_free(plan->houses);
 	memory_free(plan->cells);
 	memory_free(plan->rows);
 	memory_free(plan->corpora);

@@ -3,7 +3,7 @@
 #define RUN_WORK_PLAN_H
 
 #include "base/status.h"
-#include "codec/codec.h"
+#include "codec/house.h"
 #include "corpus/set_file.h"
 #include "estimate/estimator.h"
 #include "ledger/survey.h"
@@ -21,6 +21,8 @@ struct selection {
 	struct names corpora, estimators, codecs, levels;
 	bool deep;            /* the deep rows of table 1 too */
 	unsigned part, parts; /* this part, from 1, of so many; 1 of 1: all */
+	/* Path of codec-host: the set's own codecs may run; NULL: not. */
+	const char *codec_host;
 };
 
 /* One cell of table 2 to run. place orders it in the ledger. */
@@ -51,6 +53,8 @@ struct plan {
 	const struct set *set;   /* borrowed */
 	struct plan_cell *cells; /* owned; the same for every corpus */
 	size_t cell_count;
+	struct house **houses; /* owned; the set's own codecs */
+	size_t house_count;
 	struct plan_rows *rows; /* owned */
 	size_t rows_count;
 	size_t *corpora; /* owned; indices chosen */

@@ -44,6 +44,14 @@ static struct relative relative_of(double value, double yardstick)
 	return relative;
 }
 
+/* What is not the same twice says nothing about a build. */
+static struct relative relative_memory(uint64_t bytes, uint64_t yardstick)
+{
+	if (bytes == CELL_MEMORY_UNKNOWN || yardstick == CELL_MEMORY_UNKNOWN)
+		return (struct relative){.known = false};
+	return relative_of((double)bytes, (double)yardstick);
+}
+
 /* Shorter passes are mostly set-up and the state of caches: no basis. */
 #define SECONDS_LEAST 0.001
 
@@ -62,11 +70,11 @@ static void find_ratios(const struct cell_fact *cell,
 	if (!yardstick || cell == yardstick)
 		return;
 	ratios[RATIO_ENCODE_MEMORY] =
-		relative_of((double)cell->facts.encode_memory_bytes,
-			    (double)yardstick->facts.encode_memory_bytes);
+		relative_memory(cell->facts.encode_memory_bytes,
+				yardstick->facts.encode_memory_bytes);
 	ratios[RATIO_DECODE_MEMORY] =
-		relative_of((double)cell->facts.decode_memory_bytes,
-			    (double)yardstick->facts.decode_memory_bytes);
+		relative_memory(cell->facts.decode_memory_bytes,
+				yardstick->facts.decode_memory_bytes);
 	if (!cell->timed || !yardstick->timed)
 		return;
 	ratios[RATIO_ENCODE_TIME] =

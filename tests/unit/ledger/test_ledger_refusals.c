@@ -92,11 +92,11 @@ static void newer_schemas_are_named(void **state)
 	ledger_close(scratch_open(scratch, LEDGER_WRITE));
 	scratch_sql(scratch->path, "PRAGMA user_version = 7");
 	refused(scratch->path, LEDGER_WRITE, STATUS_LEDGER,
-		"schema 7, this ratefloor knows up to 2");
+		"schema 7, this ratefloor knows up to 3");
 	refused(scratch->path, LEDGER_READ, STATUS_LEDGER, "newer ratefloor");
 	scratch_sql(scratch->path, "PRAGMA user_version = 1");
 	refused(scratch->path, LEDGER_READ, STATUS_LEDGER,
-		"schema 1, this ratefloor keeps 2: survey into a new file");
+		"schema 1, this ratefloor keeps 3: survey into a new file");
 	scratch_sql(scratch->path, "PRAGMA user_version = 0");
 	refused(scratch->path, LEDGER_READ, STATUS_LEDGER, "damaged");
 }
