@@ -1,27 +1,7 @@
-#include "codec/codec.h"
+#include "codec/cell_work.h"
 
 #include <stdio.h>
 #include <string.h>
-
-#include "codec/house.h"
-#include "codec/page_dictionaries.h"
-
-/* What one cell needs while it is measured. */
-struct cell_work {
-	const struct codec *codec;
-	const struct codec_setting *setting;
-	size_t page_bytes; /* 0: whole */
-	const struct sequence *sequence;
-	const struct cuts *cuts;
-	struct cell_facts *facts;
-	struct buffer packed, plain;
-	struct codec_memory encode, decode;
-	struct page_dictionaries dictionaries;
-	const struct codec_dictionary *dictionary; /* of the page at hand */
-	struct house_session *session;
-	bool again;   /* a second run to compare with the first */
-	size_t block; /* pages: block of the first byte not yet spread */
-};
 
 static MUST_USE enum status out_of_memory(struct reason *why)
 {
@@ -31,93 +11,6 @@ static MUST_USE enum status out_of_memory(struct reason *why)
 static bool flushes(const struct cell_work *work)
 {
 	return work->codec->flushes && !work->setting->never_flushes;
-}
-
-static MUST_USE enum status encode(struct cell_work *work, struct slice input,
-				   const size_t *cuts, size_t cut_count,
-				   uint64_t *piece_bytes, struct reason *why)
-{
-	const struct codec_job job = {
-		.setting = work->setting,
-		.input = input,
-		.page_bytes = work->page_bytes,
-		.dictionary = work->dictionary,
-		.cuts = cuts,
-		.cut_count = cut_count,
-		.piece_bytes = piece_bytes,
-		.memory = cuts ? NULL : &work->encode,
-		.session = work->session,
-		.again = work->again,
-	};
-
-	work->packed.length = 0;
-	return work->codec->encode(&job, &work->packed, why);
-}
-
-/*
- * A library's own threads may cut the work as they meet it, and a user's codec
- * may do anything: what they give must be what they gave, or it is no fact.
- */
-static MUST_USE enum status encode_again(struct cell_work *work,
-					 struct slice input, struct reason *why)
-{
-	struct buffer first = work->packed;
-	enum status status;
-
-	if (!work->setting->threads && !work->codec->house)
-		return STATUS_OK;
-	buffer_init(&work->packed, SIZE_MAX / 2);
-	work->again = true;
-	status = encode(work, input, NULL, 0, NULL, why);
-	work->again = false;
-	if (status == STATUS_OK &&
-	    (work->packed.length != first.length ||
-	     memcmp(work->packed.bytes, first.bytes, first.length) != 0))
-		status = reason_give(why, STATUS_CODEC,
-				     "not reproducible: %zu bytes, then other "
-				     "bytes (%zu) for the same input",
-				     first.length, work->packed.length);
-	buffer_release(&work->packed);
-	work->packed = first;
-	return status;
-}
-
-static void note_difference(struct cell_work *work, struct slice input,
-			    const char *run, struct reason *why)
-{
-	size_t i = 0;
-
-	while (i < input.length && i < work->plain.length &&
-	       input.bytes[i] == work->plain.bytes[i])
-		i++;
-	work->facts->lossless = 0;
-	(void)reason_give(why, STATUS_MISMATCH,
-			  "not lossless: the %s decodes to %zu of %zu bytes "
-			  "and first differs at byte %zu of its input",
-			  run, work->plain.length, input.length, i);
-}
-
-/* Decodes what was packed and compares it with the input. */
-static MUST_USE enum status check(struct cell_work *work, struct slice input,
-				  const char *run, struct reason *why)
-{
-	const struct codec_job job = {
-		.setting = work->setting,
-		.input = {work->packed.bytes, work->packed.length},
-		.page_bytes = work->page_bytes,
-		.dictionary = work->dictionary,
-		.memory = &work->decode,
-		.session = work->session,
-	};
-
-	work->plain.length = 0;
-	work->plain.limit = input.length + 1;
-	TRY(work->codec->decode(&job, &work->plain, why));
-	if (work->plain.length != input.length ||
-	    (input.length &&
-	     memcmp(work->plain.bytes, input.bytes, input.length) != 0))
-		note_difference(work, input, run, why);
-	return STATUS_OK;
 }
 
 static void count_stored(struct cell_work *work, uint64_t bytes)
@@ -174,9 +67,9 @@ static MUST_USE enum status flush_at(struct cell_work *work, struct slice input,
 
 	if (memory_new(count, sizeof(*piece_bytes), &piece_bytes) != STATUS_OK)
 		return out_of_memory(why);
-	status = encode(work, input, cuts, count, piece_bytes, why);
+	status = work_encode(work, input, cuts, count, piece_bytes, why);
 	if (status == STATUS_OK)
-		status = check(work, input, "flushed stream", why);
+		status = work_check(work, input, "flushed stream", why);
 	if (status == STATUS_OK)
 		add_pieces(work, work->block, piece_bytes, count);
 	memory_free(piece_bytes);
@@ -190,10 +83,10 @@ static MUST_USE enum status measure_whole(struct cell_work *work,
 				    work->sequence->canonical_bytes};
 
 	work->facts->pages = 1;
-	TRY(encode(work, input, NULL, 0, NULL, why));
-	TRY(encode_again(work, input, why));
+	TRY(work_encode(work, input, NULL, 0, NULL, why));
+	TRY(work_encode_again(work, input, why));
 	TRY(count_stream(work, why));
-	TRY(check(work, input, "stream", why));
+	TRY(work_check(work, input, "stream", why));
 	if (!work->facts->lossless || !work->facts->flushed.blocks)
 		return STATUS_OK;
 	return flush_at(work, input, work->cuts->byte + 1, work->cuts->blocks,
@@ -263,10 +156,10 @@ static MUST_USE enum status measure_page(struct cell_work *work, size_t start,
 	work->facts->pages++;
 	work->dictionary =
 		page_dictionary(&work->dictionaries, start, work->page_bytes);
-	TRY(encode(work, page, NULL, 0, NULL, why));
-	TRY(encode_again(work, page, why));
+	TRY(work_encode(work, page, NULL, 0, NULL, why));
+	TRY(work_encode_again(work, page, why));
 	TRY(count_stream(work, why));
-	TRY(check(work, page, "page", why));
+	TRY(work_check(work, page, "page", why));
 	if (!work->facts->lossless || !work->facts->flushed.blocks)
 		return STATUS_OK;
 	if (!small)
