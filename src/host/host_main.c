@@ -39,7 +39,7 @@ static bool is_library(const struct host *host)
 
 static void tell_trouble(const struct host *host, enum host_end end)
 {
-	const struct host_report report = {.end = end, .value = errno};
+	const struct host_report report = {.end = (int32_t)end, .value = errno};
 
 	if (write(host->trouble[1], &report, sizeof(report)) < 0)
 		_exit(126);

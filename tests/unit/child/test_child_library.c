@@ -50,8 +50,9 @@ static void close_object(struct opened *opened)
 static enum status ask(struct opened *opened, enum host_action action,
 		       const char *level, struct slice input, uint64_t room)
 {
-	struct host_request request = {
-		.action = action, .length = input.length, .room = room};
+	struct host_request request = {.action = (int32_t)action,
+				       .length = input.length,
+				       .room = room};
 
 	(void)snprintf(request.level, sizeof(request.level), "%s", level);
 	opened->out.length = 0;
