@@ -31,7 +31,7 @@ static void open_object(struct opened *opened, const char *name,
 	*opened = (struct opened){.plan = {.library = true}};
 	opened->plan.host = house_place("codec-host", opened->host);
 	opened->plan.bounds =
-		(struct child_bounds){256 * MIB, seconds, 64 * MIB};
+		(struct child_bounds){64 * MIB, seconds, 64 * MIB};
 	(void)house_place(name, opened->path);
 	opened->words[0] = opened->path;
 	opened->plan.words = opened->words;
@@ -67,7 +67,7 @@ static void test_many_requests_one_process(void **state)
 	struct opened opened;
 
 	(void)state;
-	open_object(&opened, RUNS, 20);
+	open_object(&opened, RUNS, 60);
 	for (size_t i = 0; i < 200; i++) {
 		assert_int_equal(ask(&opened, HOST_COMPRESS, "5",
 				     (struct slice){bytes, 8}, 100),
@@ -96,7 +96,7 @@ static void test_large_requests(void **state)
 	(void)state;
 	assert_int_equal(memory_new_zeroed(3 * MIB, 1, &bytes), STATUS_OK);
 	bytes[MIB] = 1;
-	open_object(&opened, BROKEN, 20);
+	open_object(&opened, BROKEN, 60);
 	assert_int_equal(ask(&opened, HOST_COMPRESS, "",
 			     (struct slice){bytes, 3 * MIB}, 3 * MIB),
 			 STATUS_OK);
@@ -111,7 +111,8 @@ static void fails(const char *object, const char *level, const char *name)
 	static const uint8_t bytes[5000] = "what goes in";
 	struct opened opened;
 
-	open_object(&opened, object, 1);
+	/* Only what hangs is to meet its time, however busy the machine. */
+	open_object(&opened, object, strcmp(level, "hang") == 0 ? 1 : 60);
 	assert_int_equal(ask(&opened, HOST_COMPRESS, level,
 			     (struct slice){bytes, sizeof(bytes)}, 8192),
 			 STATUS_CODEC);
@@ -139,7 +140,7 @@ static void test_prints_stay_out_of_the_stream(void **state)
 	struct opened opened;
 
 	(void)state;
-	open_object(&opened, BROKEN, 20);
+	open_object(&opened, BROKEN, 60);
 	assert_int_equal(ask(&opened, HOST_COMPRESS, "print",
 			     (struct slice){(const uint8_t *)"bay", 3}, 100),
 			 STATUS_OK);
@@ -153,14 +154,14 @@ static void test_what_is_left_running(void **state)
 	struct opened opened;
 
 	(void)state;
-	open_object(&opened, BROKEN, 20);
+	open_object(&opened, BROKEN, 60);
 	assert_int_equal(ask(&opened, HOST_COMPRESS, "leave",
 			     (struct slice){(const uint8_t *)"bay", 3}, 100),
 			 STATUS_OK);
 	assert_int_equal(child_end(opened.child, &opened.why), STATUS_CODEC);
 	assert_non_null(strstr(opened.why.text, "left a process running"));
 	close_object(&opened);
-	open_object(&opened, BROKEN, 20);
+	open_object(&opened, BROKEN, 60);
 	assert_int_equal(ask(&opened, HOST_COMPRESS, "",
 			     (struct slice){(const uint8_t *)"bay", 3}, 100),
 			 STATUS_OK);
@@ -173,7 +174,7 @@ static void test_no_room(void **state)
 	struct opened opened;
 
 	(void)state;
-	open_object(&opened, RUNS, 20);
+	open_object(&opened, RUNS, 60);
 	assert_int_equal(ask(&opened, HOST_COMPRESS, "1",
 			     (struct slice){(const uint8_t *)"bay", 3}, 5),
 			 STATUS_CODEC);
