@@ -105,7 +105,7 @@ $(B)/tests/%: $(B)/tests/%.o $(SUPPORT_OBJECTS) $(B)/libratefloor.a
 
 # Calls to the heap from our own objects go through the injector first.
 WRAP := -Wl,--wrap=malloc,--wrap=calloc,--wrap=realloc,--wrap=aligned_alloc
-$(B)/tests/faults/%: $(B)/tests/faults/%.o $(B)/tests/faults/inject.o $(SUPPORT_OBJECTS) \
+$(FAULTS): $(B)/tests/faults/%: $(B)/tests/faults/%.o $(B)/tests/faults/inject.o $(SUPPORT_OBJECTS) \
 		$(B)/libratefloor.a
 	$(CC) $(ALL_CFLAGS) $^ $(LDFLAGS) $(WRAP) $(LIBS) -lcmocka -o $@
 

@@ -89,10 +89,11 @@ void journal_matches(struct journal *journal, const struct predictor *p)
 {
 	for (unsigned i = 0; i < 2; i++) {
 		const struct match *match = &p->past.match[i];
-		size_t number = past_match_entry(&p->past, i);
+		size_t number;
 
 		if (!match->table)
 			continue;
+		number = past_match_entry(&p->past, i);
 		journal->entries[i][journal->entry_count[i]++] =
 			(struct kept_entry){number, match->table[number]};
 	}
