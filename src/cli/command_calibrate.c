@@ -144,7 +144,6 @@ static enum status calibrate(const struct words *words, struct reason *why)
 	struct calibration_rules rules;
 	struct output output;
 	double shown = 0;
-	enum status status;
 
 	if (!format)
 		return reason_give(why, STATUS_BAD_USAGE,
@@ -157,12 +156,8 @@ static enum status calibrate(const struct words *words, struct reason *why)
 	}
 	/* Before minutes of work, not after them. */
 	TRY(output_open(&output, words_get(words, "out"), why));
-	status = run_and_write(&rules, format, output.file, why);
-	if (status != STATUS_OK) {
-		output_drop(&output);
-		return status;
-	}
-	return output_keep(&output, why);
+	return output_end(&output,
+			  run_and_write(&rules, format, output.file, why), why);
 }
 
 static enum exit_code calibrate_run(const struct words *words)

@@ -42,14 +42,10 @@ static MUST_USE enum status write_pin(const struct baseline *baseline,
 				      const char *path, struct reason *why)
 {
 	struct output output;
-	enum status status;
 
 	TRY(output_open(&output, path, why));
-	status = baseline_write(output.file, baseline, why);
-	if (status == STATUS_OK)
-		return output_keep(&output, why);
-	output_drop(&output);
-	return status;
+	return output_end(&output, baseline_write(output.file, baseline, why),
+			  why);
 }
 
 static void name_skipped(const struct baseline *baseline)
@@ -148,16 +144,11 @@ write_file(const char *path, const struct gate_paper *paper,
 	   struct reason *why)
 {
 	struct output output;
-	enum status status;
 
 	if (!path)
 		return STATUS_OK;
 	TRY(output_open(&output, path, why));
-	status = write(output.file, paper, why);
-	if (status == STATUS_OK)
-		return output_keep(&output, why);
-	output_drop(&output);
-	return status;
+	return output_end(&output, write(output.file, paper, why), why);
 }
 
 static MUST_USE enum status write_papers(const struct gating *gating,
@@ -177,16 +168,11 @@ write_refusal(const char *path, const char *words,
 	      struct reason *why)
 {
 	struct output output;
-	enum status status;
 
 	if (!path)
 		return STATUS_OK;
 	TRY(output_open(&output, path, why));
-	status = write(output.file, words, why);
-	if (status == STATUS_OK)
-		return output_keep(&output, why);
-	output_drop(&output);
-	return status;
+	return output_end(&output, write(output.file, words, why), why);
 }
 
 /* A server that reads only the files must not see those of last night. */

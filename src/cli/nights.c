@@ -7,8 +7,6 @@
 #include "cli/others.h"
 #include "run/retime.h"
 
-static const struct analysis_rules rules = {.draws = 1999, .confidence = 0.95};
-
 /* Ratios that are of no interest. */
 #define ANY_RATIO HUGE_VAL
 
@@ -20,7 +18,7 @@ enum status night_read(struct ledger *ledger, int64_t id, struct night *night,
 	enum status status;
 
 	TRY(ledger_read(ledger, id, &survey, why));
-	status = analysis_init(&analysis, &survey, &rules, why);
+	status = analysis_init(&analysis, &survey, &analysis_usual, why);
 	if (status == STATUS_OK) {
 		status = baseline_init(&night->figures, &analysis, why);
 		analysis_release(&analysis);

@@ -72,3 +72,12 @@ void output_drop(struct output *output)
 		(void)unlink(output->temporary);
 	*output = (struct output){0};
 }
+
+enum status output_end(struct output *output, enum status status,
+		       struct reason *why)
+{
+	if (status == STATUS_OK)
+		return output_keep(output, why);
+	output_drop(output);
+	return status;
+}

@@ -21,5 +21,8 @@ MUST_USE enum status output_open(struct output *output, const char *path,
 /* Flushes, syncs and moves into place. STATUS_IO: nothing is left behind. */
 MUST_USE enum status output_keep(struct output *output, struct reason *why);
 void output_drop(struct output *output);
+/* Keeps what was written with STATUS_OK, else drops it and hands status on. */
+MUST_USE enum status output_end(struct output *output, enum status status,
+				struct reason *why);
 
 #endif

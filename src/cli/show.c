@@ -2,21 +2,15 @@
 
 #include "cli/output.h"
 
-static const struct analysis_rules rules = {.draws = 1999, .confidence = 0.95};
-
 static MUST_USE enum status write_report(const struct analysis *analysis,
 					 const struct report_format *format,
 					 const char *path, struct reason *why)
 {
 	struct output output;
-	enum status status;
 
 	TRY(output_open(&output, path, why));
-	status = format->write(output.file, analysis, why);
-	if (status == STATUS_OK)
-		return output_keep(&output, why);
-	output_drop(&output);
-	return status;
+	return output_end(&output, format->write(output.file, analysis, why),
+			  why);
 }
 
 enum status show_survey(struct ledger *ledger, int64_t id,
@@ -28,7 +22,7 @@ enum status show_survey(struct ledger *ledger, int64_t id,
 	enum status status;
 
 	TRY(ledger_read(ledger, id, &survey, why));
-	status = analysis_init(&analysis, &survey, &rules, why);
+	status = analysis_init(&analysis, &survey, &analysis_usual, why);
 	if (status == STATUS_OK) {
 		status = write_report(&analysis, format, path, why);
 		if (status == STATUS_OK)

@@ -46,14 +46,9 @@ static MUST_USE enum status write_trend(const struct trend *trend,
 					const char *path, struct reason *why)
 {
 	struct output output;
-	enum status status;
 
 	TRY(output_open(&output, path, why));
-	status = format->write(output.file, trend, why);
-	if (status == STATUS_OK)
-		return output_keep(&output, why);
-	output_drop(&output);
-	return status;
+	return output_end(&output, format->write(output.file, trend, why), why);
 }
 
 enum status show_trend(struct ledger *ledger, const char *format,

@@ -50,6 +50,9 @@ static enum status view_init(struct corpus_view *view,
 	return status;
 }
 
+const struct analysis_rules analysis_usual = {.draws = 1999,
+					      .confidence = 0.95};
+
 enum status analysis_init(struct analysis *analysis,
 			  const struct survey *survey,
 			  const struct analysis_rules *rules,

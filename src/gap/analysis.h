@@ -165,6 +165,9 @@ struct analysis_rules {
 	double confidence; /* 0.95 */
 };
 
+/* By which everything is shown and judged: 1999 draws, 95%. */
+extern const struct analysis_rules analysis_usual;
+
 /*
  * Pure: the same survey and rules give the same analysis. A corpus or cell
  * that failed gets a row with known false. STATUS_NO_MEMORY.

@@ -280,7 +280,7 @@ unsigned bases_probability(struct bases *b)
 	at.bit = b->node > 1 ? 2 : 0;
 	at.bit += repeat_holds(b, 1) ? 1 : 0;
 	at.step = a ? a : repeat_holds(b, 1);
-	b->view.select[2] =
+	b->view.select[0] =
 		(uint16_t)(strands_context(&b->strands, 3) * 4 + b->node);
 	b->mixing.inputs = b->inputs;
 	return b->lanes->predict(&b->mixer, &at, &b->mixing);

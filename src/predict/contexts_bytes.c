@@ -22,7 +22,7 @@ unsigned contexts_binary(const struct past *past, struct view *view)
 	add(view, &n, (last & 0xff000000ff000000) | phase);
 	add(view, &n, (last & UINT64_C(0xf8f8f8f8ff)) << 8 | phase);
 	add(view, &n, past->word);
-	view->select[2] = (uint16_t)(last & 255);
+	view->select[0] = (uint16_t)(last & 255);
 	if (past->plan.strength == STRENGTH_DEEP)
 		return contexts_deep_bytes(past, view, n);
 	return n;
@@ -43,7 +43,7 @@ unsigned contexts_records(const struct past *past, struct view *view)
 	uint64_t up_left = byte_before(past, (size_t)stride + 1);
 	uint64_t risen = (last1 - up_left) & 255;
 
-	view->select[2] = (uint16_t)(phase & 255);
+	view->select[0] = (uint16_t)(phase & 255);
 	add(view, &n, last_bytes(past, 1));
 	add(view, &n, last_bytes(past, 2));
 	add(view, &n, last_bytes(past, 3));
@@ -73,7 +73,7 @@ unsigned contexts_image(const struct past *past, struct view *view)
 	unsigned k = 0;
 
 	slope = slope < 0 ? 0 : slope > 255 ? 255 : slope;
-	view->select[2] = (uint16_t)((slope >> 3) << 3 | (w > n) << 2 |
+	view->select[0] = (uint16_t)((slope >> 3) << 3 | (w > n) << 2 |
 				     (n > nw) << 1 | (w > nw));
 	add(view, &k, (uint64_t)(n << 8 | ne));
 	add(view, &k, (uint64_t)(slope << 8 | (w + ne) >> 1));
@@ -113,7 +113,7 @@ static void select_deep(const struct past *past, struct view *view)
 		high = high * 3 + (b > 511 ? 2 : (b & 1));
 		high = high * 2 + (a >> 1 == b >> 1);
 	}
-	view->select[4] = (uint16_t)high;
+	view->select[1] = (uint16_t)high;
 }
 
 void contexts_look(const struct past *past, struct view *view)

@@ -36,15 +36,16 @@ unsigned contexts_deep_text(const struct past *past, struct view *view,
 	add(view, &n, pair(past->word1, c1));
 	add(view, &n, pair(past->word, last & 0xffff));
 	add(view, &n, pair(past->first, past->word) + c1);
-	add(view, &n, pair(column_above(past), c1));
 	if (past->plan.family == FAMILY_LINES) {
 		unsigned next = forecast_byte(past, 0);
 
+		add(view, &n, last_bytes(past, 4));
 		add(view, &n, pair(past->at - past->line, c1));
 		add(view, &n, pair(field * 1024 + next, field_above(past)));
-		view->hash[n - 3] = context_hash(n - 3, last_bytes(past, 4));
-	} else
+	} else {
+		add(view, &n, pair(column_above(past), c1));
 		add(view, &n, pair(past->at - past->line, past->word));
+	}
 	add(view, &n, pair(field * 512 + field_above(past), last & 0xffff));
 	add(view, &n, pair(expectation(view, 0), c1));
 	return n;

@@ -75,7 +75,7 @@ unsigned contexts_fields(const struct past *past, struct view *view)
 	uint64_t above = byte_before(past, stride);
 
 	view->last = (uint8_t)phase;
-	view->select[2] = (uint16_t)phase;
+	view->select[0] = (uint16_t)phase;
 	add(view, &n, phase, 0);
 	add(view, &n, phase, left);
 	add(view, &n, phase, up);

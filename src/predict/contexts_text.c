@@ -45,10 +45,11 @@ unsigned contexts_prose(const struct past *past, struct view *view)
 		/* Where a line is likely to end. */
 		add(view, &n, pair(past->at - past->line, c1));
 	}
-	view->select[2] = (uint16_t)c1;
+	view->select[0] = (uint16_t)c1;
+	/* The second half of a letter: the letter before says more. */
 	if (c1 >= 0xc0 && c1 < 0xe0) {
-		view->select[2] = 0xc0 | (past->last8 >> 8 & 63);
-		view->last = (uint8_t)view->select[2];
+		view->select[0] = 0xc0 | (past->last8 >> 8 & 63);
+		view->last = (uint8_t)view->select[0];
 	}
 	if (past->plan.strength == STRENGTH_NIGHTLY)
 		return n;
@@ -94,7 +95,7 @@ unsigned contexts_lines(const struct past *past, struct view *view)
 	add(view, &n, pair(field * 512 + above, c1));
 	kind = c1 >= '0' && c1 <= '9' ? 1 : 0;
 	kind += above == c1 ? 2 : 0;
-	view->select[2] = (uint16_t)((field * 8 + kind) % SET_ROWS);
+	view->select[0] = (uint16_t)((field * 8 + kind) % SET_ROWS);
 	if (past->plan.strength == STRENGTH_NIGHTLY)
 		return n;
 	return contexts_deep_text(past, view, n);

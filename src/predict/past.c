@@ -13,6 +13,7 @@
 #define LANE_LENGTH 20
 #define LANE_LENGTH_BINARY 24
 #define LANE_LENGTH_DEEP 40
+#define LANE_MORE_WIDE 8
 /* A match shorter than this gives way to a longer one. */
 #define FIRM_LENGTH 16
 #define MISSES_MAX 8
@@ -240,6 +241,15 @@ void past_push(struct past *past)
 			   past->before8);
 }
 
+/* Letters of two bytes and more say less a byte, so a lane wants more. */
+static uint32_t lane_least(const struct past *past)
+{
+	bool wide =
+		past->plan.family <= FAMILY_LINES && (past->last8 & 0x80808080);
+
+	return past->lane_length + (wide ? LANE_MORE_WIDE : 0);
+}
+
 void past_look(const struct past *past, struct view *view)
 {
 	const struct match *match = past->match;
@@ -253,14 +263,7 @@ void past_look(const struct past *past, struct view *view)
 	}
 	view->hits = 0;
 	view->last = (uint8_t)past->last8;
-	view->lane =
-		match[0].at &&
-		match[0].length >= past->lane_length +
-					   ((past->last8 & 0x80808080) &&
-							    past->plan.family <=
-								    FAMILY_LINES
-						    ? 8
-						    : 0);
+	view->lane = match[0].at && match[0].length >= lane_least(past);
 	contexts_look(past, view);
 }
 

@@ -8,7 +8,7 @@
 
 #define CONTEXTS_MAX 30
 #define FIELDS_MAX 32
-#define SELECTORS 5
+#define SELECTORS 2
 /* Weight sets by partial byte, by match and bit, by the family: so many each.
  */
 #define SET_ROWS 256
@@ -26,7 +26,8 @@ struct view {
 	uint8_t hits; /* contexts seen before; counted as they are looked up */
 	uint8_t last; /* the byte before */
 	bool lane;    /* code whether expected[0] comes, before its bits */
-	uint16_t select[SELECTORS]; /* weight sets, each below 256 */
+	/* rows of the family's weight set, and of the deep one's; below 256 */
+	uint16_t select[SELECTORS];
 };
 
 /* The longest earlier context that agrees with the last bytes. */

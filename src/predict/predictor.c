@@ -17,11 +17,11 @@
 /* Lines of a context: enough for the bytes at hand, within the memory given. */
 static unsigned lines_log2_for(const struct predict_plan *plan)
 {
-	unsigned most = plan->strength == STRENGTH_DEEP ? 19 : 18, log2 = 8;
+	bool deep = plan->strength == STRENGTH_DEEP;
+	unsigned most = deep ? 19 : 18, log2 = 8;
+	size_t bytes_a_line = deep ? 2 : 4;
 
-	while (log2 < most &&
-	       ((plan->strength == STRENGTH_DEEP ? (size_t)2 : (size_t)4)
-		<< log2) < plan->bytes)
+	while (log2 < most && bytes_a_line << log2 < plan->bytes)
 		log2++;
 	return log2;
 }

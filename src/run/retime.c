@@ -3,7 +3,7 @@
 #include "base/sum.h"
 #include "run/measure.h"
 #include "run/resident.h"
-#include "run/stopwatch.h"
+#include "run/timing.h"
 
 #include <stdio.h>
 #include <string.h>
@@ -19,9 +19,6 @@
  * seconds of CPU. */
 #define ROUNDS_LEAST 3
 #define SECONDS_MOST 2.0
-
-static const struct cell_clock clock_of_thread = {thread_cpu_seconds,
-						  wall_seconds};
 
 /* The two cells, and the corpus they run on. */
 struct pair {
@@ -106,30 +103,13 @@ static MUST_USE enum status time_round(const struct plan_cell *cell,
 		struct cell_round pass;
 
 		TRY(cell_time(cell->codec, &cell->setting, cell->page_bytes,
-			      input, &clock_of_thread, &pass, why));
+			      input, &timing_clock, &pass, why));
 		lower(lows, pass.encode_cpu, pass.decode_cpu);
 		encode += pass.encode_cpu;
 		decode += pass.decode_cpu;
 	}
 	*spent += encode + decode;
 	return STATUS_OK;
-}
-
-static struct relative over(double value, double yardstick)
-{
-	struct relative ratio = {.known = value > 0 && yardstick > 0};
-
-	if (ratio.known)
-		ratio.value = value / yardstick;
-	return ratio;
-}
-
-/* What is not the same twice says nothing about a build. */
-static struct relative over_memory(uint64_t bytes, uint64_t yardstick)
-{
-	if (bytes == CELL_MEMORY_UNKNOWN || yardstick == CELL_MEMORY_UNKNOWN)
-		return (struct relative){.known = false};
-	return over((double)bytes, (double)yardstick);
 }
 
 static bool is_enough(const struct retime_job *job,
@@ -170,9 +150,9 @@ static MUST_USE enum status time_pair(const struct retime_job *job,
 		TRY(time_round(pair->cell, pair->input, &round, &spent, why));
 		lower(&cell, round.encode, round.decode);
 		result->ratios[RATIO_ENCODE_TIME] =
-			over(cell.encode, yardstick.encode);
+			relative_of(cell.encode, yardstick.encode);
 		result->ratios[RATIO_DECODE_TIME] =
-			over(cell.decode, yardstick.decode);
+			relative_of(cell.decode, yardstick.decode);
 		if (count >= ROUNDS_LEAST && is_enough(job, result->ratios))
 			break;
 	}
@@ -189,11 +169,11 @@ static void weigh_pair(const struct pair *pair, const struct resident *resident,
 	measure_cell(pair->yardstick, &resident->sequence, &resident->cuts,
 		     &yardstick);
 	ratios[RATIO_ENCODE_MEMORY] =
-		over_memory(cell.facts.encode_memory_bytes,
-			    yardstick.facts.encode_memory_bytes);
+		relative_memory(cell.facts.encode_memory_bytes,
+				yardstick.facts.encode_memory_bytes);
 	ratios[RATIO_DECODE_MEMORY] =
-		over_memory(cell.facts.decode_memory_bytes,
-			    yardstick.facts.decode_memory_bytes);
+		relative_memory(cell.facts.decode_memory_bytes,
+				yardstick.facts.decode_memory_bytes);
 	cell_fact_release(&cell);
 	cell_fact_release(&yardstick);
 }

@@ -23,11 +23,6 @@ double stopwatch_seconds(const struct stopwatch *watch)
 	return read_clock(CLOCK_MONOTONIC) - seconds_of(&watch->start);
 }
 
-double thread_cpu_seconds(void)
-{
-	return read_clock(CLOCK_THREAD_CPUTIME_ID);
-}
-
 double process_cpu_seconds(void)
 {
 	return read_clock(CLOCK_PROCESS_CPUTIME_ID);

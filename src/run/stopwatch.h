@@ -13,10 +13,9 @@ void stopwatch_start(struct stopwatch *watch);
 double stopwatch_seconds(const struct stopwatch *watch);
 
 /*
- * CPU seconds of the calling thread, those of all threads (a library may have
- * its own), and wall seconds; for differences.
+ * CPU seconds of all threads (a library may have its own), and wall seconds;
+ * for differences.
  */
-double thread_cpu_seconds(void);
 double process_cpu_seconds(void);
 double wall_seconds(void);
 

@@ -17,9 +17,7 @@ struct timed {
 	uint64_t encode_peak_bytes, decode_peak_bytes;
 };
 
-/* Nothing else runs: all CPU is the codec's, its own threads' too. */
-static const struct cell_clock clock_of_process = {process_cpu_seconds,
-						   wall_seconds};
+const struct cell_clock timing_clock = {process_cpu_seconds, wall_seconds};
 
 /* The cells of a corpus that are good and not timed yet. */
 static size_t choose(const struct timing_job *job, size_t corpus,
@@ -68,7 +66,7 @@ static MUST_USE enum status read_times(const struct plan_cell *cell,
 		struct cell_round one;
 
 		TRY(cell_time(cell->codec, &cell->setting, cell->page_bytes,
-			      input, &clock_of_process, &one, why));
+			      input, &timing_clock, &one, why));
 		sum.encode_cpu += one.encode_cpu;
 		sum.encode_wall += one.encode_wall;
 		sum.decode_cpu += one.decode_cpu;

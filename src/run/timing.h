@@ -13,6 +13,9 @@ struct timing_job {
 	const struct stopwatch *watch;
 };
 
+/* Nothing else runs: all CPU is the codec's, its own threads' too. */
+extern const struct cell_clock timing_clock;
+
 /*
  * Times every cell that the survey holds as done and not yet timed, rounds
  * times, the codecs of a corpus in turn so that a drift of the machine meets

@@ -24,6 +24,14 @@ struct relative {
 	double value;
 };
 
+/* Not known where either is 0. */
+struct relative relative_of(double value, double yardstick);
+/*
+ * Nor where either is CELL_MEMORY_UNKNOWN: what is not the same twice says
+ * nothing about a build.
+ */
+struct relative relative_memory(uint64_t bytes, uint64_t yardstick);
+
 /*
  * For data of this kind: the codec's bits per symbol less those of the
  * yardstick, or of the reference for the yardstick itself and where the set

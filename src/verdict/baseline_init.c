@@ -7,8 +7,6 @@
 #include "verdict/pairing.h"
 
 /* Intervals as reports have them, so that both tell the same story. */
-static const struct analysis_rules rules = {.draws = 1999, .confidence = 0.95};
-
 static void keep_text(char *to, size_t room, const char *text)
 {
 	(void)snprintf(to, room, "%s", text ? text : "");
@@ -35,7 +33,7 @@ const struct cell_fact *yardstick_cell(const struct corpus_fact *corpus,
 	return found;
 }
 
-static struct relative relative_of(double value, double yardstick)
+struct relative relative_of(double value, double yardstick)
 {
 	struct relative relative = {.known = value > 0 && yardstick > 0};
 
@@ -44,8 +42,7 @@ static struct relative relative_of(double value, double yardstick)
 	return relative;
 }
 
-/* What is not the same twice says nothing about a build. */
-static struct relative relative_memory(uint64_t bytes, uint64_t yardstick)
+struct relative relative_memory(uint64_t bytes, uint64_t yardstick)
 {
 	if (bytes == CELL_MEMORY_UNKNOWN || yardstick == CELL_MEMORY_UNKNOWN)
 		return (struct relative){.known = false};
@@ -152,7 +149,7 @@ static enum status find_pairs(const struct survey *survey,
 	struct pairing pairing = {&ground, &lengths, yardstick};
 	enum status status;
 
-	TRY(ground_init(&ground, survey, fact, &rules));
+	TRY(ground_init(&ground, survey, fact, &analysis_usual));
 	status = lengths_init(&lengths, fact);
 	if (status == STATUS_OK) {
 		for (size_t i = 0; status == STATUS_OK && i < fact->cell_count;

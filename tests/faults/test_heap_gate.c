@@ -32,14 +32,14 @@ static enum status read_figures(void *context)
 
 static void figures_of_a_survey(void **state)
 {
-	const struct analysis_rules rules = {.draws = 1999, .confidence = 0.95};
 	struct survey survey;
 	struct analysis analysis;
 
 	(void)state;
 	sample_survey(&survey);
-	assert_int_equal(analysis_init(&analysis, &survey, &rules, NULL),
-			 STATUS_OK);
+	assert_int_equal(
+		analysis_init(&analysis, &survey, &analysis_usual, NULL),
+		STATUS_OK);
 	inject_each(read_figures, &analysis, MOST);
 	analysis_release(&analysis);
 	survey_release(&survey);
