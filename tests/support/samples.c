@@ -53,7 +53,8 @@ static void fill_cyrillic(struct random_stream *random, uint8_t *bytes,
 			bytes[at++] = 0xd0;
 			bytes[at++] = (uint8_t)(0xb0 + (*word & 15));
 		}
-		bytes[at++] = ' ';
+		if (at < count)
+			bytes[at++] = ' ';
 	}
 }
 
